@@ -1,0 +1,3 @@
+module fellreach
+
+go 1.26
