@@ -1,0 +1,219 @@
+package raster
+
+import (
+	"errors"
+	"fmt"
+	"io/fs"
+	"math"
+	"os"
+	"strings"
+
+	"github.com/lukeroth/gdal"
+	"github.com/paulmach/orb"
+
+	"fellreach/terrain"
+)
+
+// A file is one open raster: its place on Earth and how its values are to be read.
+type file struct {
+	handles  *handles
+	info     Info
+	toCell   affine // from the reference system to cell-centre coordinates
+	crs      *transform
+	wrapsDeg float64 // longitude of the middle where the system counts in degrees, else NaN
+	values   valueRule
+}
+
+// A use is what a raster is opened for.
+type use string
+
+const (
+	forElevation use = "elevation raster"
+	forCover     use = "cover raster"
+)
+
+// openFile opens a raster and reads all but its cells. Transforms are shared by the files of one
+// reference system through the map.
+func openFile(path string, purpose use, transforms map[string]*transform) (*file, error) {
+	f := &file{handles: newHandles(path), info: Info{Path: path}}
+	err := f.handles.with(func(dataset gdal.Dataset) error {
+		return f.describe(dataset, purpose)
+	})
+	if err == nil {
+		err = f.locate(transforms)
+	}
+	if err != nil {
+		f.handles.close()
+		return nil, fmt.Errorf("%s %s: %w", purpose, path, err)
+	}
+	return f, nil
+}
+
+// openDataset opens a raster for reading with a message that tells what is wrong with it.
+func openDataset(path string) (dataset gdal.Dataset, err error) {
+	err = call(func() error {
+		if dataset, err = gdal.Open(path, gdal.ReadOnly); err != nil {
+			return gdal.ErrFailure
+		}
+		return nil
+	})
+	if err == nil {
+		return dataset, nil
+	}
+	if _, statErr := os.Stat(path); errors.Is(statErr, fs.ErrNotExist) && strings.Contains(err.Error(), "No such file") {
+		return dataset, fs.ErrNotExist
+	}
+	return dataset, fmt.Errorf("GDAL cannot read it as a raster: %w", err)
+}
+
+// describe reads what the file says of itself.
+func (f *file) describe(dataset gdal.Dataset, purpose use) error {
+	if dataset.RasterCount() == 0 {
+		return noBands(dataset)
+	}
+	in := &f.info
+	in.Driver = driverName(dataset)
+	in.Cols, in.Rows, in.Bands = dataset.RasterXSize(), dataset.RasterYSize(), dataset.RasterCount()
+	in.GeoTransform = dataset.GeoTransform()
+	if in.GeoTransform == [6]float64{0, 1, 0, 0, 0, 1} { // what GDAL hands out where there is none
+		return errors.New("it does not say where on Earth it lies (no geotransform): georeference it, for instance with gdal_translate -a_ullr -a_srs")
+	}
+	inverse, ok := affine(in.GeoTransform).inverse()
+	if !ok {
+		return fmt.Errorf("its geotransform %v gives its cells no area", in.GeoTransform)
+	}
+	f.toCell = inverse.toCentres()
+	in.wkt = dataset.Projection()
+	if strings.TrimSpace(in.wkt) == "" {
+		return errors.New("it names no coordinate reference system: assign one, for instance with gdal_edit.py -a_srs EPSG:32627")
+	}
+	rule, err := readRule(dataset, in, purpose)
+	f.values = rule
+	return err
+}
+
+// noBands tells what a data set without cells of its own holds instead.
+func noBands(dataset gdal.Dataset) error {
+	for _, entry := range dataset.Metadata("SUBDATASETS") {
+		if name, value, ok := strings.Cut(entry, "="); ok && strings.HasSuffix(name, "_NAME") {
+			return fmt.Errorf("it is a container of several rasters: name one of them, such as %s", value)
+		}
+	}
+	return errors.New("it holds no raster band")
+}
+
+// driverName is GDAL's short name of the file's format.
+func driverName(dataset gdal.Dataset) string {
+	driver := dataset.Driver()
+	return driver.ShortName()
+}
+
+// locate relates the raster to WGS 84 and measures its cells there.
+func (f *file) locate(transforms map[string]*transform) error {
+	horizontal := f.info.readCRS()
+	var err error
+	if f.crs = transforms[horizontal.text]; f.crs == nil {
+		if f.crs, err = newTransform(horizontal.text); err != nil {
+			return fmt.Errorf("coordinate reference system %q: %w", f.info.CRS, err)
+		}
+		transforms[horizontal.text] = f.crs
+	}
+	in := &f.info
+	toGround := affine(in.GeoTransform)
+	col, row := float64(in.Cols)/2, float64(in.Rows)/2
+	centre := toGround.apply(col, row)
+	f.wrapsDeg = math.NaN()
+	if horizontal.isGeographic() {
+		f.wrapsDeg = centre[0]
+	}
+	corner := []orb.Point{centre, toGround.apply(col+1, row), toGround.apply(col, row+1)}
+	if err := f.crs.inverse(corner); err != nil {
+		return err
+	}
+	if !finite(corner[0]) || !finite(corner[1]) || !finite(corner[2]) {
+		return fmt.Errorf("its middle, %g, %g, lies outside what its reference system %q can hold: the geotransform and the system do not belong together", centre[0], centre[1], in.CRS)
+	}
+	in.CellXM, _, _ = Inverse(corner[0], corner[1])
+	in.CellYM, _, _ = Inverse(corner[0], corner[2])
+	return nil
+}
+
+// cells turns places in the raster's reference system into its cell-centre coordinates, in
+// place. Longitudes are taken on the raster's own turn around the Earth.
+func (f *file) cell(p orb.Point) (col, row float64) {
+	if !math.IsNaN(f.wrapsDeg) {
+		p[0] = f.wrapsDeg + math.Remainder(p[0]-f.wrapsDeg, 360)
+	}
+	at := f.toCell.apply(p[0], p[1])
+	return at[0], at[1]
+}
+
+// read reads a window of cells: heights in metres or classes, NaN where void.
+func (f *file) read(col, row, cols, rows int) (*terrain.Grid, error) {
+	grid := terrain.NewGrid(cols, rows)
+	err := f.handles.with(func(dataset gdal.Dataset) error {
+		return f.values.read(dataset.RasterBand(1), col, row, grid)
+	})
+	if err != nil {
+		return nil, fmt.Errorf("%s: reading the cells from column %d, row %d on: %w", f.info.Path, col, row, err)
+	}
+	return grid, nil
+}
+
+// maxHandles is how many times one file may be open at once; more readers wait.
+const maxHandles = 4
+
+// handles are the open GDAL data sets of one file. A data set serves one goroutine at a time.
+type handles struct {
+	path string
+	idle chan gdal.Dataset // holds those open and unused
+	free chan struct{}     // one for each that may yet be opened
+}
+
+func newHandles(path string) *handles {
+	h := &handles{path, make(chan gdal.Dataset, maxHandles), make(chan struct{}, maxHandles)}
+	for range maxHandles {
+		h.free <- struct{}{}
+	}
+	return h
+}
+
+// with lends a data set to f, opening one if all are in use.
+func (h *handles) with(f func(gdal.Dataset) error) error {
+	dataset, err := h.take()
+	if err != nil {
+		return err
+	}
+	defer func() { h.idle <- dataset }()
+	return call(func() error { return f(dataset) })
+}
+
+func (h *handles) take() (gdal.Dataset, error) {
+	select {
+	case dataset := <-h.idle:
+		return dataset, nil
+	default:
+	}
+	select {
+	case dataset := <-h.idle:
+		return dataset, nil
+	case <-h.free:
+	}
+	dataset, err := openDataset(h.path)
+	if err != nil {
+		h.free <- struct{}{}
+	}
+	return dataset, err
+}
+
+// close closes what is idle; none may be lent any more.
+func (h *handles) close() {
+	for {
+		select {
+		case dataset := <-h.idle:
+			dataset.Close()
+		default:
+			return
+		}
+	}
+}
