@@ -1,8 +1,11 @@
 package antenna
 
+import "errors"
+
 // A Design is an antenna as a plan describes it, ready to be solved at a frequency.
 // Every kind (a dipole, a reference pattern, a maker's table) is a function that makes one.
 type Design struct {
+	// Name is the plan's, left to whoever reads the plan; Kind is the plan's word for the kind.
 	Name string
 	Kind string
 	// Directional tells whether the design has a facing of its own, so that a site must give one.
@@ -13,12 +16,40 @@ type Design struct {
 
 // A Setting is how and where an antenna is used: its frequency and the metal beside it.
 type Setting struct {
-	// FreqHz is the frequency of interest, DesignHz that for which resonant lengths are cut;
-	// zero means FreqHz.
+	// FreqHz is the frequency of interest, DesignHz that for which resonant lengths and lengths
+	// in wavelengths are cut; zero means FreqHz.
 	FreqHz, DesignHz float64
 	// MastDiameterM is the diameter of the mast beside or below the antenna, StandoffM the
 	// distance between their axes. Zero standoff is an antenna on top of its mast.
 	MastDiameterM, StandoffM float64
+}
+
+// The frequencies a Setting may have: beyond them no method of this program speaks.
+const (
+	lowestHz  = 1e6
+	highestHz = 100e9
+)
+
+// Checked returns the setting with DesignHz filled in, or an error that names the value that is
+// out of range. Every Design's Solve begins with it.
+func (s Setting) Checked() (Setting, error) {
+	if s.DesignHz == 0 {
+		s.DesignHz = s.FreqHz
+	}
+	return s, errors.Join(
+		within("frequency", s.FreqHz, lowestHz, highestHz, "Hz"),
+		within("design frequency", s.DesignHz, lowestHz, highestHz, "Hz"),
+		within("mast diameter", s.MastDiameterM, 0, 10, "m"),
+		within("standoff", s.StandoffM, 0, 1000, "m"),
+	)
+}
+
+// mastNote is what a method that knows no metal but the antenna's own says of a mast.
+func (s Setting) mastNote(method string) []string {
+	if s.MastDiameterM == 0 {
+		return nil
+	}
+	return []string{"the mast's effect is not computed by " + method}
 }
 
 // A Solution is an antenna at one frequency.
@@ -35,18 +66,4 @@ type Solution struct {
 	// of the method that were touched.
 	Source string
 	Notes  []string
-}
-
-// A Pattern is what an antenna radiates at one frequency, in the antenna's own frame: azimuth 0
-// is its facing, elevation 90 the zenith when it is mounted upright.
-type Pattern struct {
-	// Field returns the components of the far field towards a direction, theta pointing down
-	// and phi towards growing azimuth, scaled so that |theta|^2 + |phi|^2 is the gain or
-	// directivity over an isotropic antenna (a power ratio). A pattern without phase returns
-	// real, positive components.
-	Field func(Direction) (theta, phi complex128)
-	// PeakDBi is the largest gain over all directions.
-	PeakDBi float64
-	// Phased says that the phase between the components is known.
-	Phased bool
 }

@@ -1,0 +1,68 @@
+package antenna
+
+import (
+	"math"
+
+	"gonum.org/v1/gonum/integrate/quad"
+)
+
+// gaussMean returns the mean of f between lo and hi by Gauss-Legendre with n points.
+func gaussMean(lo, hi float64, n int, f func(float64) float64) float64 {
+	return quad.Fixed(f, lo, hi, n, quad.Legendre{}, 0) / (hi - lo)
+}
+
+// A gaussRule holds the points and weights of Gauss-Legendre on -1 to 1.
+type gaussRule struct{ x, weight []float64 }
+
+func newGaussRule(n int) gaussRule {
+	g := gaussRule{make([]float64, n), make([]float64, n)}
+	quad.Legendre{}.FixedLocations(g.x, g.weight, -1, 1)
+	return g
+}
+
+// integral returns the integral of a complex function from lo to hi.
+func (g gaussRule) integral(lo, hi float64, f func(float64) complex128) complex128 {
+	middle, half := (lo+hi)/2, (hi-lo)/2
+	var sum complex128
+	for i, x := range g.x {
+		sum += complex(g.weight[i]*half, 0) * f(middle+half*x)
+	}
+	return sum
+}
+
+// bisect returns where f changes sign between a and b, at which its signs differ.
+func bisect(a, b float64, f func(float64) float64) float64 {
+	negative := f(a) < 0
+	for range 48 {
+		middle := (a + b) / 2
+		if f(middle) < 0 == negative {
+			a = middle
+		} else {
+			b = middle
+		}
+	}
+	return (a + b) / 2
+}
+
+// largest returns the largest value of f between lo and hi: the best of n+1 equally spaced
+// points, refined by dropping the lower outer third of the interval about it.
+func largest(lo, hi float64, n int, f func(float64) float64) float64 {
+	step := (hi - lo) / float64(n)
+	at, best := lo, math.Inf(-1)
+	for i := range n + 1 {
+		x := lo + float64(i)*step
+		if y := f(x); y > best {
+			at, best = x, y
+		}
+	}
+	a, b := max(lo, at-step), min(hi, at+step)
+	for b-a > 1e-6*step {
+		third := (b - a) / 3
+		if f(a+third) < f(b-third) {
+			a += third
+		} else {
+			b -= third
+		}
+	}
+	return max(best, f((a+b)/2))
+}
