@@ -17,7 +17,7 @@ type horizons struct {
 // On a line of sight both horizons are the interior point with the largest diffraction parameter;
 // a path of two points has none and takes its middle, with the two ends as its points.
 //
-// Source: Rec. ITU-R P.1812-6, section 4.2.1 of its annex and (76) to (82).
+// Source: Rec. ITU-R P.1812-6, (76) to (82).
 func findHorizons(p *Path) horizons {
 	last := len(p.DistKm) - 1
 	d, hts, hrs := p.LengthKm(), p.txAslM(), p.rxAslM()

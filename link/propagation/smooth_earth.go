@@ -63,8 +63,8 @@ func (e SmoothEarth) LossDB(p SmoothPath) float64 {
 	return (1 - hse/hreq) * e.firstTermDB(p, aem, 0)
 }
 
-// leastClearance returns the smallest height of the ray over the smooth Earth and the distances of
-// that place from both ends, (~23) to (~25).
+// leastClearance returns the height of the ray over the smooth Earth where it clears the least part
+// of its Fresnel zone, and the distances of that place from both ends, (~23) to (~25).
 func (p SmoothPath) leastClearance() (hse, dse1, dse2 float64) {
 	ap, d, hte, hre := p.RadiusKm, p.LengthKm, p.TxM, p.RxM
 	c := (hte - hre) / (hte + hre)

@@ -2,7 +2,7 @@ package propagation
 
 import "math"
 
-// A surface line is the straight smooth surface fitted to a profile, given by its heights above
+// A surfaceLine is the straight smooth surface fitted to a profile, given by its heights above
 // sea level at the two ends, m.
 type surfaceLine struct{ tx, rx float64 }
 
@@ -30,9 +30,9 @@ func (s surfaceLine) limited(groundTxM, groundRxM float64) surfaceLine {
 	return surfaceLine{tx: min(s.tx, groundTxM), rx: min(s.rx, groundRxM)}
 }
 
-// Obstructions are the heights by which bare ground stands over the straight line between the
+// obstructions are the heights by which bare ground stands over the straight line between the
 // antennas, without the Earth's bulge: the largest, m, and the steepest as seen from either end,
-// m/km. They matter where HobsM is positive.
+// m/km. They matter where hobs is positive.
 type obstructions struct{ hobs, alphaT, alphaR float64 }
 
 // findObstructions searches the interior points, (~87) and (~88).
