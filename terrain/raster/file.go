@@ -28,14 +28,15 @@ type file struct {
 type use string
 
 const (
-	forElevation use = "elevation raster"
-	forCover     use = "cover raster"
+	forElevation  use = "elevation raster"
+	forCover      use = "cover raster"
+	forInspection use = "raster" // heights, but a picture is let through
 )
 
 // openFile opens a raster and reads all but its cells. Transforms are shared by the files of one
 // reference system through the map.
 func openFile(path string, purpose use, transforms map[string]*transform) (*file, error) {
-	f := &file{handles: newHandles(path), info: Info{Path: path}}
+	f := &file{handles: newHandles(path), info: Info{Path: path, Warnings: []string{}}}
 	err := f.handles.with(func(dataset gdal.Dataset) error {
 		return f.describe(dataset, purpose)
 	})
@@ -108,38 +109,7 @@ func driverName(dataset gdal.Dataset) string {
 	return driver.ShortName()
 }
 
-// locate relates the raster to WGS 84 and measures its cells there.
-func (f *file) locate(transforms map[string]*transform) error {
-	horizontal := f.info.readCRS()
-	var err error
-	if f.crs = transforms[horizontal.text]; f.crs == nil {
-		if f.crs, err = newTransform(horizontal.text); err != nil {
-			return fmt.Errorf("coordinate reference system %q: %w", f.info.CRS, err)
-		}
-		transforms[horizontal.text] = f.crs
-	}
-	in := &f.info
-	toGround := affine(in.GeoTransform)
-	col, row := float64(in.Cols)/2, float64(in.Rows)/2
-	centre := toGround.apply(col, row)
-	f.wrapsDeg = math.NaN()
-	if horizontal.isGeographic() {
-		f.wrapsDeg = centre[0]
-	}
-	corner := []orb.Point{centre, toGround.apply(col+1, row), toGround.apply(col, row+1)}
-	if err := f.crs.inverse(corner); err != nil {
-		return err
-	}
-	if !finite(corner[0]) || !finite(corner[1]) || !finite(corner[2]) {
-		return fmt.Errorf("its middle, %g, %g, lies outside what its reference system %q can hold: the geotransform and the system do not belong together", centre[0], centre[1], in.CRS)
-	}
-	in.CellXM, _, _ = Inverse(corner[0], corner[1])
-	in.CellYM, _, _ = Inverse(corner[0], corner[2])
-	return nil
-}
-
-// cells turns places in the raster's reference system into its cell-centre coordinates, in
-// place. Longitudes are taken on the raster's own turn around the Earth.
+// cell turns a place in the raster's reference system into its cell-centre coordinates. Longitudes are taken on the raster's own turn around the Earth.
 func (f *file) cell(p orb.Point) (col, row float64) {
 	if !math.IsNaN(f.wrapsDeg) {
 		p[0] = f.wrapsDeg + math.Remainder(p[0]-f.wrapsDeg, 360)

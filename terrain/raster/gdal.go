@@ -16,7 +16,7 @@ import (
 
 // gdalCacheBytes bounds GDAL's own cache of file blocks. It spares a raster stored in long
 // strips, whose blocks hold many tiles, from being read once for each tile.
-const gdalCacheBytes = 64 << 20
+const gdalCacheBytes = 128 << 20
 
 // prepareGDAL sends what GDAL would print on standard error away: every failure comes back as an
 // error with GDAL's message in it.

@@ -92,29 +92,3 @@ func inArea(code string, place orb.Point) error {
 	return fmt.Errorf("that is %s, outside the area of %s: longitude %.2f to %.2f, latitude %.2f to %.2f; is it easting before northing, and the right system?",
 		terrain.FormatDecimal(place), code, west, east, south, north)
 }
-
-// UTM writes a place in UTM on WGS 84 to a metre: "UTM 27N 441250 5263420". The zone goes by the
-// longitude alone. UTM ends at 84 degrees north and 80 south; beyond, it says so.
-func UTM(p orb.Point) string {
-	if err := checkPlace(p); err != nil {
-		return err.Error()
-	}
-	if p.Lat() > 84 || p.Lat() < -80 {
-		return "outside UTM (80 S to 84 N)"
-	}
-	zone := min(int(math.Floor((p.Lon()+180)/6))+1, 60)
-	c := terrain.Coordinates{EPSG: 32600 + zone}
-	if p.Lat() < 0 {
-		c.EPSG = 32700 + zone
-	}
-	at := []orb.Point{p}
-	crs, err := newTransform(fmt.Sprintf("EPSG:%d", c.EPSG))
-	if err == nil {
-		err = crs.forward(at)
-	}
-	if err != nil {
-		return "UTM is not available: " + err.Error()
-	}
-	c.Easting, c.Northing = at[0][0], at[0][1]
-	return c.String()
-}

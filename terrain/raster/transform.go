@@ -1,7 +1,7 @@
 package raster
 
 import (
-	"fmt"
+	"errors"
 	"math"
 	"sync"
 
@@ -34,12 +34,9 @@ func newTransform(crs string) (*transform, error) {
 func (t *transform) create() (*proj.PJ, error) {
 	pj, err := proj.NewContext().NewCRSToCRS("EPSG:4326", t.crs, nil)
 	if err != nil {
-		return nil, fmt.Errorf("PROJ cannot relate it to WGS 84: %w", err)
+		return nil, errors.New("PROJ does not know it, or cannot relate it to WGS 84")
 	}
-	if pj, err = pj.NormalizeForVisualization(); err != nil {
-		return nil, fmt.Errorf("PROJ cannot order its axes: %w", err)
-	}
-	return pj, nil
+	return pj.NormalizeForVisualization()
 }
 
 // forward turns places on WGS 84 into eastings and northings, in place. What the system cannot
@@ -72,14 +69,16 @@ func (t *transform) apply(direction proj.Direction, points []orb.Point) error {
 	return nil
 }
 
+// take returns an idle PROJ object, or a new one.
 func (t *transform) take() (*proj.PJ, error) {
 	t.mutex.Lock()
-	defer t.mutex.Unlock()
 	if n := len(t.idle); n > 0 {
+		defer t.mutex.Unlock()
 		pj := t.idle[n-1]
 		t.idle = t.idle[:n-1]
 		return pj, nil
 	}
+	t.mutex.Unlock() // making one takes milliseconds
 	return t.create()
 }
 
@@ -87,6 +86,21 @@ func (t *transform) put(pj *proj.PJ) {
 	t.mutex.Lock()
 	defer t.mutex.Unlock()
 	t.idle = append(t.idle, pj)
+}
+
+// isBallpark says whether PROJ, for want of the datum shift, takes the other system's longitudes
+// and latitudes for those of WGS 84 at a place. That can be hundreds of metres out.
+func (t *transform) isBallpark(place orb.Point) bool {
+	pj, err := t.take()
+	if err != nil {
+		return false
+	}
+	defer t.put(pj)
+	if _, err := pj.Forward(proj.Coord{place[0], place[1], 0, math.Inf(1)}); err != nil {
+		return false
+	}
+	used, err := pj.GetLastUsedOperation()
+	return err == nil && used.HasBallparkTransformation()
 }
 
 // finite says whether PROJ gave a place for a point.

@@ -27,6 +27,7 @@ func readRule(dataset gdal.Dataset, info *Info, purpose use) (valueRule, error) 
 	band := dataset.RasterBand(1)
 	kind := band.RasterDataType()
 	info.Type = kind.Name()
+	info.blockCols, info.blockRows = band.BlockSize()
 	if err := checkType(band, kind, purpose); err != nil {
 		return valueRule{}, err
 	}

@@ -46,7 +46,7 @@ func WriteGeoTIFF(path string, raster GeoTIFF) (err error) {
 	}
 	temporary, err := temporaryName(path)
 	if err != nil {
-		return err
+		return fmt.Errorf("writing %s: %w", path, err)
 	}
 	defer func() {
 		if err != nil {
@@ -59,13 +59,13 @@ func WriteGeoTIFF(path string, raster GeoTIFF) (err error) {
 	return os.Rename(temporary, path)
 }
 
-// temporaryName makes an empty file beside the final one, readable as any new file is.
+// temporaryName makes an empty file beside the final one; GDAL replaces it.
 func temporaryName(path string) (string, error) {
 	f, err := os.CreateTemp(filepath.Dir(path), "."+filepath.Base(path)+".*")
 	if err != nil {
 		return "", err
 	}
-	return f.Name(), errors.Join(f.Chmod(0o644), f.Close())
+	return f.Name(), f.Close()
 }
 
 // stored turns the grid into the numbers of the cell type.
