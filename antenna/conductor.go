@@ -22,13 +22,13 @@ func (m Material) ImpedanceOhmPerM(freqHz, radiusM float64) complex128 {
 	return perArea * besselRatio(g*complex(radiusM, 0))
 }
 
-// besselRatio returns I0(z)/I1(z) for z in the right half plane, to about 1e-5 at the seam of its
-// two forms and better elsewhere: 1 + 1/2z + 3/8z^2 for large |z|, else the continued fraction
-// 2/z + 1/(4/z + 1/(6/z + ...)) evaluated from its tail.
+// besselRatio returns I0(z)/I1(z) for z in the right half plane, to about 1e-6 at the seam of its
+// two forms and better elsewhere: 1 + 1/2z + 3/8z^2 + 3/8z^3 for large |z|, else the continued
+// fraction 2/z + 1/(4/z + 1/(6/z + ...)) evaluated from its tail.
 func besselRatio(z complex128) complex128 {
 	const large = 30
 	if cmplx.Abs(z) > large {
-		return 1 + 1/(2*z) + 3/(8*z*z)
+		return 1 + (1+3/(4*z)*(1+1/z))/(2*z)
 	}
 	const terms = 60 // twice |z| suffices
 	ratio := complex(2*terms, 0) / z

@@ -46,10 +46,10 @@ func (p Pattern) Filled(f Field) Field {
 
 // MeanGain returns the mean of the power over the sphere as a ratio: 1 for a directivity, the
 // efficiency for a gain that holds the losses. Gauss-Legendre over the sine of the elevation and
-// equal steps of azimuth, good to about 1e-3 for smooth lobes wider than 2 degrees.
+// equal steps of azimuth: 0.5 % for smooth lobes 2 degrees wide, far better for wider ones.
 func (p Pattern) MeanGain() float64 {
 	const azimuths = 240
-	return gaussMean(-1, 1, 160, func(sinEl float64) float64 {
+	return newGaussRule(160).mean(func(sinEl float64) float64 {
 		elDeg := degrees(math.Asin(sinEl))
 		sum := 0.0
 		for i := range azimuths {

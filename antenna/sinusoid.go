@@ -50,6 +50,11 @@ func newSinusoid(s sinusoid) (sinusoid, error) {
 	return s, nil
 }
 
+// rule returns enough points to integrate the current's products with waves along the wire.
+func (s sinusoid) rule() gaussRule {
+	return newGaussRule(24 + int(16*(s.lowerM+s.upperM)/s.wavelengthM))
+}
+
 func (s sinusoid) wavenumber() float64 { return 2 * math.Pi / s.wavelengthM }
 
 // feedA returns the current at the feed.
@@ -96,7 +101,7 @@ func (s sinusoid) impedanceOhm() (complex128, error) {
 // the handbooks' Si and Ci forms, terms of the order of radius over length are left out: the
 // radius counts at the feed alone, where the current does not vanish at the kink.
 func (s sinusoid) emf() complex128 {
-	rule := newGaussRule(24 + int(16*(s.lowerM+s.upperM)/s.wavelengthM))
+	rule := s.rule()
 	var sum complex128
 	for i, kink := range s.kinks {
 		sum += complex(s.steps[i], 0) * (s.potential(rule, kink, -s.lowerM, 0) + s.potential(rule, kink, 0, s.upperM))
@@ -146,7 +151,7 @@ func (s sinusoid) efficiency() float64 {
 
 // pattern returns the directivity of the wire, vertical in the antenna's frame.
 func (s sinusoid) pattern() Pattern {
-	mean := gaussMean(-1, 1, 24+int(16*(s.lowerM+s.upperM)/s.wavelengthM), func(sinEl float64) float64 {
+	mean := s.rule().mean(func(sinEl float64) float64 {
 		return squared(s.farField(sinEl, math.Sqrt(1-sinEl*sinEl)))
 	})
 	scale := complex(1/math.Sqrt(mean), 0)
