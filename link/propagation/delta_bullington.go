@@ -1,7 +1,5 @@
 package propagation
 
-import "fellreach/terrain"
-
 // P526 is free space with the delta-Bullington diffraction of P.526, at the median effective Earth
 // radius.
 var P526 = Model{Name: "p526", Edition: "P.526-15", MinHz: minHz, MaxHz: maxHz, Loss: p526Loss}
@@ -68,18 +66,3 @@ func (m *diffraction) parts(ap float64) (lbulla, lbulls, ldsph float64) {
 // diffractionWavelengthM is the wavelength of the diffraction models, which take the speed of light
 // as 2.998e8 m/s.
 func diffractionWavelengthM(freqHz float64) float64 { return 2.998e8 / freqHz }
-
-// seaShare returns omega, the part of the path over sea: between two points of different zones the
-// border lies half-way.
-func seaShare(p terrain.Profile) float64 {
-	sea := 0.0
-	for i := 1; i < len(p.DistKm); i++ {
-		half := (p.DistKm[i] - p.DistKm[i-1]) / 2
-		for _, z := range p.Zone[i-1 : i+1] {
-			if z == terrain.Sea {
-				sea += half
-			}
-		}
-	}
-	return min(1, sea/p.LengthKm())
-}

@@ -12,7 +12,7 @@ import (
 func TestPublishedHorizons(t *testing.T) {
 	seen := deviation{}
 	for _, r := range readTable(t, "p1812", "cases.csv") {
-		p := publishedPath(t, r)
+		p := publishedPath(t, "p1812", r)
 		l, err := P526.Loss(p)
 		if err != nil {
 			t.Fatal(err)
@@ -33,11 +33,11 @@ func TestPublishedHorizons(t *testing.T) {
 	seen.log(t)
 }
 
-// publishedPath returns the path of a row of the P.1812 tables.
-func publishedPath(t *testing.T, r row) Path {
+// publishedPath returns the path of a row of one of the two P.1812 tables.
+func publishedPath(t *testing.T, table string, r row) Path {
 	t.Helper()
 	return Path{
-		Profile: readProfile(t, "p1812", "profiles", r.text("profile")+".csv"),
+		Profile: readProfile(t, table, "profiles", r.text("profile")+".csv"),
 		FreqHz:  r.num("f_GHz") * 1e9, TxAglM: r.num("htg_m"), RxAglM: r.num("hrg_m"), VerticalShare: r.num("pol") - 1,
 		DeltaN: r.num("DN_Nkm"), N0: r.num("N0_N"), TimePct: r.num("p_pct"),
 		LocationPct: r.num("pL_pct"), LocationSpreadDB: r.num("sigmaL_dB"),

@@ -36,9 +36,9 @@ type Loss struct {
 	Notes []string
 }
 
-// ByName returns the method of that name: "free-space" or "p526".
+// ByName returns the method of that name: "free-space", "p526" or "p1812".
 func ByName(name string) (Model, error) {
-	models := [...]Model{FreeSpace, P526}
+	models := [...]Model{FreeSpace, P526, P1812}
 	names := make([]string, len(models))
 	for i, m := range models {
 		if m.Name == name {

@@ -129,12 +129,12 @@ func TestByName(t *testing.T) {
 			t.Errorf("ByName(%q) = %+v, %v", m.Name, got, err)
 		}
 	}
-	if _, err := ByName("P526"); err == nil || !strings.Contains(err.Error(), `"P526": use free-space, p526`) {
+	if _, err := ByName("P526"); err == nil || !strings.Contains(err.Error(), `"P526": use free-space, p526, p1812`) {
 		t.Errorf(`ByName("P526"): got error %v`, err)
 	}
 }
 
-var allModels = []Model{FreeSpace, P526}
+var allModels = []Model{FreeSpace, P526, P1812}
 
 // Every method leaves the path's own slices alone and needs no memory of its own.
 func TestNoAllocation(t *testing.T) {

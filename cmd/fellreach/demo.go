@@ -1,0 +1,93 @@
+package main
+
+import (
+	_ "embed"
+	"errors"
+	"fmt"
+	"io/fs"
+	"os"
+	"path/filepath"
+
+	"fellreach/link/report"
+	"fellreach/terrain"
+	"fellreach/terrain/island"
+	"fellreach/terrain/raster"
+
+	"github.com/spf13/cobra"
+)
+
+// demoPlan is the plan of the invented island's river gauges.
+//
+//go:embed hallin.yaml
+var demoPlan []byte
+
+func newDemo(t *terminal) *cobra.Command {
+	return &cobra.Command{
+		Use:   "demo [FOLDER]",
+		Short: "Write a worked example on an invented island and compute its links",
+		Long:  "Write a folder with an invented island's elevation and land cover and a plan of its river\ngauges, then compute the plan's links. The folder (hallin when left out) must not exist yet.",
+		Args:  arguments(0, 1, "at most one folder"),
+		RunE: func(cmd *cobra.Command, args []string) error {
+			folder := "hallin"
+			if len(args) == 1 {
+				folder = args[0]
+			}
+			if _, err := os.Lstat(folder); !errors.Is(err, fs.ErrNotExist) {
+				return &usageError{fmt.Sprintf("%s exists already; the demo writes a new folder\n    hint: name another, or remove it", folder)}
+			}
+			t.hint("making the island of Hallin …")
+			if err := writeDemo(folder); err != nil {
+				return err
+			}
+			result, err := runLinks(cmd.Context(), t, filepath.Join(folder, "hallin.yaml"))
+			if err != nil {
+				return err
+			}
+			if err := report.LinksTable(t.out, result); err != nil {
+				return err
+			}
+			t.hint("\nwrote %[1]s: a plan, an elevation raster and a land-cover raster. Go on with\n  fellreach links %[1]s/hallin.yaml --lines\n  fellreach section %[1]s/hallin.yaml --link \"Base..Gauge 5\" --format svg -o section.svg", folder)
+			return nil
+		},
+	}
+}
+
+// writeDemo writes the demo's files into a folder of another name first, so that the folder is
+// there whole or not at all.
+func writeDemo(folder string) error {
+	if err := os.MkdirAll(filepath.Dir(folder), 0o755); err != nil {
+		return err
+	}
+	work, err := os.MkdirTemp(filepath.Dir(folder), "."+filepath.Base(folder)+".*")
+	if err != nil {
+		return err
+	}
+	defer os.RemoveAll(work)
+	if err := errors.Join(os.Chmod(work, 0o755), writeIsland(work), os.WriteFile(filepath.Join(work, "hallin.yaml"), demoPlan, 0o644)); err != nil {
+		return err
+	}
+	return os.Rename(work, folder)
+}
+
+// writeIsland writes the island's two rasters.
+func writeIsland(folder string) error {
+	heights, cover := terrain.NewGrid(island.Cols, island.Rows), terrain.NewGrid(island.Cols, island.Rows)
+	for i, dm := range island.Heights() {
+		heights.Cells[i] = float32(dm) / 10
+	}
+	for i, class := range island.Cover() {
+		cover.Cells[i] = float32(class)
+	}
+	place := [6]float64{island.WestM, island.CellM, 0, island.NorthM, 0, -island.CellM}
+	void, none := float64(island.NoData), 0.0
+	return errors.Join(
+		raster.WriteGeoTIFF(filepath.Join(folder, "hallin-dem.tif"), raster.GeoTIFF{
+			Grid: heights, GeoTransform: place, EPSG: island.EPSG, Type: raster.Int16, Scale: 0.1, NoData: &void, Unit: "m",
+			About: "heights of Hallin, an invented island, in decimetres",
+		}),
+		raster.WriteGeoTIFF(filepath.Join(folder, "hallin-cover.tif"), raster.GeoTIFF{
+			Grid: cover, GeoTransform: place, EPSG: island.EPSG, Type: raster.Uint8, NoData: &none,
+			About: "land cover of Hallin: 1 sea, 2 open, 3 woodland, 4 village, 5 fresh water",
+		}),
+	)
+}

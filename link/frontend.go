@@ -1,0 +1,164 @@
+package link
+
+import (
+	"fmt"
+	"math"
+
+	"fellreach/antenna"
+	"fellreach/link/noise"
+)
+
+// A frontEnd is a station at one frequency: the antenna solved as installed, and what lies
+// between it and the radio.
+type frontEnd struct {
+	*Station
+	solution antenna.Solution
+	line     antenna.Transfer
+}
+
+// frontEnd solves the station's antenna at a frequency of the channel. The impedance counts at
+// whichever of the channel's edges or its centre delivers the least.
+func (s *Station) frontEnd(freqHz float64, c Channel) (frontEnd, error) {
+	f := frontEnd{Station: s}
+	for i, hz := range [...]float64{freqHz, freqHz - c.BandwidthHz/2, freqHz + c.BandwidthHz/2} {
+		solution, err := s.Antenna.Solve(antenna.Setting{FreqHz: hz, DesignHz: c.centreHz(), MastDiameterM: s.MastDiameterM, StandoffM: s.StandoffM})
+		if err != nil {
+			return frontEnd{}, fmt.Errorf("%s: antenna %s: %w", s.Name, s.Antenna.Name, err)
+		}
+		line, err := s.Run.Transfer(solution.ImpedanceOhm, s.Match, hz)
+		if err != nil {
+			return frontEnd{}, fmt.Errorf("%s: %w", s.Name, err)
+		}
+		if i == 0 {
+			f.solution, f.line = solution, line
+		} else if line.TotalDB() > f.line.TotalDB() {
+			f.line = line
+		}
+	}
+	return f, nil
+}
+
+// field returns the antenna's field towards a direction, its nulls filled.
+func (f *frontEnd) field(toward antenna.Direction) antenna.Field {
+	return f.solution.Pattern.Filled(f.Mount.Field(f.solution.Pattern, toward))
+}
+
+// lines writes the station's part of a budget, from radio to antenna for the transmitter and the
+// other way for the receiver.
+func (f *frontEnd) lines(b *Budget, toward antenna.Direction, transmits bool) {
+	var part []Line
+	add := func(kind Kind, name string, dB float64, source string) {
+		part = append(part, Line{f.Name + ": " + name, dB, kind, source})
+	}
+	f.insertLines(add, transmits, false)
+	f.feederLines(add)
+	f.insertLines(add, transmits, true)
+	f.antennaLines(add, toward)
+	if !transmits {
+		for i, j := 0, len(part)-1; i < j; i, j = i+1, j-1 {
+			part[i], part[j] = part[j], part[i]
+		}
+	}
+	b.Lines = append(b.Lines, part...)
+	b.warn(f.warnings(toward)...)
+}
+
+func (f *frontEnd) insertLines(add func(Kind, string, float64, string), transmits, atMast bool) {
+	for _, in := range f.Inserts {
+		switch {
+		case in.AtMast != atMast, in.ReceiveOnly && transmits:
+		case in.GainDB > 0:
+			add(GainLine, in.Name, in.GainDB, in.Source)
+		default:
+			add(LossLine, in.Name, -in.LossDB, in.Source)
+		}
+	}
+}
+
+func (f *frontEnd) feederLines(add func(Kind, string, float64, string)) {
+	add(LossLine, "mismatch at the radio", -f.line.MismatchLossDB,
+		fmt.Sprintf("VSWR %.2f at the radio, %.2f at the antenna (%s)", f.line.RadioVSWR, f.line.AntennaVSWR, impedance(f.solution.ImpedanceOhm)))
+	connectorsDB := float64(f.Run.ConnectorCount) * f.Run.ConnectorLossDB
+	if f.Run.LengthM > 0 {
+		add(LossLine, fmt.Sprintf("feeder %s, %g m", f.Run.Feeder.Name, f.Run.LengthM), connectorsDB-f.line.MatchedLossDB, f.RunSource+", between its points by the square root of frequency")
+	}
+	if f.Run.ConnectorCount > 0 {
+		add(LossLine, fmt.Sprintf("connectors, %d of %g dB", f.Run.ConnectorCount, f.Run.ConnectorLossDB), -connectorsDB, f.ConnectorSource)
+	}
+	if f.line.MatchedLossDB > 0 {
+		add(LossLine, "standing waves on the feeder", -f.line.ExtraLossDB, "line theory: what a mismatched line loses beyond its matched loss")
+	}
+	if f.Match.LossDB > 0 {
+		add(LossLine, "matching transformer", -f.line.TransformerLossDB, f.MatchSource)
+	}
+}
+
+func (f *frontEnd) antennaLines(add func(Kind, string, float64, string), toward antenna.Direction) {
+	name := "directivity towards the path"
+	if f.solution.GainKnown {
+		name = "gain towards the path"
+	} else {
+		add(LossLine, "conductor loss", 10*math.Log10(f.solution.Efficiency), fmt.Sprintf("efficiency %.3f", f.solution.Efficiency))
+	}
+	add(GainLine, name, f.field(toward).GainDBi(),
+		fmt.Sprintf("%s (%s): %s; az %.1f el %+.2f", f.Antenna.Name, f.AntennaSource, f.solution.Source, toward.AzDeg, toward.ElDeg))
+}
+
+// impedance writes an impedance as the trade does.
+func impedance(z complex128) string {
+	sign := "+"
+	if imag(z) < 0 {
+		sign = "-"
+	}
+	return fmt.Sprintf("%.1f %s j%.1f ohm", real(z), sign, math.Abs(imag(z)))
+}
+
+func (f *frontEnd) warnings(toward antenna.Direction) []string {
+	var list []string
+	for _, note := range append(append([]string(nil), f.solution.Notes...), f.line.Notes...) {
+		list = append(list, f.Name+": "+note)
+	}
+	// A vertical beam narrower than 2 degrees is none of this program's antennas.
+	if off := math.Abs(toward.ElDeg - f.Mount.TiltDeg); off > 1 {
+		if width := f.Mount.VerticalWidthDeg(f.solution.Pattern); off > width/2 {
+			list = append(list, fmt.Sprintf("%s: the path leaves %.1f degrees off the antenna's axis, outside its vertical beamwidth of %.0f degrees", f.Name, off, width))
+		}
+	}
+	return list
+}
+
+// need writes what the receiver asks for, and by how much a preamplifier's noise raises it.
+func (f *frontEnd) need(b *Budget) {
+	n := f.Radio.Needs
+	if n.Stated {
+		b.add(NeedLine, f.Name+": sensitivity", -n.SensitivityDBm, n.Source)
+	} else {
+		thermal := noise.ThermalDBm(n.BandwidthHz)
+		b.add(NeedLine, f.Name+": noise floor and signal-to-noise ratio", -(thermal + n.FigureDB + n.RequiredSNRDB),
+			fmt.Sprintf("k T0 B %.1f dBm in %g kHz, noise figure %g dB, ratio %g dB (%s)", thermal, n.BandwidthHz/1e3, n.FigureDB, n.RequiredSNRDB, n.Source))
+	}
+	if stages, amplified := f.stages(); amplified {
+		b.add(NoiseLine, f.Name+": noise through the preamplifier", -noise.RiseDB(1, stages, n.FigureDB),
+			fmt.Sprintf("Friis, referred to the receiver's port; noise figure %g dB", n.FigureDB))
+	}
+}
+
+// stages lists what lies between the antenna and the receiver, the antenna first.
+func (f *frontEnd) stages() (list []noise.Stage, amplified bool) {
+	insert := func(atMast bool) {
+		for i := len(f.Inserts) - 1; i >= 0; i-- {
+			switch in := f.Inserts[i]; {
+			case in.AtMast != atMast:
+			case in.GainDB > 0:
+				list, amplified = append(list, noise.Stage{GainDB: in.GainDB, FigureDB: in.FigureDB}), true
+			default:
+				list = append(list, noise.Passive(in.LossDB))
+			}
+		}
+	}
+	list = append(list, noise.Passive(-10*math.Log10(f.solution.Efficiency)+f.line.TransformerLossDB))
+	insert(true)
+	list = append(list, noise.Passive(f.line.MatchedLossDB+f.line.ExtraLossDB+f.line.MismatchLossDB))
+	insert(false)
+	return list, amplified
+}

@@ -1,0 +1,178 @@
+package plan
+
+import (
+	"errors"
+	"fmt"
+
+	"fellreach/link"
+	"fellreach/link/propagation"
+	"fellreach/terrain"
+	"fellreach/terrain/raster"
+
+	"github.com/paulmach/orb"
+)
+
+// A Network is a plan ready to run: its ground is open, its places are known, its names have
+// become stations and links.
+type Network struct {
+	Title      string
+	Ground     *raster.Ground
+	Stations   map[string]*link.Station // by the name that links use
+	Links      []*link.Link             // in the order of the plan
+	Conditions link.Conditions
+
+	plan   *Plan
+	places []orb.Point // of the plan's sites
+}
+
+// Open opens the plan's rasters and resolves its names. Errors are [Errors] where they have a
+// place in the plan. The caller closes the network.
+func (p *Plan) Open() (*Network, error) {
+	method, err := propagation.ByName(p.Method)
+	if err != nil {
+		return nil, err
+	}
+	n := &Network{
+		Title:    p.Title,
+		Stations: map[string]*link.Station{},
+		Conditions: link.Conditions{
+			Method: method, DeltaN: *p.Air.DeltaN, N0: *p.Air.N0,
+			SpreadDB: float64(*p.Prediction.Spread), BiasDB: float64(*p.Prediction.Bias),
+		},
+		plan: p,
+	}
+	c := &checker{Plan: p}
+	n.locate(c)
+	n.addStations(c)
+	n.addLinks(c)
+	if len(c.errs) > 0 {
+		return nil, c.errs.sorted()
+	}
+	n.Ground, err = raster.Open(p.groundSpec())
+	if err != nil {
+		return nil, c.at("ground", err)
+	}
+	return n, nil
+}
+
+// Close closes the rasters.
+func (n *Network) Close() { n.Ground.Close() }
+
+// at gives an error its place in the plan.
+func (c *checker) at(path string, err error) error {
+	before := len(c.errs)
+	c.refuse(path, err)
+	return c.errs[before:]
+}
+
+// refuse reports an error from below at a place of the plan.
+func (c *checker) refuse(path string, err error) {
+	var h *hinted
+	if errors.As(err, &h) {
+		c.wrong(path, h.problem, h.hint)
+		return
+	}
+	c.wrong(path, err.Error(), "")
+}
+
+func (p *Plan) groundSpec() raster.Spec {
+	spec := raster.Spec{
+		Surface:   p.Ground.Elevation.Holds == "surface",
+		BridgeM:   float64(*p.Ground.BridgeVoids),
+		BeyondSea: p.Ground.Beyond == "sea",
+	}
+	for _, f := range p.Ground.Elevation.Files {
+		spec.Elevation = append(spec.Elevation, p.resolvePath(f))
+	}
+	if p.Ground.Step != nil {
+		spec.StepM = float64(*p.Ground.Step)
+	}
+	if cover := p.Ground.Cover; cover != nil {
+		spec.Cover = p.resolvePath(cover.Raster)
+		spec.Classes = terrain.Classes{}
+		for value, class := range cover.Classes {
+			zone := terrain.Inland
+			if class.Zone == "sea" {
+				zone = terrain.Sea
+			}
+			spec.Classes[value] = terrain.Class{HeightM: float64(class.Height), Zone: zone}
+		}
+	}
+	return spec
+}
+
+// samePlaceM is how near two sites must not be: a link between them has no path.
+const samePlaceM = 1
+
+// locate finds the places of all sites.
+func (n *Network) locate(c *checker) {
+	n.places = make([]orb.Point, len(c.Sites))
+	for i, s := range c.Sites {
+		path := fmt.Sprintf("sites[%d].at", i)
+		where, err := s.At.coordinates()
+		if err == nil {
+			n.places[i], err = raster.Locate(where)
+		}
+		if err != nil {
+			c.refuse(path, err)
+			continue
+		}
+		for j := range i {
+			if d, _, _ := raster.Inverse(n.places[i], n.places[j]); d < samePlaceM {
+				c.wrong(path, fmt.Sprintf("%q stands where %q stands", s.Name, c.Sites[j].Name), "put several radios at one place into the stations of one site")
+			}
+		}
+	}
+}
+
+func (a At) coordinates() (terrain.Coordinates, error) {
+	if a.EPSG != nil {
+		return terrain.Coordinates{EPSG: a.EPSG.EPSG, Easting: a.EPSG.Easting, Northing: a.EPSG.Northing}, nil
+	}
+	return terrain.ParseCoordinates(a.Text)
+}
+
+func (n *Network) addLinks(c *checker) {
+	if c.Links.Auto {
+		c.wrong("links", "auto is not done by this version", "list the links")
+	}
+	for i, l := range c.Links.List {
+		path := fmt.Sprintf("links[%d]", i)
+		if len(l.Via) > 0 {
+			c.wrong(path+".via", "chains are not computed by this version", "write each hop as a link of its own")
+			continue
+		}
+		n.Links = append(n.Links, n.link(c, path, l))
+	}
+}
+
+func (n *Network) link(c *checker, path string, l Link) *link.Link {
+	out := &link.Link{
+		Name: l.Name, From: n.Stations[l.From], To: n.Stations[l.To], OneWay: l.OneWay,
+		Channel: c.Channels[l.Channel].resolve(l.Channel),
+		Aim:     link.Aim{AvailabilityPct: float64(*l.Aim.Availability)},
+	}
+	if l.Aim.Margin != nil {
+		out.Aim.MarginDB = float64(*l.Aim.Margin)
+	}
+	if l.Aim.Chance != nil {
+		out.Aim.ChancePct = float64(*l.Aim.Chance)
+	}
+	if l.Fade != nil {
+		out.Fade = &link.Allowance{Name: "fading", LossDB: float64(*l.Fade), Source: "stated, " + c.source(path+".fade")}
+	}
+	for i, a := range l.Allowances {
+		out.Allowances = append(out.Allowances, link.Allowance{Name: a.Name, LossDB: float64(a.Loss), Source: c.source(fmt.Sprintf("%s.allowances[%d]", path, i))})
+	}
+	return out
+}
+
+func (ch Channel) resolve(name string) link.Channel {
+	out := link.Channel{Name: name, BandwidthHz: float64(ch.Bandwidth)}
+	if ch.Frequency != nil {
+		out.OutHz, out.BackHz = float64(*ch.Frequency), float64(*ch.Frequency)
+	} else {
+		out.OutHz, out.BackHz = float64(*ch.Out), float64(*ch.Back)
+	}
+	return out
+}

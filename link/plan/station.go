@@ -1,0 +1,157 @@
+package plan
+
+import (
+	"fmt"
+
+	"fellreach/antenna"
+	"fellreach/link"
+	"fellreach/terrain/raster"
+)
+
+// addStations resolves every station that has a radio and an antenna.
+func (n *Network) addStations(c *checker) {
+	designs := map[string]antenna.Design{}
+	for i, s := range c.Sites {
+		path := fmt.Sprintf("sites[%d]", i)
+		if len(s.Stations) == 0 {
+			n.addStation(c, designs, path, s.Name, i, s.Station)
+		}
+		for name, st := range sorted(s.Stations) {
+			n.addStation(c, designs, path+".stations."+name, s.Name+"/"+name, i, st)
+		}
+	}
+}
+
+func (n *Network) addStation(c *checker, designs map[string]antenna.Design, path, name string, siteIndex int, st Station) {
+	if st.Radio == "" || st.Antenna == nil {
+		return
+	}
+	use := st.Antenna
+	if _, known := designs[use.Use]; !known {
+		d, err := c.design(use.Use)
+		if err != nil {
+			c.refuse("antennas."+use.Use, err)
+		}
+		designs[use.Use] = d
+	}
+	s := c.Sites[siteIndex]
+	out := &link.Station{
+		Name: name, Order: siteIndex, At: n.places[siteIndex],
+		ClearingM:     float64(*s.Clearing),
+		Radio:         c.resolveRadio(st.Radio),
+		Antenna:       designs[use.Use],
+		AntennaSource: c.source("antennas." + use.Use),
+		AglM:          float64(use.AboveGround),
+		Mount:         n.mount(siteIndex, *use),
+	}
+	if s.GroundLevel != nil {
+		level := float64(*s.GroundLevel)
+		out.GroundAslM = &level
+	}
+	if s.Mast != nil {
+		_, out.MastDiameterM = mastSize(s.Mast)
+	}
+	if use.Standoff != nil {
+		out.StandoffM = float64(*use.Standoff)
+	}
+	c.feed(out, path, st)
+	n.Stations[name] = out
+}
+
+// mount returns how an antenna hangs: facing a bearing, a site, or north.
+func (n *Network) mount(siteIndex int, use AntennaUse) antenna.Mount {
+	var m antenna.Mount
+	if f := use.Facing; f != nil {
+		m.FacingDeg = f.BearingDeg
+		if f.Site != "" {
+			_, m.FacingDeg, _ = raster.Inverse(n.places[siteIndex], n.places[n.plan.siteIndex(f.Site)])
+		}
+	}
+	if use.Tilt != nil {
+		m.TiltDeg = float64(*use.Tilt)
+	}
+	if use.Polarization != nil {
+		m.RollDeg = use.Polarization.SlantDeg
+	}
+	return m
+}
+
+// feed fills in what lies between a station's radio and its antenna.
+func (c *checker) feed(out *link.Station, path string, st Station) {
+	for i, in := range st.Inserts {
+		out.Inserts = append(out.Inserts, in.resolve(c.source(fmt.Sprintf("%s.inserts[%d]", path, i))))
+	}
+	if f := st.Feeder; f != nil {
+		out.Run = antenna.Run{Feeder: c.Feeders[f.Use].resolve(f.Use), LengthM: float64(f.Length)}
+		out.RunSource = c.source("feeders." + f.Use)
+		if k := f.Connectors; k != nil {
+			out.Run.ConnectorCount, out.Run.ConnectorLossDB = k.Count, float64(k.LossEach)
+			out.ConnectorSource = c.source(path + ".feeder.connectors")
+		}
+		if err := out.Run.Feeder.Check(); err != nil {
+			c.refuse("feeders."+f.Use, err)
+		}
+	}
+	if m := matchOf(c.Antennas[st.Antenna.Use]); m != nil {
+		out.Match = m.resolve()
+		out.MatchSource = c.source("antennas." + st.Antenna.Use + ".match")
+	}
+}
+
+func (f Feeder) resolve(name string) antenna.Feeder {
+	out := antenna.Feeder{Name: name, ImpedanceOhm: float64(f.Impedance), VelocityFactor: *f.VelocityFactor}
+	for _, p := range f.Loss {
+		out.Loss = append(out.Loss, antenna.LossPoint{FreqHz: p.FreqHz, DBPerM: p.DBPerM})
+	}
+	return out
+}
+
+func (in Insert) resolve(source string) link.Insert {
+	out := link.Insert{Name: in.Name, ReceiveOnly: in.ReceiveOnly, AtMast: in.Where == "mast", Source: source}
+	if in.Loss != nil {
+		out.LossDB = float64(*in.Loss)
+	}
+	if in.Gain != nil {
+		out.GainDB, out.FigureDB = float64(*in.Gain), float64(*in.NoiseFigure)
+	}
+	return out
+}
+
+// resolveRadio returns the radio of a name with the sources of its figures.
+func (c *checker) resolveRadio(name string) link.Radio {
+	r, path := c.Radios[name], "radios."+name
+	out := link.Radio{Name: name, DutyPct: float64(*r.Duty)}
+	if r.Power != nil {
+		out.PowerDBm, out.PowerSource = float64(*r.Power), c.source(path+".power")
+	}
+	need := &out.Needs
+	if r.NoiseFigure != nil {
+		need.FigureDB = float64(*r.NoiseFigure)
+	}
+	if r.NoiseBandwidth != nil {
+		need.BandwidthHz = float64(*r.NoiseBandwidth)
+	}
+	if r.Capture != nil {
+		need.CaptureDB = float64(*r.Capture)
+	}
+	if r.Sensitivity != nil {
+		need.Stated, need.SensitivityDBm, need.Source = true, float64(*r.Sensitivity), c.source(path+".sensitivity")
+		if _, stated := c.where[path+".noise_figure"]; !stated {
+			need.Source += fmt.Sprintf("; noise figure %g dB assumed", need.FigureDB)
+		}
+	} else {
+		need.RequiredSNRDB, need.Source = float64(*r.RequiredSNR), c.source(path)
+	}
+	return out
+}
+
+func (m Match) resolve() antenna.Match {
+	var out antenna.Match
+	if m.Ratio != nil {
+		out.Ratio = float64(*m.Ratio)
+	}
+	if m.Loss != nil {
+		out.LossDB = float64(*m.Loss)
+	}
+	return out
+}

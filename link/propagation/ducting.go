@@ -1,0 +1,105 @@
+package propagation
+
+import "math"
+
+// A duct is a path as the model of ducting and layer reflection sees it: km, m, mrad.
+type duct struct {
+	f, d         float64
+	horizons     horizons
+	time         timeParameters
+	smooth       surfaceLine // hst, hsr
+	hts, hrs     float64     // antennas above sea level
+	hte, hre, hm float64     // antennas above the smooth surface, roughness
+	dct, dcr     float64     // distances to the coast
+}
+
+// newDuct fits the smooth surface of the ducting model to the ground. Unlike that of the
+// diffraction model it is not lowered under obstructions.
+//
+// Source: Rec. ITU-R P.1812-6, (85), (86) and (90) to (93).
+func newDuct(p *Path, h horizons, t timeParameters) duct {
+	last := len(p.DistKm) - 1
+	smooth := fitSurface(p.DistKm, p.AslM).limited(p.AslM[0], p.AslM[last])
+	u := duct{
+		f: p.FreqHz / 1e9, d: p.LengthKm(), horizons: h, time: t, smooth: smooth,
+		hts: p.txAslM(), hrs: p.rxAslM(), dct: p.TxCoastKm, dcr: p.RxCoastKm,
+	}
+	u.hte, u.hre = u.hts-smooth.tx, u.hrs-smooth.rx // (92)
+	u.hm = roughness(p, smooth, h)
+	return u
+}
+
+// roughness returns hm, the largest height of the ground over the smooth surface between the
+// horizons, both included, (93).
+func roughness(p *Path, smooth surfaceLine, h horizons) float64 {
+	m := (smooth.rx - smooth.tx) / p.LengthKm()
+	hm := math.Inf(-1)
+	for i := min(h.tx, h.rx); i <= max(h.tx, h.rx); i++ {
+		hm = max(hm, p.AslM[i]-(smooth.tx+m*p.DistKm[i]))
+	}
+	return hm
+}
+
+// lossDB returns Lba, dB, the loss by ducting and layer reflection not exceeded for p percent of
+// the time.
+//
+// Source: Rec. ITU-R P.1812-6, (46).
+func (u *duct) lossDB(p float64) float64 { return u.couplingDB() + u.alongDB(p) }
+
+// couplingDB returns Af, the fixed loss between the antennas and the anomalous structure in the
+// air, (47) to (50).
+func (u *duct) couplingDB() float64 {
+	h := &u.horizons
+	alf := 0.0
+	if u.f < 0.5 {
+		alf = 45.375 - 137.0*u.f + 92.5*u.f*u.f
+	}
+	return 102.45 + 20*math.Log10(u.f) + 20*math.Log10(h.dlt+h.dlr) + alf +
+		u.shieldingDB(h.thetaT, h.dlt) + u.shieldingDB(h.thetaR, h.dlr) +
+		u.coastDB(u.dct, h.dlt, u.hts) + u.coastDB(u.dcr, h.dlr, u.hrs)
+}
+
+// shieldingDB returns As, the diffraction loss by the ground that shields an antenna whose horizon
+// lies at the elevation theta and the distance dl, (48) and (48a).
+func (u *duct) shieldingDB(theta, dl float64) float64 {
+	over := theta - 0.1*dl
+	if over <= 0 {
+		return 0
+	}
+	return 20*math.Log10(1+0.361*over*math.Sqrt(u.f*dl)) + 0.264*over*math.Cbrt(u.f)
+}
+
+// coastDB returns Ac, the correction for coupling over the sea of an antenna dc km from the coast at
+// hs m above sea level (from memory: not above ground): never positive, (49).
+func (u *duct) coastDB(dc, dl, hs float64) float64 {
+	if u.time.omega < 0.75 || dc > dl || dc > 5 {
+		return 0
+	}
+	return -3 * math.Exp(-0.25*dc*dc) * (1 + math.Tanh(0.07*(50-hs)))
+}
+
+// alongDB returns Ad(p), the loss along the anomalous structure by angle and time, (51) to (56).
+func (u *duct) alongDB(p float64) float64 {
+	h := &u.horizons
+	gammaD := 5e-5 * u.horizons.ae * math.Cbrt(u.f)
+	theta := 1000*u.d/u.horizons.ae + min(h.thetaT, 0.1*h.dlt) + min(h.thetaR, 0.1*h.dlr)
+	logBeta := u.logBeta()
+	gamma := 1.076 / math.Pow(2.0058-logBeta, 1.012) *
+		math.Exp(-(9.51-4.8*logBeta+0.198*logBeta*logBeta)*1e-6*math.Pow(u.d, 1.13))
+	x := math.Log10(p) - logBeta // of p/beta
+	return gammaD*theta - 12 + (1.2+3.7e-3*u.d)*x + 12*math.Pow(10, gamma*x)
+}
+
+// logBeta returns the logarithm of beta, beta0 with its corrections for the geometry of the path
+// and the roughness of the ground. On rough paths beta itself may be too small for a number.
+func (u *duct) logBeta() float64 {
+	alpha := max(-0.6-3.5e-9*math.Pow(u.d, 3.1)*u.time.tau, -3.4)
+	roots := math.Sqrt(u.hte) + math.Sqrt(u.hre)
+	logMu2 := min(0, alpha*math.Log10(500/u.horizons.ae*u.d*u.d/(roots*roots)))
+	logMu3 := 0.0
+	if u.hm > 10 {
+		di := min(u.d-u.horizons.dlt-u.horizons.dlr, 40)
+		logMu3 = -4.6e-5 * (u.hm - 10) * (43 + 6*di) / math.Ln10
+	}
+	return math.Log10(u.time.beta0) + logMu2 + logMu3
+}

@@ -1,0 +1,95 @@
+package report
+
+import (
+	"encoding/json"
+	"io"
+
+	"fellreach/link"
+	"fellreach/link/plan"
+)
+
+type linksJSON struct {
+	Title string     `json:"title"`
+	Links []linkJSON `json:"links"`
+}
+
+type linkJSON struct {
+	Name       string          `json:"name,omitempty"`
+	From       string          `json:"from"`
+	To         string          `json:"to"`
+	Channel    string          `json:"channel"`
+	DistanceKm float64         `json:"distance_km"`
+	AzimuthDeg float64         `json:"azimuth_deg"`
+	BackAzDeg  float64         `json:"back_azimuth_deg"`
+	Verdict    link.Verdict    `json:"verdict"`
+	MarginDB   float64         `json:"margin_db"`
+	Chance     float64         `json:"chance"`
+	Clearance  clearanceJSON   `json:"clearance"`
+	Warnings   []string        `json:"warnings"`
+	Directions []directionJSON `json:"directions"`
+}
+
+type clearanceJSON struct {
+	WorstRatio  float64 `json:"worst_ratio"`
+	AtKm        float64 `json:"at_km"`
+	NeededRatio float64 `json:"needed_ratio"`
+}
+
+type directionJSON struct {
+	From               string     `json:"from"`
+	To                 string     `json:"to"`
+	FrequencyHz        float64    `json:"frequency_hz"`
+	MarginDB           float64    `json:"margin_db"`
+	ReceivedDBm        float64    `json:"received_dbm"`
+	RequiredDBm        float64    `json:"required_dbm"`
+	TransmissionLossDB float64    `json:"transmission_loss_db"`
+	FadeDB             float64    `json:"fade_db"`
+	DepartureDeg       float64    `json:"departure_deg"`
+	ArrivalDeg         float64    `json:"arrival_deg"`
+	Lines              []lineJSON `json:"lines"`
+}
+
+type lineJSON struct {
+	Name    string    `json:"name"`
+	ValueDB float64   `json:"value_db"`
+	Kind    link.Kind `json:"kind"`
+	Source  string    `json:"source"`
+}
+
+// LinksJSON writes the links of a plan with their budgets, in full precision. The chance is a
+// fraction of one.
+func LinksJSON(w io.Writer, r *plan.Result) error {
+	out := linksJSON{Title: r.Title, Links: make([]linkJSON, len(r.Links))}
+	for i, l := range r.Links {
+		out.Links[i] = linkOf(l)
+	}
+	return indented(w, out)
+}
+
+func linkOf(r *link.Result) linkJSON {
+	out := linkJSON{
+		Name: r.Link.Name, From: r.Link.From.Name, To: r.Link.To.Name, Channel: r.Link.Channel.Name,
+		DistanceKm: r.Profile.LengthKm(), AzimuthDeg: r.Profile.AzDeg, BackAzDeg: r.Profile.BackAzDeg,
+		Verdict: r.Verdict, MarginDB: r.MarginDB, Chance: r.ChancePct / 100,
+		Clearance: clearanceJSON{r.Clearance.WorstRatio, r.Clearance.AtKm, r.Clearance.NeededRatio},
+		Warnings:  append([]string{}, r.Warnings...),
+	}
+	for _, b := range r.Directions {
+		d := directionJSON{
+			From: b.From, To: b.To, FrequencyHz: b.FreqHz, MarginDB: b.MarginDB, ReceivedDBm: b.ReceivedDBm, RequiredDBm: b.RequiredDBm,
+			TransmissionLossDB: b.TransmissionLossDB, FadeDB: b.FadeDB, DepartureDeg: b.DepartureDeg, ArrivalDeg: b.ArrivalDeg,
+		}
+		for _, l := range b.Lines {
+			d.Lines = append(d.Lines, lineJSON{l.Name, l.DB, l.Kind, l.Source})
+		}
+		out.Directions = append(out.Directions, d)
+	}
+	return out
+}
+
+func indented(w io.Writer, v any) error {
+	e := json.NewEncoder(w)
+	e.SetIndent("", "  ")
+	e.SetEscapeHTML(false)
+	return e.Encode(v)
+}

@@ -1,0 +1,136 @@
+package report
+
+import (
+	"fmt"
+	"io"
+	"strings"
+
+	"fellreach/link"
+	"fellreach/link/plan"
+
+	"github.com/jedib0t/go-pretty/v6/table"
+	"github.com/jedib0t/go-pretty/v6/text"
+)
+
+// LinksTable writes the links of a plan as a table for people, then a count of the verdicts and
+// the warnings.
+func LinksTable(w io.Writer, r *plan.Result) error {
+	t := newTable("", "from", "to", "channel", "km", "azimuth", "margin out", "back", "chance", "path")
+	for _, l := range r.Links {
+		back := "one way"
+		if len(l.Directions) > 1 {
+			back = signed(l.Directions[1].MarginDB, 1)
+		}
+		t.AppendRow(table.Row{
+			l.Verdict.Mark() + " " + string(l.Verdict), l.Link.From.Name, l.Link.To.Name, l.Link.Channel.Name, decimals(l.Profile.LengthKm(), 2), azimuth(l.Profile.AzDeg),
+			signed(l.Directions[0].MarginDB, 1), back, percent(l.ChancePct), pathWords(l),
+		})
+	}
+	t.right("km", "azimuth", "margin out", "back", "chance")
+	if _, err := fmt.Fprintf(w, "%s\n\n%s\n\n%s\n", r.Title, t.Render(), verdictCount(r.Links)); err != nil {
+		return err
+	}
+	return writeWarnings(w, r.Links)
+}
+
+// pathWords says in words how freely a path runs.
+func pathWords(l *link.Result) string {
+	c := l.Clearance
+	switch {
+	case c.WorstRatio >= 1:
+		return "clear"
+	case c.WorstRatio >= c.NeededRatio:
+		return fmt.Sprintf("clear, %s of the first Fresnel zone at %s km", decimals(c.WorstRatio, 1), decimals(c.AtKm, 1))
+	case c.WorstRatio >= 0:
+		return fmt.Sprintf("grazes at %s km", decimals(c.AtKm, 1))
+	}
+	return fmt.Sprintf("blocked at %s km", decimals(c.AtKm, 1))
+}
+
+func verdictCount(links []*link.Result) string {
+	count := map[link.Verdict]int{}
+	for _, l := range links {
+		count[l.Verdict]++
+	}
+	return fmt.Sprintf("%d links: %d close, %d thin, %d fail. Margins in dB; azimuths from true north.", len(links), count[link.Closes], count[link.Thin], count[link.Fails])
+}
+
+// writeWarnings lists each warning once, with the links it stands for.
+func writeWarnings(w io.Writer, links []*link.Result) error {
+	var order []string
+	where := map[string][]string{}
+	for _, l := range links {
+		for _, text := range l.Warnings {
+			if where[text] == nil {
+				order = append(order, text)
+			}
+			where[text] = append(where[text], l.Link.Title())
+		}
+	}
+	for i, warning := range order {
+		lead := "\n"
+		if i > 0 {
+			lead = ""
+		}
+		names := where[warning]
+		if len(names) > 3 {
+			names = append(names[:3:3], fmt.Sprintf("%d more", len(where[warning])-3))
+		}
+		if _, err := fmt.Fprintf(w, "%swarning: %s [%s]\n", lead, warning, strings.Join(names, "; ")); err != nil {
+			return err
+		}
+	}
+	return nil
+}
+
+// LinesTable writes the whole budget of every link, line by line.
+func LinesTable(w io.Writer, r *plan.Result) error {
+	for _, l := range r.Links {
+		for _, b := range l.Directions {
+			t := newTable("line", "dB", "sum", "kind", "source")
+			sum := 0.0
+			for _, line := range b.Lines {
+				sum += line.DB
+				t.AppendRow(table.Row{line.Name, signed(line.DB, 2), decimals(sum, 2), line.Kind, line.Source})
+			}
+			t.right("dB", "sum")
+			if _, err := fmt.Fprintf(w, "\n%s → %s at %s MHz: received %s dBm, required %s dBm, margin %s dB\n%s\n",
+				b.From, b.To, decimals(b.FreqHz/1e6, 4), decimals(b.ReceivedDBm, 1), decimals(b.RequiredDBm, 1), signed(b.MarginDB, 1), t.Render()); err != nil {
+				return err
+			}
+		}
+	}
+	return nil
+}
+
+// A plainTable is a table with a rule under its head and no frame: it stays legible in a terminal
+// and in an e-mail.
+type plainTable struct {
+	table.Writer
+	head []string
+}
+
+func newTable(head ...string) plainTable {
+	t := plainTable{table.NewWriter(), head}
+	row := make(table.Row, len(head))
+	for i, h := range head {
+		row[i] = h
+	}
+	t.AppendHeader(row)
+	style := table.StyleLight
+	style.Options = table.OptionsNoBordersAndSeparators
+	style.Options.SeparateHeader = true
+	style.Format.Header = text.FormatDefault
+	t.SetStyle(style)
+	t.SuppressTrailingSpaces()
+	return t
+}
+
+// right aligns columns of figures.
+func (t plainTable) right(names ...string) {
+	var columns []table.ColumnConfig
+	for _, name := range names {
+		columns = append(columns, table.ColumnConfig{Name: name, Align: text.AlignRight, AlignHeader: text.AlignRight})
+	}
+	t.SetColumnConfigs(columns)
+}
