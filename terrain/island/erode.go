@@ -16,7 +16,8 @@ const (
 // what rises.
 //
 // This is the steady state of the stream power law with exponents m = 1/2 and n = 1: slope is
-// uplift over the square root of the catchment.
+// uplift over the square root of the catchment (Howard, Water Resources Research 30, 1994, from
+// memory). Where it would be steeper than ground can stand, the slope is steepest.
 func (g ground) erode() {
 	h := g.height
 	w := drain(h, g.land)

@@ -23,7 +23,7 @@ const (
 // Heights returns the heights of the Cols x Rows cells in decimetres above the sea, which lies
 // at 0; all land is higher. From every cell water finds a way to the sea that never climbs.
 //
-// Making the island takes about a second and 150 MB; nothing is kept between calls.
+// Making the island takes one to two seconds and 170 MB; nothing is kept between calls.
 func Heights() []int16 {
 	_, w, _ := flooded()
 	dm := make([]int16, len(w.levelMm))

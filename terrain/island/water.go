@@ -14,7 +14,8 @@ type water struct {
 // priority flood; Barnes, Lehman and Mulla, Computers & Geosciences 62, 2014, from memory).
 func drain(h field, land []bool) water {
 	w := water{make([]int32, len(h.v)), nil, make([]int32, len(h.v))}
-	first, last, next := make([]int32, maxMm), make([]int32, maxMm), make([]int32, len(h.v)) // cell 0 is sea: it ends a queue
+	// Cell 0 is sea: it stands for all of it, and in the queues for their end.
+	first, last, next := make([]int32, maxMm), make([]int32, maxMm), make([]int32, len(h.v))
 	flood := func(i, from int32) {
 		mm := max(h.v[i], w.levelMm[from], 1)
 		w.levelMm[i], w.receiver[i] = mm, from
@@ -26,8 +27,8 @@ func drain(h field, land []bool) water {
 		last[mm] = i
 	}
 	around := h.around()
-	for _, beach := range shore(land, around) {
-		flood(beach.land, beach.sea)
+	for _, i := range shore(land, around) {
+		flood(i, 0)
 	}
 	for _, i := range first {
 		for ; i > 0; i = next[i] {
@@ -45,21 +46,20 @@ func drain(h field, land []bool) water {
 	return w
 }
 
-// shore lists the land cells that touch the sea, each with a cell of the sea that it touches.
-// The outermost cells of a grid are always sea.
-func shore(land []bool, around [8]int) (beaches []struct{ land, sea int32 }) {
+// shore lists the land cells that touch the sea. The outermost cells of a grid are always sea.
+func shore(land []bool, around [8]int) (cells []int32) {
 	for i, dry := range land {
 		if !dry {
 			continue
 		}
 		for _, step := range around {
 			if !land[i+step] {
-				beaches = append(beaches, struct{ land, sea int32 }{int32(i), int32(i + step)})
+				cells = append(cells, int32(i))
 				break
 			}
 		}
 	}
-	return beaches
+	return cells
 }
 
 // steepest returns the neighbour to which a cell drains: the steepest way down, or the way by
