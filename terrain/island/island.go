@@ -1,5 +1,5 @@
 // Package island makes Hallin, the invented island of the demonstration: about 53 km from west to
-// east in mid-ocean, with a main ridge of 800 m, a river of 40 km with its valley and a lake,
+// east in mid-ocean, with a main ridge of 800 m, a river of 45 km with its valley and a lake,
 // a plain, cliffs and islets, on a grid of 30 m.
 //
 // The method is fluvial landscape evolution: hand-drawn lines of uplift and coast (outline.go), bent by
