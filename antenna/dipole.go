@@ -24,7 +24,7 @@ type DipoleSpec struct {
 // the induced-EMF method at the rod's surface, conductor loss from the skin effect.
 //
 // Solve refuses a rod thicker than a tenth of its length, and one fed where a sinusoidal current
-// vanishes (in the middle of a full wave), since its impedance has no answer there.
+// is small (near the middle of a full wave), since it gives no impedance there.
 func Dipole(spec DipoleSpec) (Design, error) {
 	if err := spec.check(); err != nil {
 		return Design{}, err

@@ -147,11 +147,12 @@ func TestDipoleRefusesWhatHasNoAnswer(t *testing.T) {
 		setting Setting
 		says    string
 	}{
-		{"full wave in its middle", DipoleSpec{Length: Length{Wavelengths: 1}, FeedAt: 0.5, DiameterM: 0.004, Material: Ideal}, Setting{FreqHz: 150e6}, "vanishes at the feed"},
+		{"full wave in its middle", DipoleSpec{Length: Length{Wavelengths: 1}, FeedAt: 0.5, DiameterM: 0.004, Material: Ideal}, Setting{FreqHz: 150e6}, "too small at the feed"},
 		{"half waves of two sizes", DipoleSpec{Length: Length{Wavelengths: 1.5}, FeedAt: 1.0 / 3, DiameterM: 0.004, Material: Ideal}, Setting{FreqHz: 150e6}, "both multiples of a half wave"},
 		{"stump", DipoleSpec{Length: Length{M: 0.03}, FeedAt: 0.5, DiameterM: 0.004, Material: Ideal}, Setting{FreqHz: 150e6}, "at most a tenth"},
 		{"thick resonant", DipoleSpec{FeedAt: 0.5, DiameterM: 0.2, Material: Ideal}, Setting{FreqHz: 150e6}, "at most a tenth"},
-		{"resonant, fed at its end", DipoleSpec{FeedAt: 0.01, DiameterM: 0.002, Material: Ideal}, Setting{FreqHz: 150e6}, "no resonant length"},
+		{"resonant, fed at its end", DipoleSpec{FeedAt: 0.01, DiameterM: 0.002, Material: Ideal}, Setting{FreqHz: 150e6}, "too small at the feed"},
+		{"resonant, of a choke's metal", DipoleSpec{FeedAt: 0.5, DiameterM: 1e-4, Material: Material{"mu-metal", 2e6, 5e4}}, Setting{FreqHz: 30e6}, "no resonant length"},
 		{"no frequency", DipoleSpec{FeedAt: 0.5, DiameterM: 0.004, Material: Ideal}, Setting{}, "frequency 0 Hz is out of range"},
 		{"NaN frequency", DipoleSpec{FeedAt: 0.5, DiameterM: 0.004, Material: Ideal}, Setting{FreqHz: math.NaN()}, "frequency NaN"},
 		{"negative standoff", DipoleSpec{FeedAt: 0.5, DiameterM: 0.004, Material: Ideal}, Setting{FreqHz: 150e6, StandoffM: -1}, "standoff -1 m"},
