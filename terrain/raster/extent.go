@@ -96,7 +96,8 @@ func (f *file) extendToPoles(lonLat orb.Bound) (orb.Bound, error) {
 	in := &f.info
 	for i, pole := range poles {
 		if col, row := f.cell(at[i]); terrain.Inside(in.Cols, in.Rows, col, row) {
-			lonLat = lonLat.Extend(orb.Point{-180, pole.Lat()}).Extend(orb.Point{180, pole.Lat()})
+			lonLat = lonLat.Extend(pole)
+			lonLat.Min[0], lonLat.Max[0] = -180, 180
 		}
 	}
 	return lonLat, nil

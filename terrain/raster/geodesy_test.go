@@ -11,10 +11,10 @@ import (
 // Source: GeodSolve of GeographicLib 2.1.2 with -E, which works by elliptic integrals where PROJ
 // works by series; -i for the inverse problem. Printed to 1e-6 m and 1e-11 degrees.
 var geodesics = []struct {
-	name               string
-	a, b               orb.Point
-	azDeg, backAzDeg   float64
-	distM              float64
+	name             string
+	a, b             orb.Point
+	azDeg, backAzDeg float64
+	distM            float64
 }{
 	{"island", orb.Point{-20.1180, 47.5231}, orb.Point{-19.8843, 47.6012}, 63.63668271641, 180 + 63.80915573980, 19613.817755},
 	{"2 m", orb.Point{-20.1180, 47.5231}, orb.Point{-20.11799, 47.52312}, 18.71041911551, 180 + 18.71042649101, 2.347692},
