@@ -165,11 +165,11 @@ func latLon(first, second []token) (Coordinates, error) {
 	if err != nil {
 		return Coordinates{}, err
 	}
-	if a.isLon() || b.isLat() {
-		a, b = b, a
+	if a.isLat() && b.isLat() || a.isLon() && b.isLon() {
+		return Coordinates{}, fmt.Errorf("both angles are of the same kind (%c and %c): one of N, S and one of E, W is due", a.letter, b.letter)
 	}
 	if a.isLon() || b.isLat() {
-		return Coordinates{}, fmt.Errorf("both angles are of the same kind (%c and %c): one of N, S and one of E, W is due", a.letter, b.letter)
+		a, b = b, a
 	}
 	if math.Abs(a.deg) > 90 {
 		return Coordinates{}, fmt.Errorf("understood as latitude %g: allowed are -90 to 90 degrees; latitude stands first unless letters say otherwise", a.deg)
