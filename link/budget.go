@@ -1,5 +1,7 @@
 package link
 
+import "slices"
+
 // A Kind tells what a line of a budget stands for. It is wording, never arithmetic.
 type Kind string
 
@@ -38,24 +40,37 @@ type Budget struct {
 	// DepartureDeg and ArrivalDeg are the elevations of the path at From and at To.
 	DepartureDeg, ArrivalDeg float64
 	ChancePct                float64
-	Warnings                 []string
+	Warnings                 []Warning
+}
+
+// A Warning is what a reader of a budget must know: a limit that was touched, at a station or,
+// where At is empty, on the path.
+type Warning struct{ At, Text string }
+
+// String writes the warning with its place before it.
+func (w Warning) String() string {
+	if w.At == "" {
+		return w.Text
+	}
+	return w.At + ": " + w.Text
 }
 
 func (b *Budget) add(kind Kind, name string, dB float64, source string) {
 	b.Lines = append(b.Lines, Line{name, dB, kind, source})
 }
 
-// warn adds a warning once.
-func (b *Budget) warn(texts ...string) {
+// warn adds warnings of a place, each once.
+func (b *Budget) warn(at string, texts ...string) {
 	for _, text := range texts {
-		known := false
-		for _, w := range b.Warnings {
-			known = known || w == text
-		}
-		if !known {
-			b.Warnings = append(b.Warnings, text)
-		}
+		b.Warnings = addWarning(b.Warnings, Warning{at, text})
 	}
+}
+
+func addWarning(list []Warning, w Warning) []Warning {
+	if slices.Contains(list, w) {
+		return list
+	}
+	return append(list, w)
 }
 
 // close adds up the lines.

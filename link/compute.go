@@ -20,7 +20,7 @@ type Result struct {
 	MarginDB, ChancePct float64
 	Verdict             Verdict
 	Clearance           propagation.FresnelClearance // AtKm counts from From
-	Warnings            []string
+	Warnings            []Warning
 }
 
 // Compute works out a link over the ground between its ends. The profile p runs from the end
@@ -58,10 +58,8 @@ func (r *Result) direct(w *way, from, to *Station, freqHz float64) error {
 	r.Directions = append(r.Directions, b)
 	r.MarginDB = min(r.MarginDB, b.MarginDB)
 	r.ChancePct = min(r.ChancePct, b.ChancePct)
-	for _, text := range b.Warnings {
-		if !slices.Contains(r.Warnings, text) {
-			r.Warnings = append(r.Warnings, text)
-		}
+	for _, warning := range b.Warnings {
+		r.Warnings = addWarning(r.Warnings, warning)
 	}
 	return nil
 }
@@ -187,7 +185,7 @@ func (w *way) budget(from, to *Station, freqHz float64) (Budget, error) {
 	rx.lines(&b, in, false)
 	rx.need(&b)
 	w.allowanceLines(&b)
-	b.warn(w.profile.Notes...)
+	b.warn("", w.profile.Notes...)
 	b.close()
 	b.ChancePct = w.conditions.chancePct(b.MarginDB)
 	return b, nil
@@ -205,7 +203,7 @@ func (w *way) pathLines(b *Budget, freqHz, verticalShare float64) error {
 	if m.Name != propagation.FreeSpace.Name {
 		b.add(LossLine, "terrain and air", -(loss.DB - loss.Terms.Lbfs), fmt.Sprintf("%s over %d points of %.0f m, median Earth radius %.0f km", m.Edition, len(w.profile.DistKm), w.stepM(), loss.Terms.Ae))
 	}
-	b.warn(loss.Notes...)
+	b.warn("", loss.Notes...)
 	return nil
 }
 

@@ -3,6 +3,7 @@ package link
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"fellreach/antenna"
 	"fellreach/link/noise"
@@ -55,12 +56,10 @@ func (f *frontEnd) lines(b *Budget, toward antenna.Direction, transmits bool) {
 	f.insertLines(add, transmits, true)
 	f.antennaLines(add, toward)
 	if !transmits {
-		for i, j := 0, len(part)-1; i < j; i, j = i+1, j-1 {
-			part[i], part[j] = part[j], part[i]
-		}
+		slices.Reverse(part)
 	}
 	b.Lines = append(b.Lines, part...)
-	b.warn(f.warnings(toward)...)
+	b.warn(f.Name, f.warnings(toward)...)
 }
 
 func (f *frontEnd) insertLines(add func(Kind, string, float64, string), transmits, atMast bool) {
@@ -114,14 +113,11 @@ func impedance(z complex128) string {
 }
 
 func (f *frontEnd) warnings(toward antenna.Direction) []string {
-	var list []string
-	for _, note := range append(append([]string(nil), f.solution.Notes...), f.line.Notes...) {
-		list = append(list, f.Name+": "+note)
-	}
+	list := slices.Concat(f.solution.Notes, f.line.Notes)
 	// A vertical beam narrower than 2 degrees is none of this program's antennas.
 	if off := math.Abs(toward.ElDeg - f.Mount.TiltDeg); off > 1 {
 		if width := f.Mount.VerticalWidthDeg(f.solution.Pattern); off > width/2 {
-			list = append(list, fmt.Sprintf("%s: the path leaves %.1f degrees off the antenna's axis, outside its vertical beamwidth of %.0f degrees", f.Name, off, width))
+			list = append(list, fmt.Sprintf("the path leaves %.1f degrees off the antenna's axis, outside its vertical beamwidth of %.0f degrees", off, width))
 		}
 	}
 	return list

@@ -24,6 +24,9 @@ func (c *checker) sites() {
 }
 
 func (c *checker) site(path string, s Site) {
+	if _, err := s.At.coordinates(); err != nil {
+		c.refuse(path+".at", err)
+	}
 	if s.GroundLevel != nil {
 		c.within(path+".ground_level", float64(*s.GroundLevel), -500, 9000, "m")
 	}

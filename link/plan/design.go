@@ -41,7 +41,7 @@ func (p *Plan) design(name string) (antenna.Design, error) {
 }
 
 func (spec *Dipole) design() (antenna.Design, error) {
-	metal, err := antenna.MaterialNamed(spec.Material.Material)
+	metal, err := antenna.MaterialNamed(spec.Material)
 	if err != nil {
 		return antenna.Design{}, err
 	}

@@ -109,11 +109,9 @@ func (n *Network) locate(c *checker) {
 	n.places = make([]orb.Point, len(c.Sites))
 	for i, s := range c.Sites {
 		path := fmt.Sprintf("sites[%d].at", i)
-		where, err := s.At.coordinates()
-		if err == nil {
-			n.places[i], err = raster.Locate(where)
-		}
-		if err != nil {
+		where, _ := s.At.coordinates() // checked by Parse
+		var err error
+		if n.places[i], err = raster.Locate(where); err != nil {
 			c.refuse(path, err)
 			continue
 		}

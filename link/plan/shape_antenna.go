@@ -12,8 +12,8 @@ func (antennaKinds) kinds() []kind {
 	}
 }
 
-// Material is what a wire antenna is made of.
-type Material struct {
+// Metal is what a wire antenna is made of.
+type Metal struct {
 	Material string `json:"material" jsonschema:"enum=copper,enum=aluminium,enum=brass,enum=stainless,enum=steel,enum=ideal"`
 }
 
@@ -28,7 +28,7 @@ type Dipole struct {
 	Length   RodLength `json:"length"`
 	FeedAt   *float64  `json:"feed_at,omitempty" jsonschema:"minimum=0,maximum=1" jsonschema_description:"fraction of the length from the lower end; 0.5 when left out"`
 	Diameter Length    `json:"diameter"`
-	Material
+	Metal
 	Match *Match `json:"match,omitempty"`
 }
 
@@ -37,14 +37,14 @@ type FoldedDipole struct {
 	Length   RodLength `json:"length"`
 	Diameter Length    `json:"diameter"`
 	Spacing  Length    `json:"spacing"`
-	Material
+	Metal
 	Match *Match `json:"match,omitempty"`
 }
 
 // Yagi is parallel rods along a boom, one of them fed.
 type Yagi struct {
 	Diameter Length `json:"diameter"`
-	Material
+	Metal
 	Elements []Element `json:"elements" jsonschema:"minItems=2"`
 	Match    *Match    `json:"match,omitempty"`
 }
@@ -69,7 +69,7 @@ type Stack struct {
 type Wires struct {
 	Wires []Wire `json:"wires" jsonschema:"minItems=1"`
 	Feeds []Feed `json:"feeds" jsonschema:"minItems=1"`
-	Material
+	Metal
 	Match *Match `json:"match,omitempty"`
 }
 

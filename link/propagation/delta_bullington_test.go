@@ -132,8 +132,7 @@ func oneKm() Path {
 	return p
 }
 
-// The loss is the same from either end. The spherical Earth jumps where the length passes the
-// horizon distance: rounding could put the two directions on either side, which no draw has hit.
+// The loss is the same from either end.
 func TestReciprocity(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		p := drawPath(t)

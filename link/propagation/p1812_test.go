@@ -175,7 +175,7 @@ func TestTypedCases(t *testing.T) {
 		}
 		want := tc.want.List()
 		for i, got := range l.Terms.List() {
-			if math.Abs(got.Value-want[i].Value) > 2e-7 {
+			if math.Abs(got.Value-want[i].Value) > 5e-7 {
 				t.Errorf("%s: %s = %.10g, want %.10g", tc.name, got.Symbol, got.Value, want[i].Value)
 			}
 		}

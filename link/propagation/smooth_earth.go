@@ -43,9 +43,9 @@ type SmoothPath struct {
 }
 
 // LossDB returns the diffraction loss Ldsph, dB: 0 when the path clears the smooth Earth, the
-// first term of the residue series beyond the radio horizon, in between an interpolation that is
-// never negative. It jumps a little where the length passes the horizon distance, as the
-// Recommendation has it.
+// first term of the residue series beyond the radio horizon, in between an interpolation. Within
+// the horizon it is never negative; beyond it is, for very low antennas over sea with vertical
+// polarization, and counts as no loss.
 //
 // Source: Rec. ITU-R P.1812-6, section 4.3.2, (22) to (27).
 func (e SmoothEarth) LossDB(p SmoothPath) float64 {

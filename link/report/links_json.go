@@ -72,7 +72,10 @@ func linkOf(r *link.Result) linkJSON {
 		DistanceKm: r.Profile.LengthKm(), AzimuthDeg: r.Profile.AzDeg, BackAzDeg: r.Profile.BackAzDeg,
 		Verdict: r.Verdict, MarginDB: r.MarginDB, Chance: r.ChancePct / 100,
 		Clearance: clearanceJSON{r.Clearance.WorstRatio, r.Clearance.AtKm, r.Clearance.NeededRatio},
-		Warnings:  append([]string{}, r.Warnings...),
+		Warnings:  []string{},
+	}
+	for _, w := range r.Warnings {
+		out.Warnings = append(out.Warnings, w.String())
 	}
 	for _, b := range r.Directions {
 		d := directionJSON{

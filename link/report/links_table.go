@@ -3,6 +3,7 @@ package report
 import (
 	"fmt"
 	"io"
+	"slices"
 	"strings"
 
 	"fellreach/link"
@@ -40,7 +41,7 @@ func pathWords(l *link.Result) string {
 	case c.WorstRatio >= 1:
 		return "clear"
 	case c.WorstRatio >= c.NeededRatio:
-		return fmt.Sprintf("clear, %s of the first Fresnel zone at %s km", decimals(c.WorstRatio, 1), decimals(c.AtKm, 1))
+		return fmt.Sprintf("clear, %s F1 at %s km", decimals(c.WorstRatio, 1), decimals(c.AtKm, 1))
 	case c.WorstRatio >= 0:
 		return fmt.Sprintf("grazes at %s km", decimals(c.AtKm, 1))
 	}
@@ -52,31 +53,33 @@ func verdictCount(links []*link.Result) string {
 	for _, l := range links {
 		count[l.Verdict]++
 	}
-	return fmt.Sprintf("%d links: %d close, %d thin, %d fail. Margins in dB; azimuths from true north.", len(links), count[link.Closes], count[link.Thin], count[link.Fails])
+	return fmt.Sprintf("%d links: %d close, %d thin, %d fail. Margins in dB, azimuths from true north, F1 the first Fresnel radius.", len(links), count[link.Closes], count[link.Thin], count[link.Fails])
 }
 
-// writeWarnings lists each warning once, with the links it stands for.
+// writeWarnings lists each warning once, with the stations or links it stands for.
 func writeWarnings(w io.Writer, links []*link.Result) error {
 	var order []string
-	where := map[string][]string{}
+	places := map[string][]string{}
 	for _, l := range links {
-		for _, text := range l.Warnings {
-			if where[text] == nil {
-				order = append(order, text)
+		for _, warning := range l.Warnings {
+			place := warning.At
+			if place == "" {
+				place = l.Link.Title()
 			}
-			where[text] = append(where[text], l.Link.Title())
+			if places[warning.Text] == nil {
+				order = append(order, warning.Text)
+			}
+			if !slices.Contains(places[warning.Text], place) {
+				places[warning.Text] = append(places[warning.Text], place)
+			}
 		}
 	}
-	for i, warning := range order {
-		lead := "\n"
-		if i > 0 {
-			lead = ""
+	for i, text := range order {
+		lead := ""
+		if i == 0 {
+			lead = "\n"
 		}
-		names := where[warning]
-		if len(names) > 3 {
-			names = append(names[:3:3], fmt.Sprintf("%d more", len(where[warning])-3))
-		}
-		if _, err := fmt.Fprintf(w, "%swarning: %s [%s]\n", lead, warning, strings.Join(names, "; ")); err != nil {
+		if _, err := fmt.Fprintf(w, "%swarning: %s\n         (%s)\n", lead, text, strings.Join(places[text], ", ")); err != nil {
 			return err
 		}
 	}
@@ -94,6 +97,7 @@ func LinesTable(w io.Writer, r *plan.Result) error {
 				t.AppendRow(table.Row{line.Name, signed(line.DB, 2), decimals(sum, 2), line.Kind, line.Source})
 			}
 			t.right("dB", "sum")
+			t.wrap("source", 72)
 			if _, err := fmt.Fprintf(w, "\n%s → %s at %s MHz: received %s dBm, required %s dBm, margin %s dB\n%s\n",
 				b.From, b.To, decimals(b.FreqHz/1e6, 4), decimals(b.ReceivedDBm, 1), decimals(b.RequiredDBm, 1), signed(b.MarginDB, 1), t.Render()); err != nil {
 				return err
@@ -107,11 +111,11 @@ func LinesTable(w io.Writer, r *plan.Result) error {
 // and in an e-mail.
 type plainTable struct {
 	table.Writer
-	head []string
+	columns []table.ColumnConfig
 }
 
-func newTable(head ...string) plainTable {
-	t := plainTable{table.NewWriter(), head}
+func newTable(head ...string) *plainTable {
+	t := &plainTable{Writer: table.NewWriter()}
 	row := make(table.Row, len(head))
 	for i, h := range head {
 		row[i] = h
@@ -127,10 +131,15 @@ func newTable(head ...string) plainTable {
 }
 
 // right aligns columns of figures.
-func (t plainTable) right(names ...string) {
-	var columns []table.ColumnConfig
+func (t *plainTable) right(names ...string) {
 	for _, name := range names {
-		columns = append(columns, table.ColumnConfig{Name: name, Align: text.AlignRight, AlignHeader: text.AlignRight})
+		t.columns = append(t.columns, table.ColumnConfig{Name: name, Align: text.AlignRight, AlignHeader: text.AlignRight})
 	}
-	t.SetColumnConfigs(columns)
+	t.SetColumnConfigs(t.columns)
+}
+
+// wrap breaks a column of text between words.
+func (t *plainTable) wrap(name string, width int) {
+	t.columns = append(t.columns, table.ColumnConfig{Name: name, WidthMax: width, WidthMaxEnforcer: text.WrapSoft})
+	t.SetColumnConfigs(t.columns)
 }

@@ -74,6 +74,7 @@ func (d *drawing) frame() {
 	title := fmt.Sprintf("%s → %s", d.Link.From.Name, d.Link.To.Name)
 	d.f("<title>%s</title>\n<desc>%s</desc>\n", html.EscapeString(title), html.EscapeString(SectionSummary(d.Section)))
 	d.f(`<rect width="%d" height="%d" fill="#ffffff"/>`+"\n", svgWidth, svgHeight)
+	d.f(`<clipPath id="plot"><rect x="%d" y="%d" width="%d" height="%d"/></clipPath>`+"\n", svgLeft, svgTop, plotWidth, plotHeight)
 	d.f(`<text x="%d" y="22" font-size="16" font-weight="600" fill="%s">%s</text>`+"\n", svgLeft, inkText, html.EscapeString(title))
 	d.f(`<text x="%d" y="41" fill="%s">%s</text>`+"\n", svgLeft, inkQuiet, html.EscapeString(d.subtitle()))
 	for _, m := range ticks(d.lowM, d.highM) {
@@ -112,8 +113,7 @@ func (d *drawing) ray() {
 	last := len(d.RayM) - 1
 	upper := d.outline(func(i int) float64 { return d.RayM[i] + 0.6*d.Fresnel1M[i] })
 	lower := d.outline(func(i int) float64 { return d.RayM[i] - 0.6*d.Fresnel1M[i] })
-	d.f(`<path d="%s" fill="none" stroke="%s" stroke-width="1.3" stroke-dasharray="6 3"/>`+"\n", upper, inkZone)
-	d.f(`<path d="%s" fill="none" stroke="%s" stroke-width="1.3" stroke-dasharray="6 3"/>`+"\n", lower, inkZone)
+	d.f(`<path d="%s%s" fill="none" stroke="%s" stroke-width="1.3" stroke-dasharray="6 3" clip-path="url(#plot)"/>`+"\n", upper, lower, inkZone)
 	d.f(`<path d="M%.1f %.1fL%.1f %.1f" stroke="%s" stroke-width="1.8"/>`+"\n", d.x(0), d.y(d.RayM[0]), d.x(d.Profile.LengthKm()), d.y(d.RayM[last]), inkRay)
 	d.f(`<g transform="translate(%d,%d)" fill="%s"><path d="M0 -4h26" stroke="%s" stroke-width="1.8"/><text x="32">ray</text>`, svgLeft, svgHeight-10, inkQuiet, inkRay)
 	d.f(`<path d="M74 -4h26" stroke="%s" stroke-width="1.3" stroke-dasharray="6 3"/><text x="106">0.6 of the first Fresnel zone</text>`, inkZone)
