@@ -32,7 +32,7 @@
 // notes say so where there is one.
 //
 // Known deviations: the dipole's current is taken as sinusoidal, which makes the resistance of a
-// real rod near a half wave 7 to 20 % too low, more so the thicker it is, and its impedance far
+// real rod near a half wave 4 to 25 % too low, more so the thicker it is, and its impedance far
 // from a current maximum a rough estimate (noted, or refused); F.1336 patterns are envelopes for
 // sharing studies and start at 400 MHz.
 package antenna

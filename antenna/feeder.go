@@ -64,13 +64,8 @@ func (f Feeder) LossDBPerM(freqHz float64) (lossDBPerM float64, note string, err
 		return 0, "", fmt.Errorf("feeder %s: its loss at %s is not known: it is stated from %s to %s and holds a factor of two beyond; add a point",
 			f.Name, megahertz(freqHz), megahertz(lowest.FreqHz), megahertz(highest.FreqHz))
 	}
-	for i, point := range points {
-		switch {
-		case freqHz == point.FreqHz:
-			return point.DBPerM, "", nil
-		case freqHz < point.FreqHz && i > 0:
-			return points[i-1].toward(point, freqHz), "", nil
-		}
+	if freqHz >= lowest.FreqHz && freqHz <= highest.FreqHz {
+		return interpolated(points, freqHz), "", nil
 	}
 	nearest := lowest
 	if freqHz > highest.FreqHz {
@@ -80,10 +75,15 @@ func (f Feeder) LossDBPerM(freqHz float64) (lossDBPerM float64, note string, err
 	return nearest.DBPerM * math.Sqrt(freqHz/nearest.FreqHz), note, nil
 }
 
-// toward returns the loss at a frequency between two points.
-func (p LossPoint) toward(next LossPoint, freqHz float64) float64 {
-	root, from, to := math.Sqrt(freqHz), math.Sqrt(p.FreqHz), math.Sqrt(next.FreqHz)
-	return p.DBPerM + (root-from)/(to-from)*(next.DBPerM-p.DBPerM)
+// interpolated returns the loss in dB/m at a frequency within ascending points.
+func interpolated(points []LossPoint, freqHz float64) float64 {
+	i := slices.IndexFunc(points, func(p LossPoint) bool { return p.FreqHz >= freqHz })
+	if i == 0 {
+		return points[0].DBPerM
+	}
+	below, above := points[i-1], points[i]
+	root, from, to := math.Sqrt(freqHz), math.Sqrt(below.FreqHz), math.Sqrt(above.FreqHz)
+	return below.DBPerM + (root-from)/(to-from)*(above.DBPerM-below.DBPerM)
 }
 
 func megahertz(freqHz float64) string { return fmt.Sprintf("%g MHz", freqHz/1e6) }

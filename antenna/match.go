@@ -61,18 +61,18 @@ func (r Run) Transfer(antennaOhm complex128, match Match, freqHz float64) (Trans
 	}
 	load, reference := antennaOhm/complex(match.Ratio, 0), r.ImpedanceOhm()
 	accepted := acceptedPart(load, reference)
-	a := powerRatio(matchedDB)
-	returned := (1 - accepted) / (a * a) // |G|^2 at the radio
+	absorbed := -math.Expm1(-2 * matchedDB / 10 * math.Ln10) // 1 - 1/a^2
+	atRadio := min(1, accepted+(1-accepted)*absorbed)        // 1 - |G|^2/a^2
 	t := Transfer{
 		LoadOhm:           load,
 		ReferenceOhm:      reference,
 		Reflection:        (load - complex(reference, 0)) / (load + complex(reference, 0)),
 		AntennaVSWR:       VSWR(load, reference),
-		RadioVSWR:         vswr(math.Sqrt(returned), 1-returned),
+		RadioVSWR:         vswr(atRadio),
 		TransformerLossDB: match.LossDB,
 		MatchedLossDB:     matchedDB,
-		ExtraLossDB:       decibels((1 - returned) / accepted),
-		MismatchLossDB:    -decibels(1 - returned),
+		ExtraLossDB:       decibels(atRadio / accepted),
+		MismatchLossDB:    decibels(1 / atRadio),
 	}
 	if note != "" {
 		t.Notes = append(t.Notes, note)
@@ -86,13 +86,15 @@ func (r Run) Transfer(antennaOhm complex128, match Match, freqHz float64) (Trans
 // VSWR returns the voltage standing wave ratio of an impedance of positive resistance against a
 // real reference, both in ohm: 1 and more.
 func VSWR(loadOhm complex128, referenceOhm float64) float64 {
-	accepted := acceptedPart(loadOhm, referenceOhm)
-	return vswr(math.Sqrt(1-accepted), accepted)
+	return vswr(acceptedPart(loadOhm, referenceOhm))
 }
 
-// vswr returns (1 + g)/(1 - g) for a reflection of magnitude g, given with 1 - g^2, which stays
+// vswr returns (1 + g)/(1 - g) for a reflection of magnitude g, given as 1 - g^2, which stays
 // exact where g is close to 1.
-func vswr(g, accepted float64) float64 { return (1 + g) * (1 + g) / accepted }
+func vswr(accepted float64) float64 {
+	g := math.Sqrt(1 - accepted)
+	return (1 + g) * (1 + g) / accepted
+}
 
 // acceptedPart returns 1 - |G|^2, the part of a wave's power that a load takes from a line, 0 to 1.
 func acceptedPart(load complex128, referenceOhm float64) float64 {

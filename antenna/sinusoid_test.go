@@ -114,7 +114,7 @@ func TestEmfRowsOfReference(t *testing.T) {
 	}
 }
 
-// A real rod of radius 0.0001 to 0.001 wl near its half wave, by a moment method: how far the
+// A real rod of radius 0.00001 to 0.005 wl near its half wave, by a moment method: how far the
 // closed forms lie from it, as the package's documentation says.
 func TestClosedFormsAgainstRealRods(t *testing.T) {
 	for _, row := range referenceRows(t, "dipole_impedance.csv") {
