@@ -7,8 +7,15 @@ type antennaKinds struct{}
 
 func (antennaKinds) kinds() []kind {
 	return []kind{
-		{"dipole", &Dipole{}}, {"folded-dipole", &FoldedDipole{}}, {"yagi", &Yagi{}}, {"stack", &Stack{}}, {"wires", &Wires{}},
-		{"table", &PatternTable{}}, {"cuts", &PatternCuts{}}, {"omni", &Omni{}}, {"datasheet", &Datasheet{}},
+		{"dipole", &Dipole{}},
+		{"folded-dipole", &FoldedDipole{}},
+		{"yagi", &Yagi{}},
+		{"stack", &Stack{}},
+		{"wires", &Wires{}},
+		{"table", &PatternTable{}},
+		{"cuts", &PatternCuts{}},
+		{"omni", &Omni{}},
+		{"datasheet", &Datasheet{}},
 	}
 }
 
