@@ -88,10 +88,13 @@ func readCut(r io.Reader) (cut, error) {
 		if math.Abs(gain) > 1000 {
 			return cut{}, fileErrorf(r.line, "gain %g dB is out of range: -1000 to 1000 is allowed", gain)
 		}
-		if first, ok := gains[circleDeg(deg)]; ok && (first.values[0] == deg || first.values[1] != gain) {
+		first, again := gains[circleDeg(deg)]
+		if again && (first.values[0] == deg || first.values[1] != gain) {
 			return cut{}, fileErrorf(r.line, "angle %g is in line %d already", deg, first.line)
 		}
-		gains[circleDeg(deg)] = r
+		if !again { // else the circle is closed
+			gains[circleDeg(deg)] = r
+		}
 		front = front && math.Abs(deg) <= 90
 		peak = max(peak, gain)
 	}

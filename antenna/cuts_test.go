@@ -161,6 +161,7 @@ func TestCutsErrors(t *testing.T) {
 		{"angle", headerCut + "400,0\n", v, "angle 400 is out of range: -180 to 360", 2},
 		{"gain", headerCut + "0,5000\n", v, "gain 5000 dB is out of range", 2},
 		{"twice", h + "0,1\n", v, "angle 0 is in line 2 already", 74},
+		{"twice, the circle closed between", h + "360,0\n0,0\n", v, "angle 0 is in line 2 already", 75},
 		{"circle closed otherwise", h, v + "360,-1\n", "vertical cut: line 74: angle 360 is in line 2 already", 74},
 		{"half a horizontal cut", half, v, "horizontal cut: angles run from -90 to 90: the whole circle is needed", 0},
 		{"a quarter", h, headerCut + "0,0\n30,-3\n60,-9\n90,-20\n", "vertical cut: angles run from 0 to 90", 0},

@@ -37,7 +37,7 @@ func (f Field) turned(cos, sin float64) Field {
 }
 
 // PolarizationMatchDB returns the loss between the polarizations of two antennas in dB, from 0
-// (alike) to floorDB (positive), the most that crossing them gains on a real path, where
+// (alike) to floorDB (positive), the most that crossing them costs on a real path, where
 // scattering turns part of the field. Each field is the one towards the other antenna, in the
 // frame of its own site (see [Mount.Field]).
 //

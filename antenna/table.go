@@ -73,10 +73,13 @@ func newGrid(rows []row) (grid, error) {
 			return grid{}, err
 		}
 		at := Direction{circleDeg(az), el}
-		if first, ok := placed[at]; ok && (first.values[0] == az || !slices.Equal(first.values[2:], r.values[2:])) {
+		first, again := placed[at]
+		if again && (first.values[0] == az || !slices.Equal(first.values[2:], r.values[2:])) {
 			return grid{}, fileErrorf(r.line, "azimuth %g elevation %g is in line %d already", az, el, first.line)
 		}
-		placed[at] = r
+		if !again { // else the circle is closed
+			placed[at] = r
+		}
 		azimuths[at.AzDeg], elevations[el] = true, true
 	}
 	g := grid{

@@ -113,6 +113,7 @@ func TestTableErrors(t *testing.T) {
 		{"gain", headerOneGain + "\n0,0,41\n", "gain 41 dBi is out of range", 2},
 		{"twice", plain + "0,90,1\n", "azimuth 0 elevation 90 is in line 13 already", 86},
 		{"twice alike", plain + "0,90,0\n", "is in line 13 already", 86},
+		{"twice, the circle closed between", plain + "360,90,0\n0,90,0\n", "azimuth 0 elevation 90 is in line 13 already", 87},
 		{"circle closed otherwise", plain + "360,90,3\n", "azimuth 360 elevation 90 is in line 13 already", 86},
 		{"missing", strings.Replace(plain, "\n120,-60,0\n", "\n", 1), "no row for azimuth 120 elevation -60", 0},
 		{"half a sphere", strings.ReplaceAll(plain, ",-90,", ",-89,"), "the whole sphere is needed", 0},
