@@ -129,11 +129,8 @@ func (p *Path) checkStatistics() error {
 // p1812Notes tells where the path leaves the ranges for which P.1812 is stated.
 func (p *Path) p1812Notes() []string {
 	var notes []string
-	if d := p.LengthKm(); d < leastKm {
-		notes = append(notes, fmt.Sprintf("the path of %.0f m is shorter than the 250 m from which P.1812 is stated: the loss is that of free space", 1000*d))
-	}
 	for _, l := range [...]limit{
-		{"the length of the path", p.LengthKm(), 0, 3000, " km"},
+		{"the length of the path", p.LengthKm(), leastKm, 3000, " km"},
 		{"the transmitter's height above ground", p.TxAglM, 1, 3000, " m"},
 		{"the receiver's height above ground", p.RxAglM, 1, 3000, " m"},
 		{"the percentage of time", p.TimePct, 1, 50, " %"},
@@ -141,6 +138,9 @@ func (p *Path) p1812Notes() []string {
 		if !l.holds() {
 			notes = append(notes, fmt.Sprintf("%s is %.6g%s, P.1812 is stated for %.6g to %.6g%s", l.name, l.value, l.unit, l.lo, l.hi, l.unit))
 		}
+	}
+	if p.LengthKm() < leastKm {
+		notes = append(notes, fmt.Sprintf("nearer than %g km the loss is that of free space, whatever stands in the way", leastKm))
 	}
 	return notes
 }

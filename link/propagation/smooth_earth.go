@@ -42,17 +42,20 @@ type SmoothPath struct {
 	SeaShare float64 // part of the path over sea, omega
 }
 
-// LossDB returns the diffraction loss Ldsph, dB: 0 when the path clears the smooth Earth, the
-// first term of the residue series beyond the radio horizon, in between an interpolation. Within
-// the horizon it is never negative; beyond it is, for very low antennas over sea with vertical
-// polarization, and counts as no loss.
+// LossDB returns the diffraction loss Ldsph, dB, never negative: 0 when the path clears the smooth
+// Earth, the first term of the residue series beyond the radio horizon, in between an
+// interpolation.
+//
+// The Recommendation lets the first term fall below 0 beyond the horizon, for very low antennas
+// over sea with vertical polarization, and drops it when it forms Ld. Here it is 0 already, so that
+// a mixture of polarizations has no step at the horizon; Ld is the same.
 //
 // Source: Rec. ITU-R P.1812-6, section 4.3.2, (22) to (27).
 func (e SmoothEarth) LossDB(p SmoothPath) float64 {
 	d, roots := p.LengthKm, math.Sqrt(p.TxM)+math.Sqrt(p.RxM)
 	dlos := math.Sqrt(2*0.001*p.RadiusKm) * roots // (~22)
 	if d >= dlos {
-		return e.firstTermDB(p, p.RadiusKm, math.Inf(-1))
+		return e.firstTermDB(p, p.RadiusKm)
 	}
 	hse, dse1, dse2 := p.leastClearance()
 	hreq := 17.456 * math.Sqrt(dse1*dse2*e.lambda/d) // (~26)
@@ -60,7 +63,7 @@ func (e SmoothEarth) LossDB(p SmoothPath) float64 {
 		return 0
 	}
 	aem := 500 * (d / roots) * (d / roots) // (~27)
-	return (1 - hse/hreq) * e.firstTermDB(p, aem, 0)
+	return (1 - hse/hreq) * e.firstTermDB(p, aem)
 }
 
 // leastClearance returns the height of the ray over the smooth Earth where it clears the least part
@@ -79,15 +82,15 @@ func (p SmoothPath) leastClearance() (hse, dse1, dse2 float64) {
 }
 
 // firstTermDB returns the first term of the residue series on an Earth of radius a km, land and
-// sea mixed by their shares, then the polarizations by theirs, each at least leastDB. What has no
+// sea mixed by their shares, then the polarizations, each at least 0, by theirs. What has no
 // weight is not computed.
-func (e SmoothEarth) firstTermDB(p SmoothPath, a, leastDB float64) float64 {
+func (e SmoothEarth) firstTermDB(p SmoothPath, a float64) float64 {
 	loss := 0.0
 	if v := e.verticalShare; v > 0 {
-		loss += v * max(leastDB, e.overGroundDB(p, a, e.land.vertical, e.sea.vertical))
+		loss += v * max(0, e.overGroundDB(p, a, e.land.vertical, e.sea.vertical))
 	}
 	if v := e.verticalShare; v < 1 {
-		loss += (1 - v) * max(leastDB, e.overGroundDB(p, a, e.land.horizontal, e.sea.horizontal))
+		loss += (1 - v) * max(0, e.overGroundDB(p, a, e.land.horizontal, e.sea.horizontal))
 	}
 	return loss
 }
