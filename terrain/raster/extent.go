@@ -10,15 +10,12 @@ import (
 )
 
 // locate relates the raster to WGS 84 and measures its cells and its extent there.
-func (f *file) locate(transforms map[string]*transform) error {
+func (f *file) locate() error {
 	in := &f.info
 	horizontal := in.readCRS()
 	var err error
-	if f.crs = transforms[horizontal.text]; f.crs == nil {
-		if f.crs, err = newTransform(horizontal.text); err != nil {
-			return fmt.Errorf("coordinate reference system %q: %w", in.CRS, err)
-		}
-		transforms[horizontal.text] = f.crs
+	if f.crs, err = transformTo(horizontal.text); err != nil {
+		return fmt.Errorf("coordinate reference system %q: %w", in.CRS, err)
 	}
 	centre := affine(in.GeoTransform).apply(float64(in.Cols)/2, float64(in.Rows)/2)
 	f.wrapsDeg = math.NaN()

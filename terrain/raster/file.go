@@ -16,7 +16,7 @@ import (
 
 // A file is one open raster: its place on Earth and how its values are to be read.
 type file struct {
-	handles  *handles
+	datasets *pool[gdal.Dataset]
 	info     Info
 	toCell   affine // from the reference system to cell-centre coordinates
 	crs      *transform
@@ -33,22 +33,34 @@ const (
 	forInspection use = "raster" // heights, but a picture is let through
 )
 
-// openFile opens a raster and reads all but its cells. Transforms are shared by the files of one
-// reference system through the map.
-func openFile(path string, purpose use, transforms map[string]*transform) (*file, error) {
-	f := &file{handles: newHandles(path), info: Info{Path: path, Warnings: []string{}}}
-	err := f.handles.with(func(dataset gdal.Dataset) error {
+// openFile opens a raster and reads all but its cells.
+func openFile(path string, purpose use) (*file, error) {
+	f := &file{
+		datasets: newPool(func() (gdal.Dataset, error) { return openDataset(path) }),
+		info:     Info{Path: path, Warnings: []string{}},
+	}
+	err := f.with(func(dataset gdal.Dataset) error {
 		return f.describe(dataset, purpose)
 	})
 	if err == nil {
-		err = f.locate(transforms)
+		err = f.locate()
 	}
 	if err != nil {
-		f.handles.close()
+		f.close()
 		return nil, fmt.Errorf("%s %s: %w", purpose, path, err)
 	}
 	return f, nil
 }
+
+// with lends an open data set of the file.
+func (f *file) with(use func(gdal.Dataset) error) error {
+	return f.datasets.with(func(dataset gdal.Dataset) error {
+		return call(func() error { return use(dataset) })
+	})
+}
+
+// close closes the file. Nobody may be reading it any more.
+func (f *file) close() { f.datasets.drain(gdal.Dataset.Close) }
 
 // openDataset opens a raster for reading with a message that tells what is wrong with it.
 func openDataset(path string) (dataset gdal.Dataset, err error) {
@@ -86,7 +98,7 @@ func (f *file) describe(dataset gdal.Dataset, purpose use) error {
 	f.toCell = inverse.toCentres()
 	in.wkt = dataset.Projection()
 	if strings.TrimSpace(in.wkt) == "" {
-		return errors.New("it names no coordinate reference system: assign one, for instance with gdal_edit.py -a_srs EPSG:32627")
+		return errors.New("it names no coordinate reference system: assign one, for instance with gdal_translate -a_srs EPSG:32627")
 	}
 	rule, err := readRule(dataset, in, purpose)
 	f.values = rule
@@ -121,69 +133,11 @@ func (f *file) cell(p orb.Point) (col, row float64) {
 // read reads a window of cells: heights in metres or classes, NaN where void.
 func (f *file) read(col, row, cols, rows int) (*terrain.Grid, error) {
 	grid := terrain.NewGrid(cols, rows)
-	err := f.handles.with(func(dataset gdal.Dataset) error {
+	err := f.with(func(dataset gdal.Dataset) error {
 		return f.values.read(dataset.RasterBand(1), col, row, grid)
 	})
 	if err != nil {
 		return nil, fmt.Errorf("%s: reading the cells from column %d, row %d on: %w", f.info.Path, col, row, err)
 	}
 	return grid, nil
-}
-
-// maxHandles is how many times one file may be open at once; more readers wait.
-const maxHandles = 4
-
-// handles are the open GDAL data sets of one file. A data set serves one goroutine at a time.
-type handles struct {
-	path string
-	idle chan gdal.Dataset // holds those open and unused
-	free chan struct{}     // one for each that may yet be opened
-}
-
-func newHandles(path string) *handles {
-	h := &handles{path, make(chan gdal.Dataset, maxHandles), make(chan struct{}, maxHandles)}
-	for range maxHandles {
-		h.free <- struct{}{}
-	}
-	return h
-}
-
-// with lends a data set to f, opening one if all are in use.
-func (h *handles) with(f func(gdal.Dataset) error) error {
-	dataset, err := h.take()
-	if err != nil {
-		return err
-	}
-	defer func() { h.idle <- dataset }()
-	return call(func() error { return f(dataset) })
-}
-
-func (h *handles) take() (gdal.Dataset, error) {
-	select {
-	case dataset := <-h.idle:
-		return dataset, nil
-	default:
-	}
-	select {
-	case dataset := <-h.idle:
-		return dataset, nil
-	case <-h.free:
-	}
-	dataset, err := openDataset(h.path)
-	if err != nil {
-		h.free <- struct{}{}
-	}
-	return dataset, err
-}
-
-// close closes what is idle; none may be lent any more.
-func (h *handles) close() {
-	for {
-		select {
-		case dataset := <-h.idle:
-			dataset.Close()
-		default:
-			return
-		}
-	}
 }

@@ -25,7 +25,8 @@ type Spec struct {
 }
 
 // A Ground is the terrain as a set of rasters tells it. Many goroutines may ask it at once. It
-// keeps at most 512 MB of cells in memory, whatever the size of the files.
+// keeps at most 512 MB of cells in memory, whatever the size of the files, and GDAL at most 128 MB
+// of file blocks.
 type Ground struct {
 	spec      Spec
 	stepM     float64
@@ -65,9 +66,8 @@ func (s Spec) check() error {
 }
 
 func (g *Ground) openFiles() error {
-	transforms := map[string]*transform{}
 	for _, path := range g.spec.Elevation {
-		f, err := openFile(path, forElevation, transforms)
+		f, err := openFile(path, forElevation)
 		if err != nil {
 			return err
 		}
@@ -77,7 +77,7 @@ func (g *Ground) openFiles() error {
 		return nil
 	}
 	var err error
-	g.cover, err = openFile(g.spec.Cover, forCover, transforms)
+	g.cover, err = openFile(g.spec.Cover, forCover)
 	return err
 }
 
@@ -116,7 +116,7 @@ func (g *Ground) files() []*file {
 // Close closes the files. Nobody may be asking the ground any more.
 func (g *Ground) Close() {
 	for _, f := range g.files() {
-		f.handles.close()
+		f.close()
 	}
 }
 

@@ -94,6 +94,9 @@ func TestOpenErrors(t *testing.T) {
 	run(t, "", "gdal_translate", "-q", "-ot", "CFloat32", good, complexCells)
 	picture := filepath.Join(dir, "picture.tif")
 	run(t, "", "gdal_translate", "-q", "-ot", "Byte", "-b", "1", "-b", "1", "-b", "1", "-co", "PHOTOMETRIC=RGB", good, picture)
+	container := filepath.Join(dir, "two.gpkg")
+	run(t, "", "gdal_translate", "-q", "-ot", "Byte", "-of", "GPKG", "-co", "RASTER_TABLE=a", good, container)
+	run(t, "", "gdal_translate", "-q", "-ot", "Byte", "-of", "GPKG", "-co", "RASTER_TABLE=b", "-co", "APPEND_SUBDATASET=YES", good, container)
 	furlongs := utmPlane()
 	furlongs.edit = func(g *GeoTIFF) { g.Unit = "furlong" }
 	local := filepath.Join(dir, "local.tif")
@@ -115,6 +118,7 @@ func TestOpenErrors(t *testing.T) {
 		{"degrees by the million", Spec{Elevation: []string{odd}}, []string{"odd.tif", "do not belong together"}},
 		{"complex", Spec{Elevation: []string{complexCells}}, []string{"complex.tif", "CFloat32"}},
 		{"picture", Spec{Elevation: []string{picture}}, []string{"picture.tif", "Red", "not heights"}},
+		{"container", Spec{Elevation: []string{container}}, []string{"two.gpkg", "container of several rasters", "GPKG:" + container + ":a"}},
 		{"unit", Spec{Elevation: []string{furlongs.write(t, "furlongs.tif")}}, []string{"furlongs.tif", "furlong", "US survey feet"}},
 		{"cover in floats", Spec{Elevation: []string{good}, Cover: good}, []string{"cover raster", "plane.tif", "whole numbers"}},
 		{"step", Spec{Elevation: []string{good}, StepM: -1}, []string{"step of -1 m"}},
@@ -191,7 +195,7 @@ func TestNoStrayOutput(t *testing.T) {
 		t.Fatal(err)
 	}
 	command := exec.Command(os.Args[0], "-test.run=^TestNoStrayOutput$")
-	command.Env = append(os.Environ(), printsEnv+"="+dir)
+	command.Env = append(os.Environ(), printsEnv+"="+dir, "CPL_DEBUG=ON", "PROJ_DEBUG=3")
 	out, err := command.CombinedOutput()
 	if err != nil {
 		t.Fatalf("%v\n%s", err, out)

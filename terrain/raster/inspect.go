@@ -30,11 +30,11 @@ func (s Summary) VoidShare() float64 { return float64(s.Voids) / float64(s.Cells
 // its size does not matter. It stops with the context's error when that is done; progress, if not
 // nil, is told the share of the work done, 0 to 1.
 func Inspect(ctx context.Context, path string, progress func(done float64)) (Info, error) {
-	f, err := openFile(path, forInspection, map[string]*transform{})
+	f, err := openFile(path, forInspection)
 	if err != nil {
 		return Info{}, err
 	}
-	defer f.handles.close()
+	defer f.close()
 	summary, err := f.summarise(ctx, progress)
 	if err != nil {
 		return Info{}, err

@@ -1,25 +1,8 @@
 package raster
 
-// #include <stdlib.h>
-// #include <proj.h>
-//
-// // areaOfUse reads where on Earth a reference system is meant for; 0 where PROJ does not know
-// // the system or its area.
-// static int areaOfUse(const char *crs, double *west, double *south, double *east, double *north) {
-//   PJ_CONTEXT *context = proj_context_create();
-//   proj_log_level(context, PJ_LOG_NONE);
-//   PJ *system = proj_create(context, crs);
-//   int known = system != NULL && proj_get_area_of_use(context, system, west, south, east, north, NULL);
-//   proj_destroy(system);
-//   proj_context_destroy(context);
-//   return known && *west > -1000;
-// }
-import "C"
-
 import (
 	"fmt"
 	"math"
-	"unsafe"
 
 	"github.com/paulmach/orb"
 
@@ -48,11 +31,12 @@ func Locate(c terrain.Coordinates) (orb.Point, error) {
 
 func locateEPSG(c terrain.Coordinates) (orb.Point, error) {
 	code := fmt.Sprintf("EPSG:%d", c.EPSG)
-	crs, err := newTransform(code)
+	crs, err := transformTo(code)
 	if err != nil {
 		return orb.Point{}, fmt.Errorf("%s: %w", code, err)
 	}
-	place := []orb.Point{{c.Easting, c.Northing}}
+	given := orb.Point{c.Easting, c.Northing}
+	place := []orb.Point{given}
 	if err := crs.inverse(place); err != nil {
 		return orb.Point{}, err
 	}
@@ -60,35 +44,18 @@ func locateEPSG(c terrain.Coordinates) (orb.Point, error) {
 	if err := crs.forward(back); err != nil {
 		return orb.Point{}, err
 	}
-	if !finite(place[0]) || checkPlace(place[0]) != nil || !near(back[0], orb.Point{c.Easting, c.Northing}) {
+	if !finite(place[0]) || checkPlace(place[0]) != nil || !near(back[0], given) {
 		return orb.Point{}, fmt.Errorf("%s has no such place; is it easting before northing?", code)
 	}
-	return place[0], inArea(code, place[0])
+	if area, known := crs.area(); known && !area.holds(place[0], areaSlackDeg) {
+		return orb.Point{}, fmt.Errorf("that is %s, outside the area of %s: longitude %.2f to %.2f, latitude %.2f to %.2f; is it easting before northing, and the right system?",
+			terrain.FormatDecimal(place[0]), code, area.west, area.east, area.south, area.north)
+	}
+	return place[0], nil
 }
 
 // near says whether two positions in a reference system agree but for rounding.
 func near(a, b orb.Point) bool {
 	slack := 1e-8 * (1 + math.Abs(b[0]) + math.Abs(b[1])) // 5 cm in a UTM zone
 	return math.Abs(a[0]-b[0]) <= slack && math.Abs(a[1]-b[1]) <= slack
-}
-
-// inArea checks a place against the area that a reference system is meant for.
-func inArea(code string, place orb.Point) error {
-	text := C.CString(code)
-	defer C.free(unsafe.Pointer(text))
-	var w, s, e, n C.double
-	if C.areaOfUse(text, &w, &s, &e, &n) == 0 {
-		return nil
-	}
-	west, south, east, north := float64(w), float64(s), float64(e), float64(n)
-	width := math.Mod(east-west+360, 360) // the area may cross the date line
-	if width == 0 {
-		width = 360
-	}
-	fromWest := math.Mod(place.Lon()-west+areaSlackDeg+720, 360)
-	if fromWest <= width+2*areaSlackDeg && place.Lat() >= south-areaSlackDeg && place.Lat() <= north+areaSlackDeg {
-		return nil
-	}
-	return fmt.Errorf("that is %s, outside the area of %s: longitude %.2f to %.2f, latitude %.2f to %.2f; is it easting before northing, and the right system?",
-		terrain.FormatDecimal(place), code, west, east, south, north)
 }

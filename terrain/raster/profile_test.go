@@ -156,7 +156,7 @@ func TestProfileVoid(t *testing.T) {
 // onPlane checks a profile against the plane, at its own places.
 func onPlane(t *testing.T, p terrain.Profile, tolM float64) {
 	t.Helper()
-	crs, err := newTransform("EPSG:32627")
+	crs, err := transformTo("EPSG:32627")
 	if err != nil {
 		t.Fatal(err)
 	}

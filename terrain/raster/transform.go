@@ -10,29 +10,47 @@ import (
 )
 
 // A transform leads from longitude and latitude on WGS 84 to another coordinate reference
-// system, axes in the order east, north. Many goroutines may use it at once: a PROJ object serves
-// one at a time, so each takes one from the idle ones or makes its own.
+// system, axes in the order east, north. Many goroutines may use it at once.
 type transform struct {
-	crs string // anything PROJ takes: a code or WKT
-
-	mutex sync.Mutex
-	idle  []*proj.PJ
+	objects *pool[*proj.PJ]
+	area    func() (area, bool) // what the system is meant for, if PROJ knows it
 }
 
-// newTransform checks that PROJ can relate the system to WGS 84 at all.
-func newTransform(crs string) (*transform, error) {
-	t := &transform{crs: crs}
-	pj, err := t.create()
-	if err != nil {
+// transforms holds the transforms in use, by reference system. PROJ takes milliseconds to make
+// one and keeps a file open for each; Go's garbage collector sees neither.
+var transforms struct {
+	sync.Mutex
+	to map[string]*transform
+}
+
+// maxTransforms bounds the transforms that are held; beyond it the map starts afresh.
+const maxTransforms = 64
+
+// transformTo returns the transform to a reference system, given as anything PROJ takes: a code
+// such as "EPSG:32627", or WKT. It is an error if PROJ cannot relate the system to WGS 84.
+func transformTo(crs string) (*transform, error) {
+	transforms.Lock()
+	defer transforms.Unlock()
+	if t := transforms.to[crs]; t != nil {
+		return t, nil
+	}
+	t := &transform{
+		objects: newPool(func() (*proj.PJ, error) { return newProjection(crs) }),
+		area:    sync.OnceValues(func() (area, bool) { return areaOfUse(crs) }),
+	}
+	if err := t.objects.with(func(*proj.PJ) error { return nil }); err != nil {
 		return nil, err
 	}
-	t.idle = []*proj.PJ{pj}
+	if transforms.to == nil || len(transforms.to) >= maxTransforms {
+		transforms.to = map[string]*transform{}
+	}
+	transforms.to[crs] = t
 	return t, nil
 }
 
-// create makes a PROJ object with a context of its own.
-func (t *transform) create() (*proj.PJ, error) {
-	pj, err := proj.NewContext().NewCRSToCRS("EPSG:4326", t.crs, nil)
+// newProjection makes a PROJ object with a context of its own.
+func newProjection(crs string) (*proj.PJ, error) {
+	pj, err := proj.NewContext().NewCRSToCRS("EPSG:4326", crs, nil)
 	if err != nil {
 		return nil, errors.New("PROJ does not know it, or cannot relate it to WGS 84")
 	}
@@ -40,7 +58,7 @@ func (t *transform) create() (*proj.PJ, error) {
 }
 
 // forward turns places on WGS 84 into eastings and northings, in place. What the system cannot
-// hold becomes infinite.
+// hold becomes infinite or NaN.
 func (t *transform) forward(points []orb.Point) error {
 	return t.apply(proj.DirectionFwd, points)
 }
@@ -51,56 +69,37 @@ func (t *transform) inverse(points []orb.Point) error {
 }
 
 func (t *transform) apply(direction proj.Direction, points []orb.Point) error {
-	pj, err := t.take()
-	if err != nil {
-		return err
-	}
-	defer t.put(pj)
 	coords := make([]proj.Coord, len(points))
 	for i, p := range points {
-		// An infinite time means none: 0 would be the year 0 to systems that drift.
-		coords[i] = proj.Coord{p[0], p[1], 0, math.Inf(1)}
+		coords[i] = coord(p)
 	}
-	// The error tells of single points only, and those come back infinite.
-	_ = pj.TransArray(direction, coords)
+	err := t.objects.with(func(pj *proj.PJ) error {
+		// The error tells of single points only, and those come back infinite.
+		_ = pj.TransArray(direction, coords)
+		return nil
+	})
 	for i, c := range coords {
 		points[i] = orb.Point{c[0], c[1]}
 	}
-	return nil
+	return err
 }
 
-// take returns an idle PROJ object, or a new one.
-func (t *transform) take() (*proj.PJ, error) {
-	t.mutex.Lock()
-	if n := len(t.idle); n > 0 {
-		defer t.mutex.Unlock()
-		pj := t.idle[n-1]
-		t.idle = t.idle[:n-1]
-		return pj, nil
-	}
-	t.mutex.Unlock() // making one takes milliseconds
-	return t.create()
-}
-
-func (t *transform) put(pj *proj.PJ) {
-	t.mutex.Lock()
-	defer t.mutex.Unlock()
-	t.idle = append(t.idle, pj)
-}
+// coord is a point for PROJ. An infinite time means none: 0 would be the year 0 to systems that
+// drift.
+func coord(p orb.Point) proj.Coord { return proj.Coord{p[0], p[1], 0, math.Inf(1)} }
 
 // isBallpark says whether PROJ, for want of the datum shift, takes the other system's longitudes
 // and latitudes for those of WGS 84 at a place. That can be hundreds of metres out.
-func (t *transform) isBallpark(place orb.Point) bool {
-	pj, err := t.take()
-	if err != nil {
-		return false
-	}
-	defer t.put(pj)
-	if _, err := pj.Forward(proj.Coord{place[0], place[1], 0, math.Inf(1)}); err != nil {
-		return false
-	}
-	used, err := pj.GetLastUsedOperation()
-	return err == nil && used.HasBallparkTransformation()
+func (t *transform) isBallpark(place orb.Point) (ballpark bool) {
+	err := t.objects.with(func(pj *proj.PJ) error {
+		if _, err := pj.Forward(coord(place)); err != nil {
+			return err
+		}
+		used, err := pj.GetLastUsedOperation()
+		ballpark = err == nil && used.HasBallparkTransformation()
+		return err
+	})
+	return err == nil && ballpark
 }
 
 // finite says whether PROJ gave a place for a point.

@@ -23,7 +23,7 @@ func UTM(p orb.Point) string {
 		c.EPSG += 100
 	}
 	at := []orb.Point{p}
-	crs, err := newTransform(fmt.Sprintf("EPSG:%d", c.EPSG))
+	crs, err := transformTo(fmt.Sprintf("EPSG:%d", c.EPSG))
 	if err == nil {
 		err = crs.forward(at)
 	}

@@ -87,6 +87,9 @@ func convert[T uint8 | int16 | float32](t GeoTIFF, lowest, highest float64) ([]T
 	if scale == 0 {
 		scale = 1
 	}
+	if n := t.NoData; n != nil && t.Type != Float32 && !(*n >= lowest && *n <= highest && *n == math.Trunc(*n)) {
+		return nil, fmt.Errorf("its nodata number %g is none that its cell type holds: a whole one from %g to %g", *n, lowest, highest)
+	}
 	stored := make([]T, len(t.Grid.Cells))
 	for i, value := range t.Grid.Cells {
 		number := float64(value) / scale

@@ -100,6 +100,8 @@ func TestWriteErrors(t *testing.T) {
 		{"nodata itself", kept, GeoTIFF{Grid: one(7), EPSG: 32627, Type: Uint8, NoData: noData(7)}, "column 1, row 0 holds 7"},
 		{"void without nodata", kept, GeoTIFF{Grid: one(math.NaN()), EPSG: 32627, Type: Uint8}, "column 1, row 0 is void"},
 		{"infinite", kept, GeoTIFF{Grid: one(math.Inf(1)), EPSG: 32627, Type: Float32}, "holds +Inf"},
+		{"nodata of another type", kept, GeoTIFF{Grid: one(math.NaN()), EPSG: 32627, Type: Uint8, NoData: noData(-9999)}, "nodata number -9999 is none that its cell type holds"},
+		{"nodata NaN", kept, GeoTIFF{Grid: one(math.NaN()), EPSG: 32627, Type: Int16, NoData: noData(math.NaN())}, "nodata number NaN"},
 		{"no system", kept, GeoTIFF{Grid: one(1), EPSG: 99999, Type: Float32}, "EPSG:99999"},
 		{"no folder", filepath.Join(dir, "absent", "a.tif"), GeoTIFF{Grid: one(1), EPSG: 32627}, "no such file or directory"},
 	} {
