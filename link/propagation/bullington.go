@@ -23,9 +23,9 @@ func (s Slopes) Blocked() bool { return s.Stim >= s.Str }
 // wavelength lambdaM: the edge where the two steepest sight lines meet on a blocked path, the
 // point with the largest parameter on a free one.
 //
-// Source: Rec. ITU-R P.1812-6, (15) to (20). On a blocked path the distance db of (18) is put into
-// (19), which leaves sqrt(0.002 d A B / lambda) with A = Stim - Str and B = Srim + Str: the same
-// number, without the 0/0 of (18) when the ray grazes.
+// Source: Rec. ITU-R P.1812-6, (~15) to (~20). On a blocked path the distance db of the edge is put
+// into its height, which leaves sqrt(0.002 d A B / lambda) with A = Stim - Str and B = Srim + Str: the same
+// number, without the 0/0 of db when the ray grazes.
 func (s Slopes) Nu(dKm, lambdaM float64) float64 {
 	if !s.Blocked() {
 		return s.Height * nuScale(lambdaM)
@@ -44,19 +44,16 @@ func BullingtonDB(nu, dKm float64) float64 {
 }
 
 // A ridge is a profile as Bullington's construction sees it: bare heights, cover on them, and the
-// antennas. Nil heights stand for level ground at 0 m, nil cover for none.
+// antennas. Nil heights stand for level, bare ground at 0 m.
 type ridge struct {
 	distKm, aslM, coverM []float64
 	hts, hrs             float64
 }
 
-// height returns g (or h without cover) of an interior point.
+// height returns g of an interior point.
 func (r *ridge) height(i int) float64 {
 	if r.aslM == nil {
 		return 0
-	}
-	if r.coverM == nil {
-		return r.aslM[i]
 	}
 	return r.aslM[i] + r.coverM[i]
 }
@@ -69,16 +66,16 @@ func (r *ridge) slopes(ap float64) Slopes {
 	s := Slopes{Stim: math.Inf(-1), Str: (r.hrs - r.hts) / d, Srim: math.Inf(-1), Height: math.Inf(-1)}
 	for i := 1; i < last; i++ {
 		di := r.distKm[i]
-		s.Stim = max(s.Stim, (r.height(i)+500*ce*di*(d-di)-r.hts)/di) // (14)
+		s.Stim = max(s.Stim, (r.height(i)+500*ce*di*(d-di)-r.hts)/di) // (~14)
 	}
 	for i := 1; i < last; i++ {
 		di := r.distKm[i]
 		lifted := r.height(i) + 500*ce*di*(d-di)
 		if s.Blocked() {
-			s.Srim = max(s.Srim, (lifted-r.hrs)/(d-di)) // (17)
+			s.Srim = max(s.Srim, (lifted-r.hrs)/(d-di)) // (~17)
 		} else {
 			over := lifted - (r.hts*(d-di)+r.hrs*di)/d
-			s.Height = max(s.Height, over/math.Sqrt(di*(d-di)/d)) // (16)
+			s.Height = max(s.Height, over/math.Sqrt(di*(d-di)/d)) // (~16)
 		}
 	}
 	return s

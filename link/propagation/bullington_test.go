@@ -50,7 +50,7 @@ func TestBullingtonAgainstTheWrittenForm(t *testing.T) {
 func TestSingleEdge(t *testing.T) {
 	const flat, d, lambda = 1e15, 10.0, 2.0
 	for _, over := range []float64{-40, -10, -1, 0, 1, 25, 200} {
-		r := ridge{distKm: []float64{0, 5, 10}, aslM: []float64{0, 50 + over, 0}, hts: 30, hrs: 70}
+		r := ridge{distKm: []float64{0, 5, 10}, aslM: []float64{0, 50 + over, 0}, coverM: make([]float64, 3), hts: 30, hrs: 70}
 		got, want := r.slopes(flat).Nu(d, lambda), over*math.Sqrt(0.008/(lambda*d))
 		if math.Abs(got-want) > 1e-6 {
 			t.Errorf("edge %g m over the ray: nu = %.9f, want %.9f", over, got, want)

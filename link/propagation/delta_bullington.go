@@ -5,7 +5,7 @@ package propagation
 var P526 = Model{Name: "p526", Edition: "P.526-15", MinHz: minHz, MaxHz: maxHz, Loss: p526Loss}
 
 func p526Loss(p Path) (Loss, error) {
-	if err := p.check(minHz, maxHz); err != nil {
+	if err := p.check(); err != nil {
 		return Loss{}, err
 	}
 	l := Loss{Terms: noTerms}
@@ -25,7 +25,7 @@ func p526Loss(p Path) (Loss, error) {
 // DeltaBullingtonDB returns the diffraction loss Ld, dB: Bullington's for the actual profile, and
 // what the spherical Earth loses beyond Bullington's for the smooth profile in its place.
 //
-// Source: Rec. ITU-R P.526-15, section 4.5.4; Rec. ITU-R P.1812-6, (~38).
+// Source: Rec. ITU-R P.526-15, section ~4.5.4; Rec. ITU-R P.1812-6, (~38).
 func DeltaBullingtonDB(lbulla, lbulls, ldsph float64) float64 {
 	return lbulla + max(ldsph-lbulls, 0)
 }

@@ -6,7 +6,7 @@
 //
 //   - [FreeSpace]: Rec. ITU-R P.525-4, free space on the straight line between the antennas.
 //   - [P526]: free space with the delta-Bullington diffraction of Rec. ITU-R P.526-15, section
-//     4.5.4, in the form in which Rec. ITU-R P.1812 uses it at the median Earth radius: cover on
+//     ~4.5.4, in the form in which Rec. ITU-R P.1812 uses it at the median Earth radius: cover on
 //     the ground enters the Bullington construction of the actual profile and nothing else.
 //   - [P1812]: Rec. ITU-R P.1812-8, for a percentage of time and of locations.
 //
@@ -15,8 +15,8 @@
 // Distances are km along the path, heights m, elevations degrees and up positive, losses dB and
 // positive. Inside the files that transcribe a Recommendation the locals carry its symbols in
 // ASCII (hts, dlt, nu), frequencies are GHz, angles mrad, Earth radii km. Equation numbers are
-// those of P.1812-6 where nothing else is said; numbers marked with a tilde are from memory. The
-// published results for -6 and -8 are the same.
+// those of P.1812-6 where nothing else is said; numbers of equations and sections marked with a
+// tilde are from memory. The published results for -6 and -8 are the same.
 //
 // Bad input is an error that names the value and its allowed range. A path that a method can
 // evaluate but is not stated for gives its result with an entry in [Loss].Notes. Slices of

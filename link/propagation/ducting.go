@@ -47,7 +47,7 @@ func roughness(p *Path, smooth surfaceLine, h horizons) float64 {
 func (u *duct) lossDB(p float64) float64 { return u.couplingDB() + u.alongDB(p) }
 
 // couplingDB returns Af, the fixed loss between the antennas and the anomalous structure in the
-// air, (47) to (50).
+// air, (~47) to (~50).
 func (u *duct) couplingDB() float64 {
 	h := &u.horizons
 	alf := 0.0
@@ -60,7 +60,7 @@ func (u *duct) couplingDB() float64 {
 }
 
 // shieldingDB returns As, the diffraction loss by the ground that shields an antenna whose horizon
-// lies at the elevation theta and the distance dl, (48) and (48a).
+// lies at the elevation theta and the distance dl, (~48).
 func (u *duct) shieldingDB(theta, dl float64) float64 {
 	over := theta - 0.1*dl
 	if over <= 0 {
@@ -70,7 +70,7 @@ func (u *duct) shieldingDB(theta, dl float64) float64 {
 }
 
 // coastDB returns Ac, the correction for coupling over the sea of an antenna dc km from the coast at
-// hs m above sea level (from memory: not above ground): never positive, (49).
+// hs m above sea level (from memory: not above ground): never positive, (~49).
 func (u *duct) coastDB(dc, dl, hs float64) float64 {
 	if u.time.omega < 0.75 || dc > dl || dc > 5 {
 		return 0
@@ -78,11 +78,11 @@ func (u *duct) coastDB(dc, dl, hs float64) float64 {
 	return -3 * math.Exp(-0.25*dc*dc) * (1 + math.Tanh(0.07*(50-hs)))
 }
 
-// alongDB returns Ad(p), the loss along the anomalous structure by angle and time, (51) to (56).
+// alongDB returns Ad(p), the loss along the anomalous structure by angle and time, (~51) to (~56).
 func (u *duct) alongDB(p float64) float64 {
 	h := &u.horizons
-	gammaD := 5e-5 * u.horizons.ae * math.Cbrt(u.f)
-	theta := 1000*u.d/u.horizons.ae + min(h.thetaT, 0.1*h.dlt) + min(h.thetaR, 0.1*h.dlr)
+	gammaD := 5e-5 * h.ae * math.Cbrt(u.f)
+	theta := 1000*u.d/h.ae + min(h.thetaT, 0.1*h.dlt) + min(h.thetaR, 0.1*h.dlr)
 	logBeta := u.logBeta()
 	gamma := 1.076 / math.Pow(2.0058-logBeta, 1.012) *
 		math.Exp(-(9.51-4.8*logBeta+0.198*logBeta*logBeta)*1e-6*math.Pow(u.d, 1.13))

@@ -4,7 +4,7 @@ package propagation
 const earthRadiusKm = 6371
 
 // betaRadiusKm is a_beta, the effective Earth radius exceeded for beta0 of the time: k = 3 whatever
-// the air, (7b).
+// the air, (~7b).
 const betaRadiusKm = 3 * earthRadiusKm
 
 // EffectiveEarthRadiusKm returns the median effective Earth radius ae, km.
@@ -12,7 +12,7 @@ const betaRadiusKm = 3 * earthRadiusKm
 // deltaN is the average fall of radio refractivity through the lowest kilometre, positive, in
 // N-units/km, below 157: 39 gives about 4/3 of 6371 km.
 //
-// Source: Rec. ITU-R P.1812-6, equations (6) and (7a).
+// Source: Rec. ITU-R P.1812-6, (7a).
 func EffectiveEarthRadiusKm(deltaN float64) float64 {
 	return earthRadiusKm * 157 / (157 - deltaN)
 }

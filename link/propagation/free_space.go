@@ -12,7 +12,7 @@ func WavelengthM(freqHz float64) float64 { return lightMPerS / freqHz }
 // for a distance distM > 0 at freqHz > 0. It holds in the far field; nearer than a wavelength or
 // so it is a mere number.
 //
-// Source: Rec. ITU-R P.525-4, equation (3), exact: without the rounded constant 32.4 of (4).
+// Source: Rec. ITU-R P.525-4, (~3), exact: without the rounded constant 32.4 of (~4).
 func FreeSpaceDB(freqHz, distM float64) float64 {
 	return 20 * math.Log10(4*math.Pi*distM/WavelengthM(freqHz))
 }
@@ -22,7 +22,7 @@ func FreeSpaceDB(freqHz, distM float64) float64 {
 var FreeSpace = Model{Name: "free-space", Edition: "P.525-4", MinHz: minHz, MaxHz: maxHz, Loss: freeSpaceLoss}
 
 func freeSpaceLoss(p Path) (Loss, error) {
-	if err := p.check(minHz, maxHz); err != nil {
+	if err := p.check(); err != nil {
 		return Loss{}, err
 	}
 	h := findHorizons(&p)
@@ -34,7 +34,7 @@ func freeSpaceLoss(p Path) (Loss, error) {
 }
 
 // slantKm returns the length of the straight line between the antennas as P.1812 takes it: path
-// length and difference of heights at right angles, (8).
+// length and difference of heights at right angles.
 func (p *Path) slantKm() float64 {
 	return math.Hypot(p.LengthKm(), (p.txAslM()-p.rxAslM())/1000)
 }

@@ -5,13 +5,13 @@ import "math"
 // FresnelRadiusM returns the radius of the n-th Fresnel zone, m, on a straight path at a point
 // d1Km from one end and d2Km from the other, at the wavelength lambdaM.
 //
-// Source: Rec. ITU-R P.526-15, section 2, equation (2), in consistent units.
+// Source: Rec. ITU-R P.526-15, section ~2, (~2), in consistent units.
 func FresnelRadiusM(n int, lambdaM, d1Km, d2Km float64) float64 {
 	return math.Sqrt(1000 * float64(n) * lambdaM * d1Km * d2Km / (d1Km + d2Km))
 }
 
 // neededRatio is the part of the first Fresnel radius that must be free for diffraction to be
-// negligible: Rec. ITU-R P.526-15, section 2.
+// negligible: Rec. ITU-R P.526-15, section ~2.
 const neededRatio = 0.6
 
 // A FresnelClearance tells how freely a path runs over ground and cover.
@@ -28,7 +28,7 @@ type FresnelClearance struct {
 
 // Clearance returns the first-Fresnel clearance of a path, with the errors of a method.
 func Clearance(p Path) (FresnelClearance, error) {
-	if err := p.check(minHz, maxHz); err != nil {
+	if err := p.check(); err != nil {
 		return FresnelClearance{}, err
 	}
 	last, d := len(p.DistKm)-1, p.LengthKm()

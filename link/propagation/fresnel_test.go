@@ -47,8 +47,8 @@ func TestEffectiveEarthRadius(t *testing.T) {
 	}
 }
 
-// Worked by hand: 10 km, antennas 10 m over level ground at sea level, 300 MHz (0.99931 m), k = 4/3. In the middle the bulge is 1.4716 m, the radius
-// sqrt(999.31 * 2.5) = 49.983 m.
+// Worked by hand: 10 km, antennas 10 m over level ground at sea level, 300 MHz (0.99931 m), k = 4/3.
+// In the middle the bulge is 1.4716 m, the radius sqrt(999.31 * 2.5) = 49.983 m.
 func TestClearanceByHand(t *testing.T) {
 	p := level(5, 10)
 	p.FreqHz, p.DeltaN = 300e6, 39.25

@@ -8,7 +8,7 @@ import "math"
 // sight, at 0 it touches it (6.03 dB). The loss is neglected at nu <= -0.78, where the formula
 // reaches zero.
 //
-// Source: Rec. ITU-R P.526-15, section 4.1, equation (31), which is (12) of P.1812; within 0.15 dB
+// Source: Rec. ITU-R P.526-15, section ~4.1, (~31), which is (~12) of P.1812; within 0.15 dB
 // of the Fresnel integrals for nu >= -0.5.
 func KnifeEdgeDB(nu float64) float64 {
 	if nu <= -0.78 {

@@ -23,12 +23,12 @@ func (l limit) check() error {
 	if l.holds() {
 		return nil
 	}
-	return fmt.Errorf("%s is %.6g%s, it must lie between %.6g and %.6g%s", l.name, l.value, l.unit, l.lo, l.hi, l.unit)
+	return fmt.Errorf("%s is %.9g%s, it must lie between %.6g and %.6g%s", l.name, l.value, l.unit, l.lo, l.hi, l.unit)
 }
 
 // check returns what is wrong with the part of a path that every method uses. It panics when the
 // profile's slices differ in length.
-func (p *Path) check(minHz, maxHz float64) error {
+func (p *Path) check() error {
 	n := len(p.DistKm)
 	if len(p.AslM) != n || len(p.CoverM) != n || len(p.Zone) != n {
 		panic(fmt.Sprintf("propagation: ragged profile: %d distances, %d heights, %d covers, %d zones",

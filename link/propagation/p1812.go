@@ -43,7 +43,7 @@ type p1812 struct {
 
 // newP1812 checks the path and computes all mechanisms but ducting.
 func newP1812(p *Path) (p1812, error) {
-	if err := p.check(minHz, maxHz); err != nil {
+	if err := p.check(); err != nil {
 		return p1812{}, err
 	}
 	if err := p.checkStatistics(); err != nil {

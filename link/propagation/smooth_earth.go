@@ -5,7 +5,7 @@ import "math"
 // A SmoothEarth gives the diffraction loss of a smooth spherical Earth at one frequency and
 // polarization. Make it with [NewSmoothEarth].
 //
-// Source: Rec. ITU-R P.526-15, section 3, as in Rec. ITU-R P.1812-6, (22) to (36).
+// Source: Rec. ITU-R P.526-15, section ~3, as in Rec. ITU-R P.1812-6, (~22) to (~36).
 type SmoothEarth struct {
 	f, lambda     float64 // GHz, m
 	verticalShare float64
@@ -50,7 +50,7 @@ type SmoothPath struct {
 // over sea with vertical polarization, and drops it when it forms Ld. Here it is 0 already, so that
 // a mixture of polarizations has no step at the horizon; Ld is the same.
 //
-// Source: Rec. ITU-R P.1812-6, section 4.3.2, (22) to (27).
+// Source: Rec. ITU-R P.1812-6, section ~4.3.2, (~22) to (~27).
 func (e SmoothEarth) LossDB(p SmoothPath) float64 {
 	d, roots := p.LengthKm, math.Sqrt(p.TxM)+math.Sqrt(p.RxM)
 	dlos := math.Sqrt(2*0.001*p.RadiusKm) * roots // (~22)
@@ -85,11 +85,11 @@ func (p SmoothPath) leastClearance() (hse, dse1, dse2 float64) {
 // sea mixed by their shares, then the polarizations, each at least 0, by theirs. What has no
 // weight is not computed.
 func (e SmoothEarth) firstTermDB(p SmoothPath, a float64) float64 {
-	loss := 0.0
-	if v := e.verticalShare; v > 0 {
+	loss, v := 0.0, e.verticalShare
+	if v > 0 {
 		loss += v * max(0, e.overGroundDB(p, a, e.land.vertical, e.sea.vertical))
 	}
-	if v := e.verticalShare; v < 1 {
+	if v < 1 {
 		loss += (1 - v) * max(0, e.overGroundDB(p, a, e.land.horizontal, e.sea.horizontal))
 	}
 	return loss

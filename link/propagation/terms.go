@@ -5,20 +5,31 @@ import "math"
 // Terms are the intermediates of a method, named by the symbols of Rec. ITU-R P.1812 (P.526 uses a
 // part of them). NaN marks a term that the method did not compute; [Terms.List] leaves it out.
 type Terms struct {
-	Lbfs                           float64 // free space
-	Lb0p, Lb0beta                  float64 // line of sight for p and for beta0 of the time
-	LbullaK50, LbullsK50, LdsphK50 float64 // Bullington actual, Bullington smooth, spherical Earth, all at the median radius
-	Ld50, Ldbeta, Fi, Ldp          float64 // diffraction at the median radius and at beta0, interpolation factor, diffraction for p
-	Lbd50, Lbd                     float64 // with free space and with line of sight
-	Lminb0p, Lba, Lminbap          float64 // notional minimum of line of sight, ducting, their blend
-	Lbda, Lbam                     float64 // blends of diffraction and ducting
-	Lbs, Lbc, Lloc, Lb             float64 // troposcatter, all mechanisms, locations, the loss
-	Ep                             float64 // field strength for 1 kW e.r.p., dB(uV/m)
-	Theta, ThetaT, ThetaR          float64 // path angular distance and horizon elevations, mrad
-	Dlt, Dlr, Dtm, Dlm, Ae         float64 // horizon distances, longest land and inland sections, effective radius, km
-	Hst, Hsr, Hstd, Hsrd           float64 // smooth surface at the ends, for ducting and for diffraction, m above sea level
-	Hte, Hre, Hm, Hts, Hrs         float64 // effective heights and roughness for ducting, antennas above sea level, m
-	Omega, Beta0                   float64 // share of the path over sea; time of anomalous propagation, %
+	// Line of sight: free space, and with focusing for p and for beta0 of the time.
+	Lbfs, Lb0p, Lb0beta float64
+	// Diffraction at the median radius: Bullington actual and smooth, spherical Earth.
+	LbullaK50, LbullsK50, LdsphK50 float64
+	// Diffraction at the median radius and at that of beta0, interpolation factor, for p.
+	Ld50, Ldbeta, Fi, Ldp float64
+	// The same with free space and with line of sight.
+	Lbd50, Lbd float64
+	// Notional minimum of line of sight and diffraction, ducting, its blend with line of sight.
+	Lminb0p, Lba, Lminbap float64
+	// Blends of diffraction with ducting and with the minimum.
+	Lbda, Lbam float64
+	// Troposcatter, all mechanisms, locations, the loss; the field for 1 kW e.r.p., dB(uV/m).
+	Lbs, Lbc, Lloc, Lb, Ep float64
+
+	// Path angular distance and horizon elevations, mrad.
+	Theta, ThetaT, ThetaR float64
+	// Horizon distances, longest stretches of land and of inland, effective Earth radius, km.
+	Dlt, Dlr, Dtm, Dlm, Ae float64
+	// Smooth surface at the ends for ducting and for diffraction, m above sea level.
+	Hst, Hsr, Hstd, Hsrd float64
+	// Effective heights and roughness for ducting, m; antennas, m above sea level.
+	Hte, Hre, Hm, Hts, Hrs float64
+	// Share of the path over sea; time of anomalous propagation, %.
+	Omega, Beta0 float64
 }
 
 // A Term is one intermediate: the Recommendation's symbol, its unit (empty for a plain number) and

@@ -5,8 +5,9 @@ import (
 	"testing"
 )
 
-// Source: published cases b2iseac_1, _2 and _3 and b2iseac_rural_land_10km_2 (see [oneKm]); the
-// last two by hand: at 2 GHz Lf is 25 log 2 = 7.5257 dB, so that 190.1 + 7.5257 + 40 + 11.46 - 48.75 remain at 50 %.
+// Source: published cases b2iseac_1, _2 and _3 and b2iseac_rural_land_10km_2 (see [oneKm]); the last
+// two by hand: at 2 GHz Lf is 25 log 2 = 7.5257 dB, so that 190.1 + 7.5257 + 40 + 11.46 - 48.75
+// remain at 50 %.
 func TestTroposcatter(t *testing.T) {
 	for _, tc := range []struct{ f, d, theta, n0, p, want float64 }{
 		{0.0953, 235.1, 7.673515171, 326.079979, 1, 148.4453017},

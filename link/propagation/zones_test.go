@@ -20,7 +20,7 @@ func TestStretches(t *testing.T) {
 		{[]terrain.Zone{s, i, i, i, i}, 9.5, 9.5, 0.05}, // the border at 0.5 km
 		{[]terrain.Zone{i, i, s, c, c}, 4, 2.5, 0.35},   // sea from 2.5 to 6
 		{[]terrain.Zone{s, s, c, i, s}, 6.5, 3, 0.35},   // sea to 2.5 and from 9, inland from 6
-		{[]terrain.Zone{i, c, i, s, i}, 6, 3.5, 0.3},    // inland to 0.5, from 2.5 to 6, and from 9: the middle one is longest
+		{[]terrain.Zone{i, c, i, s, i}, 6, 3.5, 0.3},    // inland to 0.5, from 2.5 to 6 and from 9
 		{[]terrain.Zone{s, s, s, s, c}, 1, 0, 0.9},
 	} {
 		got := newTimeParameters(terrain.Profile{DistKm: []float64{0, 1, 4, 8, 10}, Zone: tc.zones}, 50)
