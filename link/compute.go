@@ -178,7 +178,7 @@ func (w *way) budget(from, to *Station, freqHz float64) (Budget, error) {
 
 	b.add(PowerLine, from.Name+": transmitter "+from.Radio.Name, from.Radio.PowerDBm, from.Radio.PowerSource)
 	tx.lines(&b, out, true)
-	if err := w.pathLines(&b, freqHz, sent.VerticalShare()); err != nil {
+	if err := w.pathLines(&b, freqHz, verticalShare(sent, caught)); err != nil {
 		return b, err
 	}
 	w.polarizationLine(&b, sent, caught, tx.solution.Pattern.Phased && rx.solution.Pattern.Phased)
@@ -205,6 +205,17 @@ func (w *way) pathLines(b *Budget, freqHz, verticalShare float64) error {
 	}
 	b.warn("", loss.Notes...)
 	return nil
+}
+
+// verticalShare is the part of the power between two antennas that goes by vertical polarization,
+// the same whichever of them transmits. Crossed antennas share none: then it is the mean of both.
+func verticalShare(a, b antenna.Field) float64 {
+	va, vb := a.VerticalShare(), b.VerticalShare()
+	vertical, horizontal := va*vb, (1-va)*(1-vb)
+	if vertical+horizontal == 0 {
+		return (va + vb) / 2
+	}
+	return vertical / (vertical + horizontal)
 }
 
 func (w *way) stepM() float64 {

@@ -3,6 +3,7 @@ package plan
 import (
 	"errors"
 	"fmt"
+	"math"
 
 	"fellreach/link"
 	"fellreach/link/propagation"
@@ -116,12 +117,18 @@ func (n *Network) locate(c *checker) {
 			continue
 		}
 		for j := range i {
+			if !sameLatitude(n.places[i], n.places[j]) {
+				continue
+			}
 			if d, _, _ := raster.Inverse(n.places[i], n.places[j]); d < samePlaceM {
 				c.wrong(path, fmt.Sprintf("%q stands where %q stands", s.Name, c.Sites[j].Name), "put several radios at one place into the stations of one site")
 			}
 		}
 	}
 }
+
+// sameLatitude is a quick look before the geodesic: a metre is under 1e-5 degrees of latitude.
+func sameLatitude(a, b orb.Point) bool { return math.Abs(a.Lat()-b.Lat()) < 1e-5*samePlaceM }
 
 func (a At) coordinates() (terrain.Coordinates, error) {
 	if a.EPSG != nil {
