@@ -121,7 +121,8 @@ func driverName(dataset gdal.Dataset) string {
 	return driver.ShortName()
 }
 
-// cell turns a place in the raster's reference system into its cell-centre coordinates. Longitudes are taken on the raster's own turn around the Earth.
+// cell turns a place in the raster's reference system into its cell-centre coordinates.
+// Longitudes are taken on the raster's own turn around the Earth.
 func (f *file) cell(p orb.Point) (col, row float64) {
 	if !math.IsNaN(f.wrapsDeg) {
 		p[0] = f.wrapsDeg + math.Remainder(p[0]-f.wrapsDeg, 360)

@@ -107,6 +107,16 @@ func TestInspectWarnings(t *testing.T) {
 	}
 }
 
+// A land-cover raster with colours is no ground, but what it holds can be asked.
+func TestInspectPicture(t *testing.T) {
+	path := filepath.Join(t.TempDir(), "picture.tif")
+	run(t, "", "gdal_translate", "-q", "-ot", "Byte", "-b", "1", "-b", "1", "-b", "1", "-co", "PHOTOMETRIC=RGB", utmPlane().write(t, "plane.tif"), path)
+	info, err := Inspect(context.Background(), path, nil)
+	if err != nil || info.Bands != 3 || info.Type != "Byte" {
+		t.Errorf("%v, %+v", err, info)
+	}
+}
+
 func TestInspectStops(t *testing.T) {
 	ctx, cancel := context.WithCancel(context.Background())
 	cancel()
