@@ -110,11 +110,12 @@ func unreadable(data []byte) (position, string) {
 // plain refuses what plans do not use and what could make a small file grow without bound:
 // anchors, aliases, tags, merge keys, deep nesting.
 func (d *decoder) plain(tokens token.Tokens) bool {
-	before, depth := len(d.errs), 0
+	depth := 0
 	for _, t := range tokens {
 		switch t.Type {
 		case token.AnchorType, token.AliasType, token.TagType, token.MergeKeyType:
 			d.report(position{t.Position.Line, t.Position.Column}, "", fmt.Sprintf("%q: plans do not use anchors, aliases, tags or merge keys", strings.TrimSpace(t.Value)), "write the value out, or quote it if it is a text")
+			return false
 		case token.SequenceStartType, token.MappingStartType:
 			if depth++; depth > maxNesting {
 				d.report(position{t.Position.Line, t.Position.Column}, "", fmt.Sprintf("is nested deeper than %d levels", maxNesting), "")
@@ -124,7 +125,7 @@ func (d *decoder) plain(tokens token.Tokens) bool {
 			depth--
 		}
 	}
-	return len(d.errs) == before
+	return true
 }
 
 // resolvePath returns a path of the plan as the program can open it.
