@@ -53,6 +53,10 @@ func (p *Plan) Open() (*Network, error) {
 	if err != nil {
 		return nil, c.at("ground", err)
 	}
+	if n.checkGround(c); len(c.errs) > 0 {
+		n.Close()
+		return nil, c.errs.sorted()
+	}
 	return n, nil
 }
 
@@ -129,6 +133,19 @@ func (n *Network) locate(c *checker) {
 
 // sameLatitude is a quick look before the geodesic: a metre is under 1e-5 degrees of latitude.
 func sameLatitude(a, b orb.Point) bool { return math.Abs(a.Lat()-b.Lat()) < 1e-5*samePlaceM }
+
+// checkGround reports the ends of links that stand where the rasters have no height, once for each
+// site; what else is wrong with the ground comes out with the links.
+func (n *Network) checkGround(c *checker) {
+	reported := map[int]bool{}
+	for _, s := range n.ends() {
+		var void *terrain.VoidError
+		if _, err := n.Ground.HeightAslM(s.At); errors.As(err, &void) && !reported[s.Order] {
+			reported[s.Order] = true
+			c.refuse(fmt.Sprintf("sites[%d].at", s.Order), fmt.Errorf("%q: %w", c.Sites[s.Order].Name, err))
+		}
+	}
+}
 
 func (a At) coordinates() (terrain.Coordinates, error) {
 	if a.EPSG != nil {
