@@ -1,10 +1,10 @@
 package main
 
 import (
+	"context"
 	_ "embed"
 	"errors"
 	"fmt"
-	"io/fs"
 	"os"
 	"path/filepath"
 
@@ -32,11 +32,11 @@ func newDemo(t *terminal) *cobra.Command {
 			if len(args) == 1 {
 				folder = args[0]
 			}
-			if _, err := os.Lstat(folder); !errors.Is(err, fs.ErrNotExist) {
+			if _, err := os.Lstat(folder); err == nil {
 				return &usageError{fmt.Sprintf("%s exists already; the demo writes a new folder\n    hint: name another, or remove it", folder)}
 			}
 			t.hint("making the island of Hallin …")
-			if err := writeDemo(folder); err != nil {
+			if err := writeDemo(cmd.Context(), folder); err != nil {
 				return err
 			}
 			result, err := runLinks(cmd.Context(), t, filepath.Join(folder, "hallin.yaml"))
@@ -54,7 +54,7 @@ func newDemo(t *terminal) *cobra.Command {
 
 // writeDemo writes the demo's files into a folder of another name first, so that the folder is
 // there whole or not at all.
-func writeDemo(folder string) error {
+func writeDemo(ctx context.Context, folder string) error {
 	if err := os.MkdirAll(filepath.Dir(folder), 0o755); err != nil {
 		return err
 	}
@@ -63,7 +63,7 @@ func writeDemo(folder string) error {
 		return err
 	}
 	defer os.RemoveAll(work)
-	if err := errors.Join(os.Chmod(work, 0o755), writeIsland(work), os.WriteFile(filepath.Join(work, "hallin.yaml"), demoPlan, 0o644)); err != nil {
+	if err := errors.Join(os.Chmod(work, 0o755), writeIsland(work), os.WriteFile(filepath.Join(work, "hallin.yaml"), demoPlan, 0o644), ctx.Err()); err != nil {
 		return err
 	}
 	return os.Rename(work, folder)

@@ -21,7 +21,7 @@ func newLinks(t *terminal) *cobra.Command {
 		Long:  "Compute every link of a plan in both directions: the margin, the verdict against the plan's\naim, and the budget behind it. Exit status 3 tells that some link is thin or fails.",
 		Args:  arguments(1, 1, "one plan file"),
 		RunE: func(cmd *cobra.Command, args []string) error {
-			if err := out.check(); err != nil {
+			if err := out.check(args...); err != nil {
 				return err
 			}
 			if lines && out.format != "table" {

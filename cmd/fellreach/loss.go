@@ -34,7 +34,7 @@ func newLoss(t *terminal) *cobra.Command {
 		Long:  "Put a profile (columns d_km,h_m and optionally R_m,zone; zone 1 sea, 3 coastal, 4 inland) through\na path method and print the basic transmission loss with its terms by the Recommendation's symbols.",
 		Args:  arguments(1, 1, "one profile"),
 		RunE: func(cmd *cobra.Command, args []string) error {
-			if err := out.check(); err != nil {
+			if err := out.check(args...); err != nil {
 				return err
 			}
 			if !cmd.Flags().Changed("frequency") {

@@ -28,7 +28,7 @@ const (
 
 func main() {
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt, syscall.SIGTERM)
-	defer stop()
+	context.AfterFunc(ctx, stop) // a second interrupt ends the program at once
 	os.Exit(run(ctx, os.Args[1:], os.Stdout, os.Stderr))
 }
 
@@ -59,7 +59,7 @@ func run(ctx context.Context, args []string, stdout, stderr io.Writer) int {
 // plain names an interruption as such.
 func plain(ctx context.Context, err error) error {
 	if ctx.Err() != nil && errors.Is(err, context.Canceled) {
-		return errors.New("interrupted; nothing was written")
+		return errors.New("interrupted before there was a result")
 	}
 	return err
 }
@@ -81,13 +81,8 @@ func newRoot(t *terminal) *cobra.Command {
 		Long:          "Fellreach plans VHF and UHF radio links: the antenna as installed, the ground from open\nelevation rasters, the path by published methods, and a budget in which every decibel\nnames its source. Try `fellreach demo`.",
 		SilenceErrors: true,
 		SilenceUsage:  true,
-		Args: func(cmd *cobra.Command, args []string) error {
-			if len(args) > 0 {
-				return &usageError{fmt.Sprintf("there is no command %q\n    hint: `fellreach --help` lists the commands", args[0])}
-			}
-			return nil
-		},
-		Run: func(cmd *cobra.Command, _ []string) { _ = cmd.Help() },
+		Args:          commandOf,
+		Run:           func(cmd *cobra.Command, _ []string) { _ = cmd.Help() },
 	}
 	root.SetFlagErrorFunc(func(cmd *cobra.Command, err error) error {
 		return &usageError{fmt.Sprintf("%v\n    hint: `%s --help` lists the flags", err, cmd.CommandPath())}
@@ -97,12 +92,23 @@ func newRoot(t *terminal) *cobra.Command {
 	return root
 }
 
+// commandOf is for commands that only hold others: what follows them must be one of these.
+func commandOf(cmd *cobra.Command, args []string) error {
+	if len(args) == 0 {
+		return nil
+	}
+	return &usageError{fmt.Sprintf("%s has no command %q\n    hint: `%s --help` lists the commands", cmd.CommandPath(), args[0], cmd.CommandPath())}
+}
+
 // arguments checks the count of a command's arguments; names says what they are.
 func arguments(least, most int, names string) cobra.PositionalArgs {
 	return func(cmd *cobra.Command, args []string) error {
 		if len(args) >= least && (most < 0 || len(args) <= most) {
 			return nil
 		}
-		return &usageError{fmt.Sprintf("%s takes %s, not %d arguments (%s)\n    hint: quote names with spaces in them", cmd.CommandPath(), names, len(args), strings.Join(args, " "))}
+		if len(args) < least {
+			return &usageError{fmt.Sprintf("%s takes %s\n    hint: `%s --help` shows how", cmd.CommandPath(), names, cmd.CommandPath())}
+		}
+		return &usageError{fmt.Sprintf("%s takes %s, not %d: %s\n    hint: quote names with spaces in them", cmd.CommandPath(), names, len(args), strings.Join(args, ", "))}
 	}
 }

@@ -2,14 +2,11 @@ package main
 
 import (
 	_ "embed"
-	"errors"
 	"fmt"
-	"io/fs"
 	"os"
 
 	"fellreach/link/plan"
 
-	"github.com/google/renameio/v2"
 	"github.com/spf13/cobra"
 )
 
@@ -20,7 +17,7 @@ func newPlan(t *terminal) *cobra.Command {
 	cmd := &cobra.Command{
 		Use:   "plan",
 		Short: "Start, check or describe a plan file",
-		Args:  arguments(0, 0, "new, check or schema"),
+		Args:  commandOf,
 		RunE: func(cmd *cobra.Command, _ []string) error {
 			return &usageError{"plan needs new, check or schema\n    hint: `fellreach plan --help`"}
 		},
@@ -39,10 +36,10 @@ func newPlanNew(t *terminal) *cobra.Command {
 				_, err := t.out.Write(starter)
 				return err
 			}
-			if _, err := os.Lstat(args[0]); !errors.Is(err, fs.ErrNotExist) {
+			if _, err := os.Lstat(args[0]); err == nil {
 				return &usageError{fmt.Sprintf("%s exists already; name another file", args[0])}
 			}
-			if err := renameio.WriteFile(args[0], starter, 0o644); err != nil {
+			if err := replaceFile(args[0], starter); err != nil {
 				return err
 			}
 			t.hint("wrote %s; put in your rasters and sites, then `fellreach plan check %s`", args[0], args[0])

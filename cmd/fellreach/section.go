@@ -17,7 +17,7 @@ func newSection(t *terminal) *cobra.Command {
 		Short: "Show the ground under a link: profile, ray and Fresnel zone",
 		Args:  arguments(1, 1, "one plan file"),
 		RunE: func(cmd *cobra.Command, args []string) error {
-			if err := out.check(); err != nil {
+			if err := out.check(args...); err != nil {
 				return err
 			}
 			if named == "" {
@@ -28,7 +28,11 @@ func newSection(t *terminal) *cobra.Command {
 				return err
 			}
 			defer network.Close()
-			s, err := network.Section(named)
+			l, err := network.Named(named)
+			if err != nil {
+				return &usageError{err.Error()}
+			}
+			s, err := network.Section(l)
 			if err != nil {
 				return err
 			}

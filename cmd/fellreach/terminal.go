@@ -2,8 +2,10 @@ package main
 
 import (
 	"bytes"
+	"errors"
 	"fmt"
 	"io"
+	"io/fs"
 	"os"
 	"slices"
 	"strings"
@@ -60,12 +62,24 @@ func (o *output) flags(cmd *cobra.Command, formats ...string) {
 	_ = cmd.RegisterFlagCompletionFunc("format", cobra.FixedCompletions(formats, cobra.ShellCompDirectiveNoFileComp))
 }
 
-// check refuses a format the command does not know, before any work is done.
-func (o *output) check() error {
-	if slices.Contains(o.formats, o.format) {
-		return nil
+// check refuses, before any work is done, a format the command does not know and an output that
+// would replace what the command reads.
+func (o *output) check(inputs ...string) error {
+	if !slices.Contains(o.formats, o.format) {
+		return &usageError{fmt.Sprintf("--format %q is not one of %s", o.format, strings.Join(o.formats, ", "))}
 	}
-	return &usageError{fmt.Sprintf("--format %q is not one of %s", o.format, strings.Join(o.formats, ", "))}
+	for _, input := range inputs {
+		if sameFile(o.file, input) {
+			return &usageError{fmt.Sprintf("-o %s is what the command reads\n    hint: name another file", o.file)}
+		}
+	}
+	return nil
+}
+
+func sameFile(a, b string) bool {
+	infoA, errA := os.Stat(a)
+	infoB, errB := os.Stat(b)
+	return errA == nil && errB == nil && os.SameFile(infoA, infoB)
 }
 
 // write puts out a result whole: a file is replaced at once, or stays as it was.
@@ -78,5 +92,20 @@ func (o *output) write(t *terminal, fill func(io.Writer) error) error {
 		_, err := t.out.Write(b.Bytes())
 		return err
 	}
-	return renameio.WriteFile(o.file, b.Bytes(), 0o644)
+	return replaceFile(o.file, b.Bytes())
+}
+
+// replaceFile writes a file whole, or leaves what stands under its name as it was. A pipe or a
+// device is written into.
+func replaceFile(name string, data []byte) error {
+	put := func() error { return renameio.WriteFile(name, data, 0o644) }
+	if info, err := os.Stat(name); err == nil && !info.Mode().IsRegular() {
+		put = func() error { return os.WriteFile(name, data, 0o644) }
+	}
+	err := put()
+	var inner *fs.PathError // of the file that was to take the other's place
+	if errors.As(err, &inner) {
+		return fmt.Errorf("%s cannot be written: %w", name, inner.Err)
+	}
+	return err
 }

@@ -16,7 +16,7 @@ func newTerrain(t *terminal) *cobra.Command {
 		Short: "Show what elevation rasters hold: extent, CRS, cell, voids, heights",
 		Args:  arguments(1, -1, "at least one raster"),
 		RunE: func(cmd *cobra.Command, args []string) error {
-			if err := out.check(); err != nil {
+			if err := out.check(args...); err != nil {
 				return err
 			}
 			var files []raster.Info

@@ -8,12 +8,8 @@ import (
 	"fellreach/link"
 )
 
-// Section works out the path of the link that a person names (see [Network.Named]).
-func (n *Network) Section(named string) (*link.Section, error) {
-	l, err := n.Named(named)
-	if err != nil {
-		return nil, err
-	}
+// Section works out the path of a link, of the plan or found by [Network.Named].
+func (n *Network) Section(l *link.Link) (*link.Section, error) {
 	ground, err := n.profile(l.From, l.To)
 	if err != nil {
 		return nil, err
