@@ -23,7 +23,7 @@ const (
 	doubtfulAngleDeg  = 30
 	doubtfulRadii     = 4 // ratio at a node
 	doubtfulSegments  = 3 // ratio of lengths at a node
-	mostUnknowns      = 2000
+	mostSegments      = 2000
 	mostWires         = 1000
 	shortFullWaveWl   = 0.85 // centre-fed wires about a full wave
 	longFullWaveWl    = 1.1
@@ -32,30 +32,39 @@ const (
 
 // check returns what is wrong with a structure before it is divided, and what is doubtful.
 func (s Structure) check(wavelengthM float64) (warnings []string, err error) {
-	var errs []error
-	if len(s.Wires) == 0 || len(s.Wires) > mostWires {
-		return nil, fmt.Errorf("%d wires are given: 1 to %d are allowed", len(s.Wires), mostWires)
+	if err := errors.Join(s.checkEach(), s.Mast.check(wavelengthM)); err != nil {
+		return nil, err
 	}
+	if err := s.checkSize(wavelengthM); err != nil {
+		return nil, err
+	}
+	errs := []error{s.checkEndFeeds(wavelengthM)}
+	note := func(doubts []string, err error) {
+		warnings = append(warnings, doubts...)
+		errs = append(errs, err)
+	}
+	for i, w := range s.Wires {
+		open := s.joinedTo(i, w.From, wavelengthM) == 0 || s.joinedTo(i, w.To, wavelengthM) == 0
+		note(w.doubts(i+1, open, wavelengthM), nil)
+		for j := range i {
+			note(s.checkPair(j, i, wavelengthM))
+		}
+		note(s.checkMast(i))
+	}
+	note(s.feedDoubts(wavelengthM), nil)
+	return warnings, errors.Join(errs...)
+}
+
+// checkEach returns what is wrong with the wires and feeds by themselves, at any frequency.
+func (s Structure) checkEach() error {
+	if len(s.Wires) == 0 || len(s.Wires) > mostWires {
+		return fmt.Errorf("%d wires are given: 1 to %d are allowed", len(s.Wires), mostWires)
+	}
+	var errs []error
 	for i, w := range s.Wires {
 		errs = append(errs, w.check(i+1))
 	}
-	errs = append(errs, s.checkFeeds(), s.Mast.check(wavelengthM))
-	if err := errors.Join(errs...); err != nil {
-		return nil, err
-	}
-	for i, w := range s.Wires {
-		warnings = append(warnings, w.doubts(i+1, wavelengthM)...)
-		for j := range i {
-			doubt, err := s.checkPair(j, i, wavelengthM)
-			errs = append(errs, err)
-			warnings = append(warnings, doubt...)
-		}
-		doubt, err := s.checkMast(i)
-		errs = append(errs, err)
-		warnings = append(warnings, doubt...)
-	}
-	errs = append(errs, s.checkOpenFeeds(wavelengthM))
-	return append(warnings, s.feedDoubts(wavelengthM)...), errors.Join(errs...)
+	return errors.Join(append(errs, s.checkFeeds())...)
 }
 
 // check returns what is wrong with a wire of a number by itself.
@@ -86,13 +95,13 @@ func checkMaterial(m antenna.Material) error {
 	return fmt.Errorf("material %q has conductivity %g S/m and relative permeability %g: above 0 and at least 1 is needed", m.Name, m.ConductivitySPerM, m.RelativePermeability)
 }
 
-// doubts returns what is doubtful of a wire by itself.
-func (w Wire) doubts(number int, wavelengthM float64) []string {
+// doubts returns what is doubtful of a wire by itself. open tells that one of its ends is.
+func (w Wire) doubts(number int, open bool, wavelengthM float64) []string {
 	var doubts []string
 	if w.radiusM() > thickWl*wavelengthM {
 		doubts = append(doubts, fmt.Sprintf("wire %d: radius %.3g wl is not thin (over %g wl)", number, w.radiusM()/wavelengthM, thickWl))
 	}
-	if w.lengthM() < stubbyLength*w.radiusM() {
+	if open && w.lengthM() < stubbyLength*w.radiusM() {
 		doubts = append(doubts, fmt.Sprintf("wire %d: length is only %.1f radii (under %d): its ends are not modelled", number, w.lengthM()/w.radiusM(), stubbyLength))
 	}
 	return doubts
@@ -122,31 +131,53 @@ func (s Structure) checkFeeds() error {
 	return errors.Join(errs...)
 }
 
-// checkOpenFeeds returns an error for each feed at a wire's end that is joined to nothing, and for
+// checkSize returns an error if the wires have more segments than are allowed.
+func (s Structure) checkSize(wavelengthM float64) error {
+	segments := 0
+	for i, w := range s.Wires {
+		for _, count := range w.segmentsOf(w.cuts(i, s.Feeds), wavelengthM) {
+			segments += count
+		}
+	}
+	if segments <= mostSegments {
+		return nil
+	}
+	const bytes = 16 + 32 // for each pair: in the matrix, and in the blocks it is made from
+	return fmt.Errorf("%d segments would take %.3g MB: at most %d are allowed; use fewer or shorter wires, or fewer segments", segments, float64(segments)*float64(segments)*bytes/1e6, mostSegments)
+}
+
+// joinedTo returns how many ends of other wires meet a place on a wire, by its index.
+func (s Structure) joinedTo(index int, place vec, wavelengthM float64) int {
+	count := 0
+	for i, w := range s.Wires {
+		for _, end := range []vec{w.From, w.To} {
+			if i != index && end.apart(place) < joinM(w.radiusM(), s.Wires[index].radiusM(), wavelengthM) {
+				count++
+			}
+		}
+	}
+	return count
+}
+
+// checkEndFeeds returns an error for each feed at a wire's end that is joined to nothing, and for
 // each two that are one gap, on either side of the node of two wires.
-func (s Structure) checkOpenFeeds(wavelengthM float64) error {
+func (s Structure) checkEndFeeds(wavelengthM float64) error {
 	var errs []error
 	for i, f := range s.Feeds {
 		if f.At > 0 && f.At < 1 {
 			continue
 		}
-		place, joined := s.Wires[f.Wire-1].line().at(f.At), 0
-		for j, w := range s.Wires {
-			for side, p := range []vec{w.From, w.To} {
-				if p.apart(place) >= joinM(w.radiusM(), s.Wires[f.Wire-1].radiusM(), wavelengthM) || (j == f.Wire-1 && float64(side) == f.At) {
-					continue
-				}
-				joined++
-			}
-		}
-		for k, other := range s.Feeds[:i] {
-			if (other.At == 0 || other.At == 1) && joined == 1 && other.Wire != f.Wire &&
-				s.Wires[other.Wire-1].line().at(other.At).apart(place) < joinM(s.Wires[other.Wire-1].radiusM(), s.Wires[f.Wire-1].radiusM(), wavelengthM) {
-				errs = append(errs, fmt.Errorf("feeds %d and %d are one gap, where wires %d and %d meet", k+1, i+1, other.Wire, f.Wire))
-			}
-		}
+		place := s.Wires[f.Wire-1].line().at(f.At)
+		joined := s.joinedTo(f.Wire-1, place, wavelengthM)
 		if joined == 0 {
 			errs = append(errs, fmt.Errorf("feed %d is at the open end of wire %d: no current flows there; place it along the wire, or join another wire to that end", i+1, f.Wire))
+		}
+		for j, g := range s.Feeds[:i] {
+			other := s.Wires[g.Wire-1]
+			near := other.line().at(g.At).apart(place) < joinM(other.radiusM(), s.Wires[f.Wire-1].radiusM(), wavelengthM)
+			if joined == 1 && near {
+				errs = append(errs, fmt.Errorf("feeds %d and %d are one gap, where wires %d and %d meet", j+1, i+1, g.Wire, f.Wire))
+			}
 		}
 	}
 	return errors.Join(errs...)
@@ -216,7 +247,7 @@ func (s Structure) checkMast(i int) (doubts []string, err error) {
 		return nil, nil
 	}
 	w := s.Wires[i]
-	gapM := w.line().apart(s.Mast.line()) - s.Mast.radiusM()
+	gapM := s.Mast.gapM(w.line())
 	switch thin := w.radiusM(); {
 	case gapM <= thin:
 		return nil, fmt.Errorf("wire %d runs into the mast: its axis is %.3g m from the mast's surface", i+1, gapM)
@@ -230,10 +261,6 @@ func (s Structure) checkMast(i int) (doubts []string, err error) {
 
 // check returns what is wrong with a mesh, and what is doubtful.
 func (m *mesh) check(s Structure, wavelengthM float64) (warnings []string, err error) {
-	if n := len(m.bases); n > mostUnknowns {
-		const bytes = 16 + 32 // for each pair: the matrix, and the blocks it is made from
-		return nil, fmt.Errorf("%d unknowns would take %.0f MB: at most %d are allowed; use fewer or shorter wires, or longer segments", n, float64(n)*float64(n)*bytes/1e6, mostUnknowns)
-	}
 	var errs []error
 	for _, r := range m.runs {
 		warning, err := r.check(wavelengthM)

@@ -55,6 +55,15 @@ func (m *mesh) segments() int {
 	return sum
 }
 
+// segmentsOfWires returns the number of segments of each wire.
+func (m *mesh) segmentsOfWires(wires int) []int {
+	counts := make([]int, wires)
+	for _, r := range m.runs {
+		counts[r.wire] += r.count
+	}
+	return counts
+}
+
 // newMesh divides a structure that has been checked, but for its mast. At a node of n segment ends
 // n-1 basis functions lead from the first to each other one, so that charge is conserved; an open
 // end has none. Ends closer than joinM are one node.

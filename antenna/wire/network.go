@@ -33,17 +33,28 @@ type Network struct {
 const poorCondition = 1e-9
 
 // Solve computes the currents of a structure at a frequency in Hz. It is divided into segments for
-// meshHz, or for the frequency itself where meshHz is zero or less than two thirds of it: so a
-// sweep about a design frequency stays on one mesh.
+// designHz, or for the frequency itself where designHz is zero or less than two thirds of it: so
+// a sweep about a design frequency stays on one mesh.
 //
 // An error tells what is wrong with the wires, by their numbers; what is only doubtful is in the
 // network's warnings.
-func (s Structure) Solve(freqHz, meshHz float64) (*Network, error) {
-	p, err := s.prepare(freqHz, meshHz)
+func (s Structure) Solve(freqHz, designHz float64) (*Network, error) {
+	p, err := s.prepare(freqHz, designHz)
 	if err != nil {
 		return nil, err
 	}
-	return s.solve(p, freqHz)
+	return s.solve(p, freqHz, nil)
+}
+
+// solveAfter solves a structure for which the frequency is the design frequency too. The factors of
+// its mast are taken from a network that has the same mast, moved perhaps, at the same frequency;
+// nil is none.
+func (s Structure) solveAfter(last *Network, freqHz float64) (*Network, error) {
+	p, err := s.prepare(freqHz, freqHz)
+	if err != nil {
+		return nil, err
+	}
+	return s.solve(p, freqHz, last)
 }
 
 // A prepared structure is checked and divided.
@@ -53,15 +64,20 @@ type prepared struct {
 	warnings []string
 }
 
-func (s Structure) prepare(freqHz, meshHz float64) (prepared, error) {
-	if _, err := (antenna.Setting{FreqHz: freqHz, DesignHz: meshHz}).Checked(); err != nil {
+// meshHz returns the frequency for which wires are divided.
+func meshHz(freqHz, designHz float64) float64 {
+	const farther = 1.5
+	if designHz < freqHz/farther {
+		return freqHz
+	}
+	return designHz
+}
+
+func (s Structure) prepare(freqHz, designHz float64) (prepared, error) {
+	if _, err := (antenna.Setting{FreqHz: freqHz, DesignHz: designHz}).Checked(); err != nil {
 		return prepared{}, err
 	}
-	const farther = 1.5
-	if meshHz < freqHz/farther {
-		meshHz = freqHz
-	}
-	wavelengthM := antenna.WavelengthM(meshHz)
+	wavelengthM := antenna.WavelengthM(meshHz(freqHz, designHz))
 	warnings, err := s.check(wavelengthM)
 	if err != nil {
 		return prepared{}, err
@@ -75,7 +91,7 @@ func (s Structure) prepare(freqHz, meshHz float64) (prepared, error) {
 	return p, err
 }
 
-func (s Structure) solve(p prepared, freqHz float64) (*Network, error) {
+func (s Structure) solve(p prepared, freqHz float64, last *Network) (*Network, error) {
 	n := &Network{
 		FreqHz:   freqHz,
 		Segments: p.mesh.segments(),
@@ -88,7 +104,7 @@ func (s Structure) solve(p prepared, freqHz float64) (*Network, error) {
 	}
 	z := impedances(n.k, n.mesh, n.mesh, n.ohmPerM)
 	if p.mast != nil {
-		c, err := newCage(n.k, p.mast)
+		c, err := n.cage(p.mast, last)
 		if err != nil {
 			return nil, err
 		}
@@ -97,6 +113,16 @@ func (s Structure) solve(p prepared, freqHz float64) (*Network, error) {
 		n.border.reduce(z)
 	}
 	return n, n.drive(z)
+}
+
+// cage returns the factored mast, from another network if it has the same.
+func (n *Network) cage(m *mesh, last *Network) (*cage, error) {
+	if last == nil || last.k != n.k || last.border == nil || !last.border.cage.like(m) {
+		return newCage(n.k, m)
+	}
+	c := *last.border.cage
+	c.mesh = m
+	return &c, nil
 }
 
 // drive factors the matrix and finds the answer to each port.

@@ -101,7 +101,7 @@ func TestReferenceFoldedDipoles(t *testing.T) {
 		z := impedance(number(t, row, "limb_length_wl"))
 		c.check(row, "R", real(z), number(t, row, "R_ohm"), number(t, row, "tol_R_ohm"))
 		c.check(row, "X", imag(z), number(t, row, "X_ohm"), number(t, row, "tol_X_ohm"))
-		lengthM, err := risingZero(0.43, 0.48, 0.46, func(l float64) (float64, error) { return imag(impedance(l)), nil })
+		lengthM, err := risingZero(0.43, 0.48, 0.46, 0.01, func(l float64) (float64, error) { return imag(impedance(l)), nil })
 		if err != nil {
 			t.Fatalf("row %s: %v", row["id"], err)
 		}

@@ -11,12 +11,12 @@ var errNoZero = errors.New("no zero")
 // risingZero returns where f rises through zero between lo and hi: from a guess between them, by
 // secants kept inside the bracket (the Illinois variant of false position). f may have poles, at
 // which it falls, so that a bracket with a rise across zero holds no pole alone.
-func risingZero(lo, hi, guess float64, f func(float64) (float64, error)) (float64, error) {
+func risingZero(lo, hi, guess, step float64, f func(float64) (float64, error)) (float64, error) {
 	at, err := f(guess)
 	if err != nil {
 		return 0, err
 	}
-	a, fa, b, fb, err := bracket(lo, hi, guess, at, f)
+	a, fa, b, fb, err := bracket(lo, hi, guess, step, at, f)
 	if err != nil {
 		return 0, err
 	}
@@ -42,15 +42,15 @@ func risingZero(lo, hi, guess float64, f func(float64) (float64, error)) (float6
 
 // bracket widens an interval from a guess towards the side where the zero of a rising function
 // lies, up to lo or hi, until it holds the zero. The nearer end is returned as b.
-func bracket(lo, hi, guess, at float64, f func(float64) (float64, error)) (a, fa, b, fb float64, err error) {
-	limit, step := hi, (hi-lo)/8
+func bracket(lo, hi, guess, step, at float64, f func(float64) (float64, error)) (a, fa, b, fb float64, err error) {
+	limit := hi
 	if at > 0 {
 		limit, step = lo, -step
 	}
 	b, fb = guess, at
 	for b != limit {
 		a, fa = b, fb
-		b += step
+		b, step = b+step, 1.5*step
 		if (limit-b)*step < 0 {
 			b = limit
 		}
