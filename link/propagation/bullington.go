@@ -40,6 +40,9 @@ func (s Slopes) Nu(dKm, lambdaM float64) float64 {
 // Source: Rec. ITU-R P.1812-6, equation (21), Luc being J(nu).
 func BullingtonDB(nu, dKm float64) float64 {
 	luc := KnifeEdgeDB(nu)
+	if luc == 0 {
+		return 0
+	}
 	return luc - math.Expm1(-luc/6)*(10+0.02*dKm)
 }
 

@@ -50,13 +50,18 @@ func (u *duct) lossDB(p float64) float64 { return u.couplingDB() + u.alongDB(p) 
 // air, (~47) to (~50).
 func (u *duct) couplingDB() float64 {
 	h := &u.horizons
-	alf := 0.0
-	if u.f < 0.5 {
-		alf = 45.375 - 137.0*u.f + 92.5*u.f*u.f
-	}
-	return 102.45 + 20*math.Log10(u.f) + 20*math.Log10(h.dlt+h.dlr) + alf +
+	return couplingBasisDB(u.f) + 20*math.Log10(h.dlt+h.dlr) +
 		u.shieldingDB(h.thetaT, h.dlt) + u.shieldingDB(h.thetaR, h.dlr) +
 		u.coastDB(u.dct, h.dlt, u.hts) + u.coastDB(u.dcr, h.dlr, u.hrs)
+}
+
+// couplingBasisDB is the part of Af that all paths share.
+func couplingBasisDB(f float64) float64 {
+	alf := 0.0
+	if f < 0.5 {
+		alf = 45.375 - 137.0*f + 92.5*f*f
+	}
+	return 102.45 + 20*math.Log10(f) + alf
 }
 
 // shieldingDB returns As, the diffraction loss by the ground that shields an antenna whose horizon
@@ -81,13 +86,39 @@ func (u *duct) coastDB(dc, dl, hs float64) float64 {
 // alongDB returns Ad(p), the loss along the anomalous structure by angle and time, (~51) to (~56).
 func (u *duct) alongDB(p float64) float64 {
 	h := &u.horizons
-	gammaD := 5e-5 * h.ae * math.Cbrt(u.f)
-	theta := 1000*u.d/h.ae + min(h.thetaT, 0.1*h.dlt) + min(h.thetaR, 0.1*h.dlr)
 	logBeta := u.logBeta()
 	gamma := 1.076 / math.Pow(2.0058-logBeta, 1.012) *
 		math.Exp(-(9.51-4.8*logBeta+0.198*logBeta*logBeta)*1e-6*math.Pow(u.d, 1.13))
 	x := math.Log10(p) - logBeta // of p/beta
-	return gammaD*theta - 12 + (1.2+3.7e-3*u.d)*x + 12*math.Pow(10, gamma*x)
+	return ductAngleDB(u.f, h.ae, u.thetaPrime()) - 12 + (1.2+3.7e-3*u.d)*x + 12*math.Pow(10, gamma*x)
+}
+
+// thetaPrime is the angular distance of the path along the structure, mrad, (~52).
+func (u *duct) thetaPrime() float64 {
+	h := &u.horizons
+	return 1000*u.d/h.ae + min(h.thetaT, 0.1*h.dlt) + min(h.thetaR, 0.1*h.dlr)
+}
+
+// ductAngleDB returns the loss over an angular distance theta, mrad, (~51).
+func ductAngleDB(f, ae, theta float64) float64 { return 5e-5 * ae * math.Cbrt(f) * theta }
+
+// mostCoastDB is the most that [duct.coastDB] takes off at one end.
+const mostCoastDB = 6
+
+// leastDuctTimeDB is a bound from below of the time term A(p) over d km. beta is never above
+// 10^1.67, so x = log(p/beta) is at least log p - 1.67; where that is positive, 12 * 10^(gamma x) is
+// at least 12, and elsewhere positive.
+func leastDuctTimeDB(p, d float64) float64 {
+	const mostLogBeta = 1.67
+	if x := math.Log10(p) - mostLogBeta; x < 0 {
+		return (1.2+3.7e-3*d)*x - 12
+	}
+	return 0
+}
+
+// leastDB is a bound of the loss from below that does not need the heights over the smooth surface.
+func (u *duct) leastDB(p float64) float64 {
+	return u.couplingDB() + ductAngleDB(u.f, u.horizons.ae, u.thetaPrime()) + leastDuctTimeDB(p, u.d)
 }
 
 // logBeta returns the logarithm of beta, beta0 with its corrections for the geometry of the path

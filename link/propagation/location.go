@@ -13,11 +13,11 @@ func LocationSpreadDB(freqHz, widthM, rxAglM, coverM float64) float64 {
 	return (0.52 + 0.024*freqHz/1e9) * math.Pow(widthM, 0.28) * u
 }
 
-// locationDB returns Lloc, dB, what the loss gains when it shall not be exceeded at pl percent of
+// LocationDB returns Lloc, dB, what the loss gains when it shall not be exceeded at pl percent of
 // the locations: 0 at 50 %, positive above.
 //
 // Source: Rec. ITU-R P.1812-6, section ~4.7.
-func locationDB(pl, spreadDB float64) float64 {
+func LocationDB(pl, spreadDB float64) float64 {
 	if pl == 50 {
 		return 0
 	}

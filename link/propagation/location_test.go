@@ -29,12 +29,12 @@ func TestLocationSpread(t *testing.T) {
 // 4.5e-4 of them.
 func TestLocationDB(t *testing.T) {
 	for _, pl := range []float64{1, 10, 49, 51, 75, 90, 99} {
-		got, want := locationDB(pl, 8), -8*exactNormal(pl/100)
+		got, want := LocationDB(pl, 8), -8*exactNormal(pl/100)
 		if math.Abs(got-want) > 8*4.5e-4 {
 			t.Errorf("Lloc(%g %%) = %.4f dB, want %.4f", pl, got, want)
 		}
 	}
-	if got := locationDB(50, 8); got != 0 {
+	if got := LocationDB(50, 8); got != 0 {
 		t.Errorf("Lloc(50 %%) = %g, want exactly 0", got)
 	}
 }

@@ -99,8 +99,8 @@ func (e *p1812) combine(p *Path) {
 	t.Lminb0p = t.minimumDB(p.TimePct)
 	t.Lbam = t.Lbda + (t.Lminb0p-t.Lbda)*angleWeight(t.Theta)
 	t.Lbc = combineDB(t.Lbs, t.Lbam)
-	t.Lloc = locationDB(p.LocationPct, p.LocationSpreadDB)
-	e.setLoss(p, max(t.Lb0p, t.Lbc+t.Lloc))
+	t.Lloc = LocationDB(p.LocationPct, p.LocationSpreadDB)
+	e.setLoss(p, Combined{t.Lb0p, t.Lbc}.LossDB(t.Lloc))
 }
 
 func (e *p1812) setLoss(p *Path, lb float64) {

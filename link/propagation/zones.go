@@ -17,9 +17,13 @@ type timeParameters struct {
 }
 
 func newTimeParameters(p terrain.Profile, latDeg float64) timeParameters {
-	t := timeParameters{omega: seaShare(p)}
-	t.dtm, _ = stretches(p, func(z terrain.Zone) bool { return z != terrain.Sea })
-	t.dlm, _ = stretches(p, func(z terrain.Zone) bool { return z == terrain.Inland })
+	dtm, _ := stretches(p, func(z terrain.Zone) bool { return z != terrain.Sea })
+	dlm, _ := stretches(p, func(z terrain.Zone) bool { return z == terrain.Inland })
+	return timeParametersOf(dtm, dlm, seaShare(p), latDeg)
+}
+
+func timeParametersOf(dtm, dlm, omega, latDeg float64) timeParameters {
+	t := timeParameters{dtm: dtm, dlm: dlm, omega: omega}
 	t.tau = 1 - math.Exp(-4.12e-4*math.Pow(t.dlm, 2.41))
 	t.beta0 = anomalousTimePct(t.dtm, t.tau, math.Abs(latDeg))
 	return t

@@ -1,0 +1,182 @@
+package propagation
+
+import "math"
+
+// A Request asks P.1812 for the loss not exceeded for TimePct percent of an average year, up to 50,
+// with or without ducting (as [P1812] or [P1812WithoutDucting]).
+type Request struct {
+	TimePct float64
+	Ducting bool
+}
+
+// A Brief evaluates P.1812 at one frequency for very many paths that are given as outlines of
+// their ground: the formulas of [P1812], without terms and notes. It leaves out what cannot move
+// the loss by 1e-7 dB. It checks nothing; many goroutines may use it at once.
+type Brief struct {
+	f, lambda float64
+	lbfs1     float64 // free space over 1 km
+	coupling  float64 // the part of the ducting loss that all paths share, less 20 log(1 km)
+	earth     SmoothEarth
+	requests  []Request
+	lbs1      []float64 // for each request, troposcatter over 1 km without an angle
+}
+
+// NewBrief prepares for requests at freqHz, 30e6 to 6e9 Hz, in air of sea-level refractivity n0,
+// N-units.
+func NewBrief(freqHz, n0 float64, requests []Request) *Brief {
+	f := freqHz / 1e9
+	b := &Brief{
+		f: f, lambda: diffractionWavelengthM(freqHz), lbfs1: lineOfSightDB(f, 1), coupling: couplingBasisDB(f),
+		earth: NewSmoothEarth(freqHz, 1), requests: requests,
+	}
+	for _, r := range requests {
+		b.lbs1 = append(b.lbs1, scatterBasisDB(f, n0, r.TimePct))
+	}
+	return b
+}
+
+// negligibleDB is the difference from which on the blend of [combineDB] moves its result by less
+// than 1e-7 dB: 5/ln(10) 10^(-0.2 x).
+const negligibleDB = 37
+
+// A briefPath is one path on its way.
+type briefPath struct {
+	*Brief
+	*Outline
+	ground Ground
+
+	omega, theta, lbfs, ld50 float64
+	smooth                   surfaceLine // of the diffraction model
+	earth                    SmoothEarth
+	time                     timeParameters // asked for when needed
+	timed                    bool
+	dlt, dlr                 float64 // the horizons, on a line of sight asked for when needed
+}
+
+// Loss evaluates the requests on one path, of whose power the part verticalShare is vertically
+// polarized, into out, one for each request in their order. Nearer than 0.25 km the loss is that
+// of free space.
+func (b *Brief) Loss(o *Outline, g Ground, verticalShare float64, out []Combined) {
+	p := briefPath{Brief: b, Outline: o, ground: g, earth: b.earth, dlt: o.Dlt, dlr: o.Dlr}
+	p.earth.verticalShare = verticalShare
+	rise := (o.Hts - o.Hrs) / 1000
+	p.lbfs = b.lbfs1 + 10*math.Log10(o.LengthKm*o.LengthKm+rise*rise)
+	if o.LengthKm < leastKm {
+		for i := range out {
+			out[i] = Combined{p.lbfs, p.lbfs}
+		}
+		return
+	}
+	_, _, sea := g.Zones()
+	p.omega = sea / o.LengthKm
+	p.theta = o.Theta()
+	p.smooth = lineOfSums(o.V1, o.V2, o.LengthKm).
+		lowered(obstructions{o.Hobs, o.AlphaT, o.AlphaR}).limited(o.TxGroundM, o.RxGroundM)
+	p.ld50 = p.diffractionDB(o.Slopes, o.Ae)
+	logD := math.Log10(o.LengthKm)
+	for i, r := range b.requests {
+		lbs := b.lbs1[i] + scatterPathDB(logD, p.theta)
+		out[i] = p.request(r, lbs, logD)
+	}
+}
+
+// request evaluates one request behind the loss by troposcatter.
+func (p *briefPath) request(r Request, lbs, logD float64) Combined {
+	lb0p, lbd := p.lbfs, p.lbfs+p.ld50
+	var least minimum
+	if r.TimePct < 50 {
+		least = p.minimum(r.TimePct)
+		lb0p, lbd = least.lb0p, least.lbd()
+	}
+	lbda := lbd
+	if r.Ducting {
+		lbda = p.withDucting(r.TimePct, lb0p, lbd, logD)
+	}
+	lbam := lbda
+	switch {
+	case r.TimePct < 50:
+		lbam = lbda + (least.lossDB()-lbda)*angleWeight(p.theta)
+	case lbda != lbd: // Lminb0p is Lbd50 at 50 %, which is Lbd
+		lbam = lbda + (lbd-lbda)*angleWeight(p.theta)
+	}
+	if lbs > lbam+negligibleDB {
+		return Combined{lb0p, lbam}
+	}
+	return Combined{lb0p, combineDB(lbs, lbam)}
+}
+
+// diffractionDB is the delta-Bullington loss at one Earth radius.
+func (p *briefPath) diffractionDB(actual Slopes, ap float64) float64 {
+	d := p.LengthKm
+	lbulla := BullingtonDB(actual.Nu(d, p.lambda), d)
+	txM, rxM := p.Hts-p.smooth.tx, p.Hrs-p.smooth.rx
+	ldsph := p.earth.LossDB(SmoothPath{LengthKm: d, TxM: txM, RxM: rxM, RadiusKm: ap, SeaShare: p.omega})
+	if ldsph == 0 { // whatever Lbulls is
+		return lbulla
+	}
+	lbulls := BullingtonDB(p.ground.LevelSlopes(ap, txM, rxM).Nu(d, p.lambda), d)
+	return DeltaBullingtonDB(lbulla, lbulls, ldsph)
+}
+
+// minimum evaluates what p below 50 % of the time needs beside the median.
+func (p *briefPath) minimum(pct float64) minimum {
+	p.askTime()
+	p.askHorizons()
+	m := minimum{p: pct, beta0: p.time.beta0, lbd50: p.lbfs + p.ld50, fi: interpolationFactor(pct, p.time.beta0)}
+	m.lb0p = p.lbfs + focusingDB(p.dlt, p.dlr, pct)
+	m.lb0beta = p.lbfs + focusingDB(p.dlt, p.dlr, p.time.beta0)
+	ldbeta := p.diffractionDB(p.ground.SlopesBeta(), betaRadiusKm)
+	m.ldp = p.ld50 + m.fi*(ldbeta-p.ld50)
+	m.overLand = (1 - p.omega) * m.ldp
+	return m
+}
+
+func (p *briefPath) askTime() {
+	if !p.timed {
+		dtm, dlm, _ := p.ground.Zones()
+		p.time, p.timed = timeParametersOf(dtm, dlm, p.omega, p.ground.LatDeg()), true
+	}
+}
+
+func (p *briefPath) askHorizons() {
+	if p.dlt == 0 && !p.TransHorizon {
+		p.dlt = p.ground.ObstacleKm()
+		p.dlr = p.LengthKm - p.dlt
+	}
+}
+
+// withDucting leads Lbd towards ducting. Ducting counts where Lminbap is below Lbd, and Lminbap is
+// never below Lba: a bound of Lba from below that reaches Lbd settles it.
+func (p *briefPath) withDucting(pct, lb0p, lbd, logD float64) float64 {
+	if p.leastDuctingDB(pct, logD) >= lbd {
+		return lbd
+	}
+	p.askTime()
+	p.askHorizons()
+	u := duct{
+		f: p.f, d: p.LengthKm, time: p.time, hts: p.Hts, hrs: p.Hrs,
+		horizons: horizons{ae: p.Ae, thetaT: p.ThetaT, thetaR: p.ThetaR, dlt: p.dlt, dlr: p.dlr},
+		smooth:   lineOfSums(p.V1, p.V2, p.LengthKm).limited(p.TxGroundM, p.RxGroundM),
+	}
+	u.dct, u.dcr = p.ground.CoastKm()
+	if u.leastDB(pct) >= lbd {
+		return lbd
+	}
+	u.hte, u.hre = u.hts-u.smooth.tx, u.hrs-u.smooth.rx
+	u.hm = p.ground.RoughnessM(u.smooth.tx, u.smooth.rx)
+	return withDuctingDB(lbd, minimumWithDuctingDB(u.lossDB(pct), lb0p), p.LengthKm)
+}
+
+// leastDuctingDB is a quick bound of Lba from below: without shielding, with the most that the coast
+// can take off, and the least angles. On a line of sight dlt + dlr is the length of the path.
+func (p *briefPath) leastDuctingDB(pct, logD float64) float64 {
+	least := p.coupling + 20*logD
+	if p.TransHorizon {
+		least = p.coupling + 20*math.Log10(p.Dlt+p.Dlr)
+	}
+	if p.omega >= 0.75 {
+		least -= 2 * mostCoastDB
+	}
+	theta := 1000*p.LengthKm/p.Ae + min(p.ThetaT, 0) + min(p.ThetaR, 0)
+	return least + ductAngleDB(p.f, p.Ae, theta) + leastDuctTimeDB(pct, p.LengthKm)
+}
