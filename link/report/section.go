@@ -69,8 +69,8 @@ func stepM(s *link.Section) float64 {
 	return s.Profile.LengthKm() * 1000 / float64(len(s.Profile.DistKm)-1)
 }
 
-// SectionCSV writes the points of a section; its first four columns are a profile that the loss
-// command reads.
+// SectionCSV writes the points of a section; its first four columns by themselves are a profile that the
+// loss command reads.
 func SectionCSV(w io.Writer, s *link.Section) error {
 	out := csv.NewWriter(w)
 	out.Write([]string{"d_km", "h_m", "R_m", "zone", "lon", "lat", "ray_m", "bulge_m", "fresnel1_m"})

@@ -48,10 +48,13 @@ func (d *drawing) f(format string, args ...any) { fmt.Fprintf(&d.Builder, format
 func newDrawing(s *link.Section) *drawing {
 	d := &drawing{Section: s, lowM: math.Inf(1), highM: math.Inf(-1)}
 	for i := range s.RayM {
-		d.lowM = min(d.lowM, s.BulgeM[i], s.Profile.AslM[i]+s.BulgeM[i])
+		d.lowM = min(d.lowM, s.Profile.AslM[i]+s.BulgeM[i])
 		d.highM = max(d.highM, d.top(i), s.RayM[i]+0.6*s.Fresnel1M[i])
 	}
-	// Keep the bottom at sea level where the ground is near it, at a round height elsewhere.
+	// The bottom is sea level where the ground is near it, a round height elsewhere.
+	if d.lowM < 0.25*d.highM {
+		d.lowM = min(d.lowM, 0)
+	}
 	step := tickStep(d.highM - d.lowM)
 	d.lowM = math.Floor(d.lowM/step) * step
 	d.highM += 0.06 * (d.highM - d.lowM)
@@ -97,7 +100,7 @@ func (d *drawing) ground() {
 	base := fmt.Sprintf("V%.1fH%.1fZ", d.y(d.lowM), d.x(0))
 	d.f(`<path d="%s%s" fill="%s"/>`+"\n", d.outline(d.top), base, inkCover)
 	d.f(`<path d="%s%s" fill="%s"/>`+"\n", d.outline(func(i int) float64 { return d.Profile.AslM[i] + d.BulgeM[i] }), base, inkGround)
-	d.f(`<path d="%s" fill="none" stroke="%s" stroke-dasharray="2 4"/>`+"\n", d.outline(func(i int) float64 { return d.BulgeM[i] }), inkBulge)
+	d.f(`<path d="%s" fill="none" stroke="%s" stroke-dasharray="2 4" clip-path="url(#plot)"/>`+"\n", d.outline(func(i int) float64 { return d.BulgeM[i] }), inkBulge)
 	for i := 0; i < len(d.Profile.Zone); i++ {
 		first := i
 		for i+1 < len(d.Profile.Zone) && d.Profile.Zone[i+1] == d.Profile.Zone[first] {
@@ -116,7 +119,7 @@ func (d *drawing) ray() {
 	d.f(`<path d="%s%s" fill="none" stroke="%s" stroke-width="1.3" stroke-dasharray="6 3" clip-path="url(#plot)"/>`+"\n", upper, lower, inkZone)
 	d.f(`<path d="M%.1f %.1fL%.1f %.1f" stroke="%s" stroke-width="1.8"/>`+"\n", d.x(0), d.y(d.RayM[0]), d.x(d.Profile.LengthKm()), d.y(d.RayM[last]), inkRay)
 	d.f(`<g transform="translate(%d,%d)" fill="%s"><path d="M0 -4h26" stroke="%s" stroke-width="1.8"/><text x="32">ray</text>`, svgLeft, svgHeight-10, inkQuiet, inkRay)
-	d.f(`<path d="M74 -4h26" stroke="%s" stroke-width="1.3" stroke-dasharray="6 3"/><text x="106">0.6 of the first Fresnel zone</text>`, inkZone)
+	d.f(`<path d="M74 -4h26" stroke="%s" stroke-width="1.3" stroke-dasharray="6 3"/><text x="106">0.6 of the first Fresnel radius</text>`, inkZone)
 	d.f(`<path d="M312 -4h26" stroke="%s" stroke-dasharray="2 4"/><text x="344">sea level on the Earth’s bulge</text>`, inkBulge)
 	d.f(`<rect x="552" y="-11" width="14" height="11" fill="%s"/><text x="572">cover</text></g>`+"\n", inkCover)
 }
