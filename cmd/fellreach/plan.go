@@ -58,7 +58,7 @@ func newPlanCheck(t *terminal) *cobra.Command {
 			if err != nil {
 				return err
 			}
-			fmt.Fprintf(t.out, "%s: %d sites, %d links: the plan is well formed\n", args[0], len(p.Sites), len(p.Links.List))
+			fmt.Fprintf(t.out, "%s: the plan is well formed (sites: %d, links: %d)\n", args[0], len(p.Sites), len(p.Links.List))
 			return nil
 		},
 	}

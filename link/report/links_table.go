@@ -53,7 +53,8 @@ func verdictCount(links []*link.Result) string {
 	for _, l := range links {
 		count[l.Verdict]++
 	}
-	return fmt.Sprintf("%d links: %d close, %d thin, %d fail. Margins in dB, azimuths from true north, F1 the first Fresnel radius.", len(links), count[link.Closes], count[link.Thin], count[link.Fails])
+	return fmt.Sprintf("%s: %s, %d thin, %s. Margins in dB, azimuths from true north, F1 the first Fresnel radius.",
+		counted(len(links), "link", "links"), counted(count[link.Closes], "closes", "close"), count[link.Thin], counted(count[link.Fails], "fails", "fail"))
 }
 
 // writeWarnings lists each warning once, with the stations or links it stands for.

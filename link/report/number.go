@@ -33,6 +33,14 @@ func azimuth(deg float64) string {
 	return decimals(rounded, 1)
 }
 
+// counted writes a count with its word.
+func counted(n int, one, many string) string {
+	if n == 1 {
+		return "1 " + one
+	}
+	return strconv.Itoa(n) + " " + many
+}
+
 // percent writes a chance with as many digits as it deserves near its ends.
 func percent(pct float64) string {
 	switch {

@@ -29,7 +29,7 @@ func TerrainTable(w io.Writer, files []raster.Info) error {
 }
 
 func terrainText(w io.Writer, f raster.Info) error {
-	fmt.Fprintf(w, "%s (%s, %d bands, %s)\n", f.Path, f.Driver, f.Bands, f.Type)
+	fmt.Fprintf(w, "%s (%s, %s, %s)\n", f.Path, f.Driver, counted(f.Bands, "band", "bands"), f.Type)
 	row := func(name, format string, args ...any) {
 		fmt.Fprintf(w, "  %-9s "+format+"\n", append([]any{name}, args...)...)
 	}
