@@ -10,10 +10,21 @@ import (
 // Common practice, no source.
 const equipmentSpreadDB = 1
 
-// chancePct returns the chance, in percent, that a link of a margin in dB, once built, meets its
-// availability: Phi((margin + bias)/s), s the root sum square of the prediction's spread and the
-// equipment's.
-func (c Conditions) chancePct(marginDB float64) float64 {
-	s := math.Hypot(c.SpreadDB, equipmentSpreadDB)
-	return 100 * distuv.UnitNormal.CDF((marginDB+c.BiasDB)/s)
+// decileSigmas is how many standard deviations the decile of a normal distribution lies from its
+// median.
+const decileSigmas = 1.2816
+
+// chancePct returns the chance, in percent, that a direction of a margin in dB, once built, meets
+// its availability: Phi((margin + bias)/s), s the root sum square of the prediction's spread, the
+// spread of the noise from outside (its decile over locations, weighed by its share of all noise)
+// and the equipment's. With readings the spread is an estimate, and Student's t of their count
+// takes the place of Phi.
+func (c Conditions) chancePct(marginDB float64, outside heard) float64 {
+	noiseDB := outside.share * outside.decileDB / decileSigmas
+	s := math.Sqrt(c.SpreadDB*c.SpreadDB + noiseDB*noiseDB + equipmentSpreadDB*equipmentSpreadDB)
+	x := (marginDB + c.BiasDB) / s
+	if c.Readings > 1 {
+		return 100 * distuv.StudentsT{Mu: 0, Sigma: 1, Nu: float64(c.Readings - 1)}.CDF(x)
+	}
+	return 100 * distuv.UnitNormal.CDF(x)
 }

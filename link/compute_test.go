@@ -70,7 +70,7 @@ func conditions(m propagation.Model) Conditions {
 
 var poll = Channel{Name: "poll", OutHz: 150e6, BackHz: 150e6, BandwidthHz: 12.5e3}
 
-func compute(t testing.TB, l *Link, p terrain.Profile, m propagation.Model) *Result {
+func mustCompute(t testing.TB, l *Link, p terrain.Profile, m propagation.Model) *Result {
 	t.Helper()
 	r, err := Compute(l, p, conditions(m))
 	if err != nil {
@@ -94,7 +94,7 @@ func TestBudgetWorkedByHand(t *testing.T) {
 		From: a, To: b, Channel: poll, Aim: Aim{AvailabilityPct: 99, MarginDB: 6},
 		Fade: &Allowance{LossDB: 10}, Allowances: []Allowance{{Name: "wet leaves", LossDB: 2}},
 	}
-	r := compute(t, l, level(10), propagation.FreeSpace)
+	r := mustCompute(t, l, level(10), propagation.FreeSpace)
 	const freeSpace = 95.9697
 	for i, want := range []struct{ received, margin float64 }{
 		{37 - 1.2 - 1.51153 + 3 - freeSpace + 6, 117 - 10 - 2},
@@ -139,7 +139,7 @@ func TestNeedFromNoise(t *testing.T) {
 	b.Radio.Needs = Need{FigureDB: 7, BandwidthHz: 8000, RequiredSNRDB: 12}
 	b.Inserts = []Insert{{Name: "preamp", GainDB: 12, FigureDB: 2, ReceiveOnly: true, AtMast: true}, {Name: "pad", LossDB: 3}}
 	l := &Link{From: a, To: b, Channel: poll, OneWay: true, Aim: Aim{AvailabilityPct: 50}}
-	r := compute(t, l, level(10), propagation.FreeSpace)
+	r := mustCompute(t, l, level(10), propagation.FreeSpace)
 	if len(r.Directions) != 1 {
 		t.Fatalf("a one-way link has %d directions", len(r.Directions))
 	}
@@ -147,7 +147,7 @@ func TestNeedFromNoise(t *testing.T) {
 	if math.Abs(d.RequiredDBm+115.944) > 1e-3 {
 		t.Errorf("required %.4f dBm, want -115.944", d.RequiredDBm)
 	}
-	if got := line(t, d, "B: noise through the preamplifier"); math.Abs(got+5.32995) > 1e-4 {
+	if got := line(t, d, "B: noise from outside and of the preamplifier"); math.Abs(got+5.32995) > 1e-4 {
 		t.Errorf("preamplifier's noise %.5f dB, want -5.32995", got)
 	}
 	if got := line(t, d, "B: preamp"); got != 12 {
@@ -166,7 +166,7 @@ func TestPolarization(t *testing.T) {
 		a.Mount = antenna.Mount{FacingDeg: 90, RollDeg: tc.slantA}
 		b.Mount = antenna.Mount{FacingDeg: 270, RollDeg: tc.slantB}
 		l := &Link{From: a, To: b, Channel: poll, Aim: Aim{AvailabilityPct: 50}}
-		r := compute(t, l, level(5), propagation.FreeSpace)
+		r := mustCompute(t, l, level(5), propagation.FreeSpace)
 		if got := -line(t, r.Directions[0], "polarization"); math.Abs(got-tc.want) > 0.02 {
 			t.Errorf("slants %g and %g: polarization loses %.3f dB, want %.3f", tc.slantA, tc.slantB, got, tc.want)
 		}
@@ -179,7 +179,7 @@ func TestPolarization(t *testing.T) {
 func TestObstructedPathLosesMore(t *testing.T) {
 	a, b := plainStation("A", 0, isotropic(t, 0, 1)), plainStation("B", 1, isotropic(t, 0, 1))
 	l := &Link{From: a, To: b, Channel: poll, Aim: Aim{AvailabilityPct: 50}}
-	clear, blocked := compute(t, l, level(10), propagation.P526), compute(t, l, hill(level(10), 300), propagation.P526)
+	clear, blocked := mustCompute(t, l, level(10), propagation.P526), mustCompute(t, l, hill(level(10), 300), propagation.P526)
 	if blocked.MarginDB > clear.MarginDB-20 {
 		t.Errorf("a ridge of 300 m takes %.1f dB", clear.MarginDB-blocked.MarginDB)
 	}
@@ -216,7 +216,7 @@ func TestChance(t *testing.T) {
 		{s, 0, 84.1345}, {0, 0, 50}, {-1.644854 * s, 0, 5}, {0, s, 84.1345},
 	} {
 		c.BiasDB = tc.bias
-		if got := c.chancePct(tc.margin); math.Abs(got-tc.want) > 1e-3 {
+		if got := c.chancePct(tc.margin, heard{}); math.Abs(got-tc.want) > 1e-3 {
 			t.Errorf("margin %g, bias %g: %.4f %%, want %.4f", tc.margin, tc.bias, got, tc.want)
 		}
 	}
@@ -234,7 +234,7 @@ func TestGroundOfTheSites(t *testing.T) {
 		p.CoverM[i] = 12
 	}
 	l := &Link{From: b, To: a, Channel: poll, Aim: Aim{AvailabilityPct: 50}} // from the second end
-	r := compute(t, l, p, propagation.P526)
+	r := mustCompute(t, l, p, propagation.P526)
 	n := len(r.Profile.AslM)
 	if r.Profile.AslM[0] != 100 || r.Profile.AslM[n-1] != 150 {
 		t.Errorf("ground at the ends is %g and %g m, want 100 and 150 from From to To", r.Profile.AslM[0], r.Profile.AslM[n-1])

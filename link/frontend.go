@@ -6,7 +6,6 @@ import (
 	"slices"
 
 	"fellreach/antenna"
-	"fellreach/link/noise"
 )
 
 // A frontEnd is a station at one frequency: the antenna solved as installed, and what lies
@@ -121,40 +120,4 @@ func (f *frontEnd) warnings(toward antenna.Direction) []string {
 		}
 	}
 	return list
-}
-
-// need writes what the receiver asks for, and by how much a preamplifier's noise raises it.
-func (f *frontEnd) need(b *Budget) {
-	n := f.Radio.Needs
-	if n.Stated {
-		b.add(NeedLine, f.Name+": sensitivity", -n.SensitivityDBm, n.Source)
-	} else {
-		thermal := noise.ThermalDBm(n.BandwidthHz)
-		b.add(NeedLine, f.Name+": noise floor and signal-to-noise ratio", -(thermal + n.FigureDB + n.RequiredSNRDB),
-			fmt.Sprintf("k T0 B %.1f dBm in %g kHz, noise figure %g dB, ratio %g dB (%s)", thermal, n.BandwidthHz/1e3, n.FigureDB, n.RequiredSNRDB, n.Source))
-	}
-	if stages, amplified := f.stages(); amplified {
-		b.add(NoiseLine, f.Name+": noise through the preamplifier", -noise.RiseDB(1, stages, n.FigureDB),
-			fmt.Sprintf("Friis, referred to the receiver's port; noise figure %g dB", n.FigureDB))
-	}
-}
-
-// stages lists what lies between the antenna and the receiver, the antenna first.
-func (f *frontEnd) stages() (list []noise.Stage, amplified bool) {
-	insert := func(atMast bool) {
-		for i := len(f.Inserts) - 1; i >= 0; i-- {
-			switch in := f.Inserts[i]; {
-			case in.AtMast != atMast:
-			case in.GainDB > 0:
-				list, amplified = append(list, noise.Stage{GainDB: in.GainDB, FigureDB: in.FigureDB}), true
-			default:
-				list = append(list, noise.Passive(in.LossDB))
-			}
-		}
-	}
-	list = append(list, noise.Passive(-10*math.Log10(f.solution.Efficiency)+f.line.TransformerLossDB))
-	insert(true)
-	list = append(list, noise.Passive(f.line.MatchedLossDB+f.line.ExtraLossDB+f.line.MismatchLossDB))
-	insert(false)
-	return list, amplified
 }

@@ -44,9 +44,14 @@ type Conditions struct {
 	Method propagation.Model
 	// DeltaN and N0 are the refractivity of the air, in N-units per km and N-units.
 	DeltaN, N0 float64
+	// Dn1 is the refractivity gradient of the lowest 65 m not exceeded for 1 % of the year, in N-units
+	// per km; RoughnessM the standard deviation of the terrain by P.530, 0 where it is not known.
+	Dn1, RoughnessM float64
+	Dn1Source       string
 	// SpreadDB is the standard deviation of the prediction, BiasDB its mean error (added to the
-	// margin).
+	// margin), Readings the count of readings behind them, 0 when they are assumed.
 	SpreadDB, BiasDB float64
+	Readings         int
 }
 
 // Title names a link for people: its own name, or its ends and channel.

@@ -30,7 +30,10 @@ type Horizon struct {
 // Trace works out the section of a link over the ground p, given as to [Compute], at the mean of
 // the channel's frequencies.
 func Trace(l *Link, p terrain.Profile, c Conditions) (*Section, error) {
-	w := newWay(l, p, c)
+	w, err := newWay(l, p, c)
+	if err != nil {
+		return nil, err
+	}
 	path := w.path(l.Channel.centreHz(), 1)
 	found, err := propagation.FreeSpace.Loss(path)
 	if err != nil {

@@ -54,7 +54,12 @@ type Station struct {
 	// GroundAslM is a surveyed ground height in place of the raster's, nil when there is none.
 	GroundAslM *float64
 	// ClearingM is the distance within which cover heights are left out.
-	ClearingM float64
+	ClearingM    float64
+	Surroundings Surroundings
+	Noise        Noise
+	// CanopyM is the height of the land cover the site stands in, where the ground is bare;
+	// OnCanopyM the same where the raster's heights hold the cover. Zero is none, or not known.
+	CanopyM, OnCanopyM float64
 
 	Radio   Radio
 	Inserts []Insert

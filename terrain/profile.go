@@ -72,3 +72,17 @@ func (p Profile) Cleared(firstM, lastM float64) Profile {
 	}
 	return r
 }
+
+// CoastKm returns the distances over land from the first and from the last point to the nearest
+// sea along the profile, in km; ok is false where there is no sea.
+func (p Profile) CoastKm() (first, last float64, ok bool) {
+	for i := range p.Zone {
+		if p.Zone[i] == Sea {
+			if !ok {
+				first = p.DistKm[i]
+			}
+			last, ok = p.LengthKm()-p.DistKm[i], true
+		}
+	}
+	return first, last, ok
+}

@@ -1,7 +1,9 @@
 package main
 
 import (
+	"fmt"
 	"io"
+	"math"
 	"os"
 
 	"fellreach/link/plan"
@@ -52,6 +54,9 @@ func newLoss(t *terminal) *cobra.Command {
 			if err != nil {
 				return err
 			}
+			if !cmd.Flags().Changed("latitude") && method.Name == propagation.P1812.Name {
+				loss.Notes = append(loss.Notes, fmt.Sprintf("no --latitude was given: %g degrees is taken", v.latitude))
+			}
 			return out.write(t, func(w io.Writer) error {
 				if out.format == "json" {
 					return report.LossJSON(w, method, loss)
@@ -79,7 +84,7 @@ func (v *lossFlags) flags(cmd *cobra.Command) {
 	f.Float64Var(&v.latitude, "latitude", 45, "latitude of the path's centre, degrees, north positive")
 	f.Float64Var(&v.n0, "n0", 325, "sea-level surface refractivity, N-units")
 	f.Float64Var(&v.deltaN, "delta-n", 45, "fall of refractivity over the lowest kilometre, N-units per km")
-	f.StringVar(&v.method, "method", "p526", "free-space or p526")
+	f.StringVar(&v.method, "method", propagation.P1812.Name, "free-space, p526 or p1812")
 }
 
 // path reads the profile and sets it in the flags' circumstances.
@@ -93,12 +98,9 @@ func (v *lossFlags) path(name string) (propagation.Path, error) {
 	if err != nil {
 		return propagation.Path{}, err
 	}
-	vertical := 1.0
-	if v.polarization.SlantDeg == 90 {
-		vertical = 0
-	}
+	upright := math.Cos(v.polarization.SlantDeg * math.Pi / 180)
 	return propagation.Path{
-		Profile: profile, FreqHz: float64(v.frequency), TxAglM: float64(v.txHeight), RxAglM: float64(v.rxHeight), VerticalShare: vertical,
+		Profile: profile, FreqHz: float64(v.frequency), TxAglM: float64(v.txHeight), RxAglM: float64(v.rxHeight), VerticalShare: upright * upright,
 		DeltaN: v.deltaN, N0: v.n0, TimePct: float64(v.time), LocationPct: float64(v.locations), LocationSpreadDB: float64(v.spread),
 		LatDeg: v.latitude, TxCoastKm: float64(v.coastTx) / 1000, RxCoastKm: float64(v.coastRx) / 1000,
 	}, nil

@@ -25,6 +25,7 @@ sites:
   - {name: B, at: "49.98 N, 10.01 E", radio: r, antenna: {use: a, above_ground: "16 m"}}
   - {name: C, at: "49.98 N, 9.99 E", radio: r, antenna: {use: a, above_ground: "17 m"}}
 links: [{from: A, to: B, fade: "10 dB"}]
+method: p526
 `
 
 // smallProfile is a profile without a mistake.
@@ -292,7 +293,7 @@ func (m mistake) spoiled(t *testing.T) (folder string, args []string) {
 	folder = t.TempDir()
 	write(t, folder, "plan.yaml", smallPlan)
 	write(t, folder, "profile.csv", smallProfile)
-	ground(func(*raster.GeoTIFF) {})(t, folder)
+	ground(noChange)(t, folder)
 	if m.prepare != nil {
 		m.prepare(t, folder)
 	}

@@ -48,3 +48,10 @@ func RiseDB(fa float64, stages []Stage, receiverDB float64) float64 {
 }
 
 func ratio(dB float64) float64 { return math.Pow(10, dB/10) }
+
+// OutsideShare returns which part of all noise at the receiver's port comes from outside, 0 to 1:
+// (fa - 1)/(fa - 1 + l fr) with losses alone.
+func OutsideShare(fa float64, stages []Stage, receiverDB float64) float64 {
+	quiet, all := ratio(RiseDB(1, stages, receiverDB)), ratio(RiseDB(fa, stages, receiverDB))
+	return 1 - quiet/all
+}

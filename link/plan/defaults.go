@@ -17,7 +17,8 @@ const (
 	defaultAvailability = 99.0
 	defaultAimMarginDB  = 6.0
 	defaultSpreadDB     = 9.0
-	defaultMethod       = "p526"
+	defaultMethod       = "p1812"
+	defaultDn1          = -200.0 // inland, temperate; from memory
 )
 
 // fillDefaults writes the defaults into what the file left out.
@@ -27,6 +28,7 @@ func (p *Plan) fillDefaults() {
 	}
 	fill(&p.Air.N0, defaultN0)
 	fill(&p.Air.DeltaN, defaultDeltaN)
+	fill(&p.Air.Dn1, defaultDn1)
 	fill(&p.Ground.BridgeVoids, 0)
 	fillText(&p.Ground.Elevation.Holds, "bare")
 	fillText(&p.Ground.Beyond, "void")

@@ -10,4 +10,5 @@ var methods = map[string]struct {
 }{
 	"free-space": {propagation.FreeSpace, false},
 	"p526":       {propagation.P526, false},
+	"p1812":      {propagation.P1812, true},
 }

@@ -6,7 +6,6 @@ import (
 	"math"
 
 	"fellreach/link"
-	"fellreach/link/propagation"
 	"fellreach/terrain"
 	"fellreach/terrain/raster"
 
@@ -29,18 +28,11 @@ type Network struct {
 // Open opens the plan's rasters and resolves its names. Errors are [Errors] where they have a
 // place in the plan. The caller closes the network.
 func (p *Plan) Open() (*Network, error) {
-	method, err := propagation.ByName(p.Method)
-	if err != nil {
-		return nil, err
-	}
 	n := &Network{
-		Title:    p.Title,
-		Stations: map[string]*link.Station{},
-		Conditions: link.Conditions{
-			Method: method, DeltaN: *p.Air.DeltaN, N0: *p.Air.N0,
-			SpreadDB: float64(*p.Prediction.Spread), BiasDB: float64(*p.Prediction.Bias),
-		},
-		plan: p,
+		Title:      p.Title,
+		Stations:   map[string]*link.Station{},
+		Conditions: p.conditions(),
+		plan:       p,
 	}
 	c := &checker{Plan: p}
 	n.locate(c)
@@ -49,15 +41,50 @@ func (p *Plan) Open() (*Network, error) {
 	if len(c.errs) > 0 {
 		return nil, c.errs.sorted()
 	}
-	n.Ground, err = raster.Open(p.groundSpec())
-	if err != nil {
+	var err error
+	if n.Ground, err = raster.Open(p.groundSpec()); err != nil {
 		return nil, c.at("ground", err)
 	}
-	if n.checkGround(c); len(c.errs) > 0 {
+	n.checkGround(c)
+	n.findCanopies(c)
+	if len(c.errs) > 0 {
 		n.Close()
 		return nil, c.errs.sorted()
 	}
 	return n, nil
+}
+
+// conditions are what holds for all links of the plan.
+func (p *Plan) conditions() link.Conditions {
+	c := link.Conditions{
+		Method: methods[p.Method].model, DeltaN: *p.Air.DeltaN, N0: *p.Air.N0, Dn1: *p.Air.Dn1, Dn1Source: "assumed",
+		SpreadDB: float64(*p.Prediction.Spread), BiasDB: float64(*p.Prediction.Bias), Readings: p.Prediction.Readings,
+	}
+	if _, stated := p.where["air.dn1"]; stated {
+		c.Dn1Source = p.source("air.dn1")
+	}
+	if p.Air.Roughness != nil {
+		c.RoughnessM = float64(*p.Air.Roughness)
+	}
+	return c
+}
+
+// findCanopies tells every station which cover it stands in.
+func (n *Network) findCanopies(c *checker) {
+	for name := range sorted(n.Stations) {
+		s := n.Stations[name]
+		class, known, err := n.Ground.CoverAt(s.At)
+		switch {
+		case err != nil:
+			c.refuse("ground.cover", err)
+			return
+		case !known || s.Surroundings != (link.Surroundings{}):
+		case n.plan.Ground.Elevation.Holds == "surface" && s.GroundAslM == nil:
+			s.OnCanopyM = class.HeightM
+		default:
+			s.CanopyM = class.HeightM
+		}
+	}
 }
 
 // Close closes the rasters.

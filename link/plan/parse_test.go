@@ -134,7 +134,7 @@ var badPlans = []badPlan{
 	{"two sites of a name", `name: B`, `name: A`, `"A" is the name of two sites`, false},
 	{"link to itself", `to: B`, `to: A`, "begins and ends at one site", false},
 	{"link twice", `links: [`, `links: [{from: A, to: B, fade: "3 dB"}, `, "stands twice", false},
-	{"no fade", `, fade: "10 dB"`, ``, "links[0].fade: is missing: method p526 does not compute the fading", false},
+	{"no fade", `, fade: "10 dB"}]`, "}]\nmethod: p526", "links[0].fade: is missing: method p526 does not compute the fading", false},
 	{"availability too high", "links:", `aim: {availability: "99.99 %"}` + "\nlinks:", "it lies from 50 to 99.9 %", false},
 	{"absurd height", `above_ground: "5 m"}}` + "\n  - {name: B", `above_ground: "30 km"}}` + "\n  - {name: B", "30000 m is out of range", false},
 	{"no power", `power: "5 W", `, ``, `transmits on this link, but radio "r" has no power`, false},

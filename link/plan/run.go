@@ -19,6 +19,8 @@ type Result struct {
 	Links []*link.Result
 	// Stations are the ends of the links, in the order of the plan, each once.
 	Stations []*link.Station
+	// Notes hold for the plan as a whole.
+	Notes []string
 }
 
 // Run computes all links of the plan, on all cores. done, if not nil, is called as links are
@@ -28,12 +30,12 @@ func (n *Network) Run(ctx context.Context, done func()) (*Result, error) {
 	r := &Result{Title: n.Title, Links: make([]*link.Result, len(n.Links))}
 	c := &checker{Plan: n.plan}
 	var mu sync.Mutex
-	work, ctx := errgroup.WithContext(ctx)
+	work, inner := errgroup.WithContext(ctx)
 	work.SetLimit(runtime.GOMAXPROCS(0))
 	for i, l := range n.Links {
 		work.Go(func() error {
-			if ctx.Err() != nil {
-				return ctx.Err()
+			if inner.Err() != nil {
+				return inner.Err()
 			}
 			result, err := n.Compute(l)
 			mu.Lock()
@@ -55,7 +57,7 @@ func (n *Network) Run(ctx context.Context, done func()) (*Result, error) {
 		return nil, c.errs.sorted()
 	}
 	r.Stations = n.ends()
-	return r, nil
+	return r, n.addInterference(ctx, r)
 }
 
 // Compute works out one link, of the plan or of the caller's own making between its stations.

@@ -5,6 +5,7 @@ import (
 
 	"fellreach/antenna"
 	"fellreach/link"
+	"fellreach/link/noise"
 	"fellreach/terrain/raster"
 )
 
@@ -38,6 +39,8 @@ func (n *Network) addStation(c *checker, designs map[string]antenna.Design, path
 	out := &link.Station{
 		Name: name, Order: siteIndex, At: n.places[siteIndex],
 		ClearingM:     float64(*s.Clearing),
+		Surroundings:  c.surroundings(fmt.Sprintf("sites[%d]", siteIndex), s),
+		Noise:         c.noise(siteIndex),
 		Radio:         c.resolveRadio(st.Radio),
 		Antenna:       designs[use.Use],
 		AntennaSource: c.source("antennas." + use.Use),
@@ -56,6 +59,36 @@ func (n *Network) addStation(c *checker, designs map[string]antenna.Design, path
 	}
 	c.feed(out, path, st)
 	n.Stations[name] = out
+}
+
+// noise returns what a site hears: its own statement, or the plan's.
+func (c *checker) noise(siteIndex int) link.Noise {
+	z, path := c.Noise, "noise"
+	if own := c.Sites[siteIndex].Noise; own != nil {
+		z, path = own, fmt.Sprintf("sites[%d].noise", siteIndex)
+	}
+	out := link.Noise{Environment: noise.Environment(z.Environment), Source: c.source(path)}
+	if _, stated := c.where[path]; !stated {
+		out.Source = "assumed"
+	}
+	if m := z.Measured; m != nil {
+		out.MeasuredDBm, out.MeasuredInHz = float64(m.Measured), float64(m.Bandwidth)
+	}
+	return out
+}
+
+func (c *checker) surroundings(path string, s Site) link.Surroundings {
+	if s.Surroundings == nil {
+		return link.Surroundings{}
+	}
+	out := link.Surroundings{Source: c.source(path + ".surroundings")}
+	switch around := s.Surroundings.Spec.(type) {
+	case *Woodland:
+		out.WoodlandM = float64(around.Depth)
+	case *Built:
+		out.BuiltM, out.StreetM = float64(around.Height), float64(around.Street)
+	}
+	return out
 }
 
 // mount returns how an antenna hangs: facing a bearing, a site, or north.

@@ -11,28 +11,38 @@ import (
 type linksJSON struct {
 	Title string     `json:"title"`
 	Links []linkJSON `json:"links"`
+	Notes []string   `json:"notes,omitempty"`
 }
 
 type linkJSON struct {
-	Name       string          `json:"name,omitempty"`
-	From       string          `json:"from"`
-	To         string          `json:"to"`
-	Channel    string          `json:"channel"`
-	DistanceKm float64         `json:"distance_km"`
-	AzimuthDeg float64         `json:"azimuth_deg"`
-	BackAzDeg  float64         `json:"back_azimuth_deg"`
-	Verdict    link.Verdict    `json:"verdict"`
-	MarginDB   float64         `json:"margin_db"`
-	Chance     float64         `json:"chance"`
-	Clearance  clearanceJSON   `json:"clearance"`
-	Warnings   []string        `json:"warnings"`
-	Directions []directionJSON `json:"directions"`
+	Name        string          `json:"name,omitempty"`
+	From        string          `json:"from"`
+	To          string          `json:"to"`
+	Channel     string          `json:"channel"`
+	DistanceKm  float64         `json:"distance_km"`
+	AzimuthDeg  float64         `json:"azimuth_deg"`
+	BackAzDeg   float64         `json:"back_azimuth_deg"`
+	Verdict     link.Verdict    `json:"verdict"`
+	MarginDB    float64         `json:"margin_db"`
+	Chance      float64         `json:"chance"`
+	Clearance   clearanceJSON   `json:"clearance"`
+	Sensitivity sensitivityJSON `json:"sensitivity"`
+	Warnings    []string        `json:"warnings"`
+	Directions  []directionJSON `json:"directions"`
 }
 
 type clearanceJSON struct {
 	WorstRatio  float64 `json:"worst_ratio"`
 	AtKm        float64 `json:"at_km"`
 	NeededRatio float64 `json:"needed_ratio"`
+}
+
+// sensitivityJSON is what small changes do to the link: margins in dB, the chance as a fraction.
+type sensitivityJSON struct {
+	FromMast1mDB float64 `json:"from_mast_1m_db"`
+	ToMast1mDB   float64 `json:"to_mast_1m_db"`
+	Ground4mDB   float64 `json:"ground_4m_higher_db"`
+	Chance1DB    float64 `json:"chance_of_1_db"`
 }
 
 type directionJSON struct {
@@ -59,7 +69,7 @@ type lineJSON struct {
 // LinksJSON writes the links of a plan with their budgets, in full precision. The chance is a
 // fraction of one.
 func LinksJSON(w io.Writer, r *plan.Result) error {
-	out := linksJSON{Title: r.Title, Links: make([]linkJSON, len(r.Links))}
+	out := linksJSON{Title: r.Title, Links: make([]linkJSON, len(r.Links)), Notes: r.Notes}
 	for i, l := range r.Links {
 		out.Links[i] = linkOf(l)
 	}
@@ -71,8 +81,9 @@ func linkOf(r *link.Result) linkJSON {
 		Name: r.Link.Name, From: r.Link.From.Name, To: r.Link.To.Name, Channel: r.Link.Channel.Name,
 		DistanceKm: r.Profile.LengthKm(), AzimuthDeg: r.Profile.AzDeg, BackAzDeg: r.Profile.BackAzDeg,
 		Verdict: r.Verdict, MarginDB: r.MarginDB, Chance: r.ChancePct / 100,
-		Clearance: clearanceJSON{r.Clearance.WorstRatio, r.Clearance.AtKm, r.Clearance.NeededRatio},
-		Warnings:  []string{},
+		Clearance:   clearanceJSON{r.Clearance.WorstRatio, r.Clearance.AtKm, r.Clearance.NeededRatio},
+		Sensitivity: sensitivityJSON{r.Sensitivity.FromMastDB, r.Sensitivity.ToMastDB, r.Sensitivity.RasterDB, r.Sensitivity.ChancePct / 100},
+		Warnings:    []string{},
 	}
 	for _, w := range r.Warnings {
 		out.Warnings = append(out.Warnings, w.String())

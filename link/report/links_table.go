@@ -31,7 +31,15 @@ func LinksTable(w io.Writer, r *plan.Result) error {
 	if _, err := fmt.Fprintf(w, "%s\n\n%s\n\n%s\n", r.Title, t.Render(), verdictCount(r.Links)); err != nil {
 		return err
 	}
-	return writeWarnings(w, r.Links)
+	if err := writeWarnings(w, r.Links); err != nil {
+		return err
+	}
+	for _, note := range r.Notes {
+		if _, err := fmt.Fprintf(w, "note: %s\n", note); err != nil {
+			return err
+		}
+	}
+	return nil
 }
 
 // pathWords says in words how freely a path runs.
@@ -87,9 +95,12 @@ func writeWarnings(w io.Writer, links []*link.Result) error {
 	return nil
 }
 
-// LinesTable writes the whole budget of every link, line by line.
+// LinesTable writes the whole budget of every link, line by line, and what small changes do to it.
 func LinesTable(w io.Writer, r *plan.Result) error {
 	for _, l := range r.Links {
+		if _, err := fmt.Fprintf(w, "\n%s %s: %s\n", l.Verdict.Mark(), l.Link.Title(), sensitivityWords(l)); err != nil {
+			return err
+		}
 		for _, b := range l.Directions {
 			t := newTable("line", "dB", "sum", "kind", "source")
 			sum := 0.0
@@ -106,6 +117,13 @@ func LinesTable(w io.Writer, r *plan.Result) error {
 		}
 	}
 	return nil
+}
+
+// sensitivityWords says what small changes do to a link.
+func sensitivityWords(l *link.Result) string {
+	s := l.Sensitivity
+	return fmt.Sprintf("1 m more mast at %s gives %s dB, at %s %s dB; ground 4 m higher between them %s dB; 1 dB more gives %s points of chance",
+		l.Link.From.Name, signed(s.FromMastDB, 2), l.Link.To.Name, signed(s.ToMastDB, 2), signed(s.RasterDB, 2), signed(s.ChancePct, 1))
 }
 
 // A plainTable is a table with a rule under its head and no frame: it stays legible in a terminal

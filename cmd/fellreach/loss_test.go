@@ -1,0 +1,90 @@
+package main
+
+import (
+	"math"
+	"strconv"
+	"strings"
+	"testing"
+)
+
+type lossAnswer struct {
+	LossDB   float64 `json:"loss_db"`
+	Method   string
+	Warnings []string
+	Terms    map[string]float64
+}
+
+func lossOf(t *testing.T, profile string, flags ...string) lossAnswer {
+	t.Helper()
+	path := write(t, t.TempDir(), "profile.csv", profile)
+	return decoded[lossAnswer](t, succeeds(t, exitDone, append([]string{"loss", path, "--latitude", "50", "--format", "json"}, flags...)...))
+}
+
+// Free space: Rec. ITU-R P.525, 20 log f + 20 log d + 32.4 with f in MHz and d in km; the constant
+// is rounded by up to 0.05 dB.
+func TestLossInFreeSpace(t *testing.T) {
+	for _, tc := range []struct {
+		frequency string
+		mhz, km   float64
+		profile   string
+	}{
+		{"151.5 MHz", 151.5, 2, smallProfile},
+		{"0.433 GHz", 433, 2, smallProfile},
+		{"6 GHz", 6000, 20, "d_km,h_m\n0,100\n10,500\n20,100\n"},
+	} {
+		got := lossOf(t, tc.profile, "--frequency", tc.frequency, "--method", "free-space")
+		near(t, tc.frequency, got.LossDB, 20*math.Log10(tc.mhz)+20*math.Log10(tc.km)+32.4, 0.06)
+		near(t, "Lbfs", got.Terms["Lbfs"], got.LossDB, 1e-12)
+		if got.Method != "free-space" {
+			t.Errorf("method %q", got.Method)
+		}
+	}
+}
+
+// A sharp ridge in the middle costs what one knife edge costs: J(nu) of Rec. ITU-R P.526, here
+// by its exact integral: nu = 2.0 gives 19.0 dB (P.526 figure of J(nu), read to 0.5 dB). The
+// method adds its own correction for the path's length (Rec. ITU-R P.526-15, section 4.5.2:
+// 10 + 0.02 d with 1 - exp(-J/6)) and little for the sphere.
+func TestLossOverRidge(t *testing.T) {
+	// nu = h sqrt(2 d / (lambda d1 d2)), d1 = d2 = 5 km, lambda 1.9788 m at 151.5 MHz; the bulge
+	// of 1.5 m (a = 8474 km) is part of h.
+	h := 2 / math.Sqrt(2*10/(1.9788e-3*5*5)) // km
+	ridge := "d_km,h_m\n0,0\n4.97,0\n5," + strconv.FormatFloat(h*1000+30-1.47, 'f', 3, 64) + "\n5.03,0\n10,0\n"
+	got := lossOf(t, ridge, "--frequency", "151.5 MHz", "--tx-height", "30 m", "--rx-height", "30 m", "--method", "p526")
+	j := 19.0
+	want := j + (1-math.Exp(-j/6))*(10+0.02*10)
+	near(t, "loss over free space", got.LossDB-got.Terms["Lbfs"], want, 1.5)
+}
+
+// The terms bear the Recommendation's symbols.
+func TestLossTerms(t *testing.T) {
+	got := lossOf(t, smallProfile, "--frequency", "151.5 MHz", "--method", "p526")
+	for _, symbol := range []string{"Lbfs", "Lbulla_k50", "Lbulls_k50", "Ldsph_k50", "Ld50", "theta", "theta_t", "theta_r", "dlt", "dlr", "ae", "hts", "hrs"} {
+		if _, ok := got.Terms[symbol]; !ok {
+			t.Errorf("no %s among %v", symbol, got.Terms)
+		}
+	}
+	near(t, "ae", got.Terms["ae"], 6371*157/(157-45.0), 0.5) // P.1812: a k, k = 157/(157 - delta N)
+	near(t, "hts", got.Terms["hts"], 110, 1e-9)
+	near(t, "hrs", got.Terms["hrs"], 120, 1e-9)
+}
+
+func TestLossTable(t *testing.T) {
+	path := write(t, t.TempDir(), "profile.csv", smallProfile)
+	text := succeeds(t, exitDone, "loss", path, "--frequency", "151.5 MHz", "--method", "p526", "--latitude", "50")
+	for _, want := range []string{"basic transmission loss", "dB by p526", "Lbfs", "mrad"} {
+		if !strings.Contains(text, want) {
+			t.Errorf("want %q in:\n%s", want, text)
+		}
+	}
+}
+
+// Polarization counts where the ground does: on a sea path beyond the horizon at low frequency.
+func TestLossKnowsPolarization(t *testing.T) {
+	sea := "d_km,h_m,zone\n0,0,1\n30,0,1\n60,0,1\n"
+	vertical := lossOf(t, sea, "--frequency", "30 MHz", "--method", "p526", "--polarization", "vertical")
+	horizontal := lossOf(t, sea, "--frequency", "30 MHz", "--method", "p526", "--polarization", "horizontal")
+	if !(horizontal.LossDB > vertical.LossDB+5) {
+		t.Errorf("vertical %.1f dB, horizontal %.1f dB", vertical.LossDB, horizontal.LossDB)
+	}
+}
