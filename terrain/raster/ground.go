@@ -26,12 +26,13 @@ type Spec struct {
 
 // A Ground is the terrain as a set of rasters tells it. Many goroutines may ask it at once. It
 // keeps at most 512 MB of cells in memory, whatever the size of the files, and GDAL at most 128 MB
-// of file blocks.
+// of file blocks; where the sea is near takes up to 8 MB.
 type Ground struct {
 	spec      Spec
 	stepM     float64
 	elevation []*file
-	cover     *file // nil where there is none
+	cover     *file  // nil where there is none
+	shore     *shore // nil where no class of it is sea
 	cache     *tileCache
 }
 
@@ -46,6 +47,7 @@ func Open(spec Spec) (*Ground, error) {
 		g.Close()
 		return nil, err
 	}
+	g.shore = newShore(g)
 	g.stepM = spec.StepM
 	if g.stepM == 0 {
 		g.stepM = g.defaultStepM()
@@ -147,4 +149,21 @@ func checkPlace(p orb.Point) error {
 		return fmt.Errorf("longitude %g, latitude %g is no place on Earth: allowed are -180 to 180 and -90 to 90 degrees", p.Lon(), p.Lat())
 	}
 	return nil
+}
+
+// CoverAt returns what stands at a place, with its height even where the elevation rasters hold
+// that already. known is false where there is no land cover. A class that the table lacks is a
+// [*terrain.ClassError]. The zone is the class's own, never coastal unless the table says so.
+func (g *Ground) CoverAt(at orb.Point) (class terrain.Class, known bool, err error) {
+	if err := checkPlace(at); err != nil {
+		return terrain.Class{}, false, err
+	}
+	if g.cover == nil {
+		return terrain.Class{}, false, nil
+	}
+	inCover := []orb.Point{at}
+	if err := g.cover.crs.forward(inCover); err != nil {
+		return terrain.Class{}, false, err
+	}
+	return g.class(&sampler{cache: g.cache, file: g.cover}, inCover[0], at)
 }

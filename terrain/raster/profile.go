@@ -21,6 +21,9 @@ const maxIntervals = 1_000_000
 // are bridged with a note; a longer one is a [*terrain.VoidError], a value that is no height a
 // [*terrain.HeightError], and a land-cover class that the table lacks a [*terrain.ClassError].
 // Places nearer to each other than 1 m are an error.
+//
+// Zones come from the land cover and from where the sea lies; land up to 100 m high within 50 km
+// of the sea is coastal, as [Ground.Coast] says in full.
 func (g *Ground) Profile(from, to orb.Point) (terrain.Profile, error) {
 	p, err := g.path(from, to)
 	if err != nil {
@@ -202,9 +205,9 @@ func (g *Ground) addCover(p *terrain.Profile, outside []bool) error {
 		}
 	}
 	if unknown > 0 {
-		p.Notes = append(p.Notes, fmt.Sprintf("land cover is unknown on %.0f %% of the path: taken as bare and inland there", math.Ceil(100*float64(unknown)/float64(len(at)))))
+		p.Notes = append(p.Notes, fmt.Sprintf("land cover is unknown on %.0f %% of the path: taken as bare land there", math.Ceil(100*float64(unknown)/float64(len(at)))))
 	}
-	return nil
+	return g.markCoast(p, at)
 }
 
 // class looks up what stands at a place, given in the cover raster's system too.
