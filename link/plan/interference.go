@@ -16,7 +16,8 @@ const maxUnwanted = 20000
 
 // addInterference warns of directions whose receiver hears transmitters of other links on its
 // frequency too well: wanted level (median) over unwanted (exceeded for 1 % of the time) below the
-// radio's capture value. Stations that talk with the receiver take turns and do not count.
+// radio's capture value. Stations that talk with either end of the direction are of one net with
+// it, take turns and do not count.
 func (n *Network) addInterference(ctx context.Context, r *Result) error {
 	partners, looked := n.partners(), 0
 	for _, l := range r.Links {
@@ -28,7 +29,7 @@ func (n *Network) addInterference(ctx context.Context, r *Result) error {
 			}
 			var loud []heard
 			for from := range n.transmitters(b.FreqHz, l.Link.Channel.BandwidthHz) {
-				if from == to || from.Order == to.Order || partners[to][from] {
+				if from == to || from.Order == to.Order || partners[to][from] || partners[n.Stations[b.From]][from] {
 					continue
 				}
 				if looked++; looked > maxUnwanted {
