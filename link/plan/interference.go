@@ -19,40 +19,54 @@ const maxUnwanted = 20000
 // radio's capture value. Stations that talk with either end of the direction are of one net with
 // it, take turns and do not count.
 func (n *Network) addInterference(ctx context.Context, r *Result) error {
-	partners, looked := n.partners(), 0
+	search := interference{Network: n, partners: n.partners()}
 	for _, l := range r.Links {
 		for i := range l.Directions {
+			if err := ctx.Err(); err != nil {
+				return err
+			}
 			b := &l.Directions[i]
-			to := n.Stations[b.To]
-			if to.Radio.Needs.CaptureDB == 0 {
-				continue
-			}
-			var loud []heard
-			for from := range n.transmitters(b.FreqHz, l.Link.Channel.BandwidthHz) {
-				if from == to || from.Order == to.Order || partners[to][from] || partners[n.Stations[b.From]][from] {
-					continue
-				}
-				if looked++; looked > maxUnwanted {
-					r.Notes = append(r.Notes, fmt.Sprintf("interference was looked at on the first %d unwanted paths only", maxUnwanted))
-					return nil
-				}
-				if err := ctx.Err(); err != nil {
-					return err
-				}
-				level, audible, err := n.unwantedDBm(l.Link.Channel, b, from, to)
-				if err != nil {
-					r.Notes = append(r.Notes, fmt.Sprintf("whether %s disturbs %s is not known: %v", from.Name, to.Name, err))
-				}
-				if err == nil && audible && b.ReceivedDBm-level < to.Radio.Needs.CaptureDB {
-					loud = append(loud, heard{from.Name, level})
-				}
-			}
-			if len(loud) > 0 {
-				l.Warnings = append(l.Warnings, link.Warning{At: to.Name, Text: interferenceText(b, loud, to.Radio.Needs.CaptureDB)})
+			if loud := search.loud(b, l.Link.Channel); len(loud) > 0 {
+				l.Warnings = append(l.Warnings, link.Warning{At: b.To, Text: interferenceText(b, loud, n.Stations[b.To].Radio.Needs.CaptureDB)})
 			}
 		}
 	}
+	r.Notes = append(r.Notes, search.notes...)
+	if search.looked > maxUnwanted {
+		r.Notes = append(r.Notes, fmt.Sprintf("interference was looked at on the first %d unwanted paths only", maxUnwanted))
+	}
 	return nil
+}
+
+// An interference is a search for unwanted paths on its way.
+type interference struct {
+	*Network
+	partners map[*link.Station]map[*link.Station]bool
+	looked   int
+	notes    []string
+}
+
+// loud lists the transmitters that disturb a direction.
+func (s *interference) loud(b *link.Budget, ch link.Channel) []heard {
+	wanted, to := s.Stations[b.From], s.Stations[b.To]
+	captureDB := to.Radio.Needs.CaptureDB
+	var list []heard
+	for from := range s.transmitters(b.FreqHz, ch.BandwidthHz) {
+		if captureDB == 0 || from.Order == to.Order || s.partners[to][from] || s.partners[wanted][from] {
+			continue
+		}
+		if s.looked++; s.looked > maxUnwanted {
+			return list
+		}
+		level, audible, err := s.unwantedDBm(ch, b, from, to)
+		switch {
+		case err != nil:
+			s.notes = append(s.notes, fmt.Sprintf("whether %s disturbs %s is not known: %v", from.Name, to.Name, err))
+		case audible && b.ReceivedDBm-level < captureDB:
+			list = append(list, heard{from.Name, level})
+		}
+	}
+	return list
 }
 
 // heard is an unwanted transmitter and its level at the receiver's port.
