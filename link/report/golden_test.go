@@ -5,6 +5,7 @@ import (
 	"encoding/json"
 	"errors"
 	"io"
+	"strconv"
 	"testing"
 
 	"fellreach/link/propagation"
@@ -41,7 +42,7 @@ var madeRasters = []raster.Info{
 		Summary:  &raster.Summary{Cells: 1200, Voids: 3, MinM: -0.04, MaxM: 812.5, MinAt: orb.Point{179.94, -16.815}, MaxAt: orb.Point{-179.95, -16.812}},
 		Warnings: []string{"a warning of the raster"},
 	},
-	{Path: "own.asc", Driver: "AAIGrid", Cols: 2, Rows: 2, Bands: 3, CRS: "a grid of its own", Scale: 1, UnitM: 1, Type: "Float32", Warnings: []string{}},
+	{Path: "own.asc", Driver: "AAIGrid", Cols: 2, Rows: 2, Bands: 3, CRS: "a grid of its own", Scale: 1, UnitM: 1, Type: "Float32", Datum: "none is stated", Warnings: []string{}},
 }
 
 func TestGolden(t *testing.T) {
@@ -86,7 +87,7 @@ func shortened(value any) any {
 			v[i] = shortened(v[i])
 		}
 	case float64:
-		return json.Number(decimals(v, 6))
+		return json.Number(strconv.FormatFloat(v, 'g', 9, 64))
 	}
 	return value
 }

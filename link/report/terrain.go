@@ -3,6 +3,8 @@ package report
 import (
 	"fmt"
 	"io"
+	"math"
+	"strings"
 
 	"fellreach/terrain"
 	"fellreach/terrain/raster"
@@ -17,21 +19,19 @@ func TerrainJSON(w io.Writer, files []raster.Info) error {
 
 // TerrainTable writes what rasters hold, for people.
 func TerrainTable(w io.Writer, files []raster.Info) error {
+	texts := make([]string, len(files))
 	for i, f := range files {
-		if i > 0 {
-			fmt.Fprintln(w)
-		}
-		if err := terrainText(w, f); err != nil {
-			return err
-		}
+		texts[i] = terrainText(f)
 	}
-	return nil
+	_, err := io.WriteString(w, strings.Join(texts, "\n"))
+	return err
 }
 
-func terrainText(w io.Writer, f raster.Info) error {
-	fmt.Fprintf(w, "%s (%s, %s, %s)\n", f.Path, f.Driver, counted(f.Bands, "band", "bands"), f.Type)
+func terrainText(f raster.Info) string {
+	var text strings.Builder
+	fmt.Fprintf(&text, "%s (%s, %s, %s)\n", f.Path, f.Driver, counted(f.Bands, "band", "bands"), f.Type)
 	row := func(name, format string, args ...any) {
-		fmt.Fprintf(w, "  %-9s "+format+"\n", append([]any{name}, args...)...)
+		fmt.Fprintf(&text, "  %-9s "+format+"\n", append([]any{name}, args...)...)
 	}
 	row("cells", "%d × %d, %s × %s m", f.Cols, f.Rows, decimals(f.CellXM, 1), decimals(f.CellYM, 1))
 	row("CRS", "%s", crsName(f))
@@ -43,10 +43,10 @@ func terrainText(w io.Writer, f raster.Info) error {
 		row("heights", "%s m at %s to %s m at %s", decimals(s.MinM, 1), terrain.FormatDecimal(s.MinAt), decimals(s.MaxM, 1), terrain.FormatDecimal(s.MaxAt))
 	}
 	row("datum", "%s", f.Datum)
-	for _, text := range f.Warnings {
-		row("warning", "%s", text)
+	for _, warning := range f.Warnings {
+		row("warning", "%s", warning)
 	}
-	return nil
+	return text.String()
 }
 
 func crsName(f raster.Info) string {
@@ -76,7 +76,11 @@ func valueWords(f raster.Info) string {
 // trimmed writes an edge in the unit of its CRS.
 func trimmed(x float64) string { return fmt.Sprintf("%.9g", x) }
 
+// degrees writes a longitude or a latitude; longitudes may count on beyond 180.
 func degrees(deg float64, positive, negative string) string {
+	if math.Abs(deg) > 180 {
+		deg = math.Remainder(deg, 360)
+	}
 	if deg < 0 {
 		return decimals(-deg, 4) + " " + negative
 	}
