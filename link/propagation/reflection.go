@@ -122,8 +122,12 @@ func (m *mirrors) footprint(x, groundM float64) (first, last int) {
 	root := math.Sqrt(max(0, b*b-4*c*h1*h1*d))
 	first, _ = slices.BinarySearch(m.DistKm, (b-root)/(2*c)/1000)
 	last, _ = slices.BinarySearch(m.DistKm, (b+root)/(2*c)/1000)
-	at, _ := slices.BinarySearch(m.DistKm, x)
-	return max(0, min(first, at-1)), min(len(m.DistKm)-1, max(last-1, at+1))
+	after, on := slices.BinarySearch(m.DistKm, x)
+	before := after
+	if !on {
+		before--
+	}
+	return max(0, min(first, before-1)), min(len(m.DistKm)-1, max(last-1, after+1))
 }
 
 // line fits a straight line to the bare ground from point first to last and returns its height at x
@@ -146,14 +150,16 @@ func (m *mirrors) reflection(r mirror) (Reflection, bool) {
 	}
 	h1, h2 := psi*1000*r.x, psi*(d-1000*r.x)
 	sea := m.Zone[m.nearest(r.x)] == terrain.Sea
+	direct, mirrored := math.Hypot(d, h1-h2), math.Hypot(d, h1+h2)
 	g := 4 * math.Pi * sigma * sin / m.lambda
 	strength := groundReflection(m.FreqHz, m.VerticalShare, sea, sin) *
 		math.Exp(-g*g/2) / // Ament
 		math.Sqrt(1+2*r.x*(m.d-r.x)/(m.ae*m.d*psi)) * // divergence
-		math.Hypot(d, h1-h2) / math.Hypot(d, h1+h2) // the longer way
+		direct / mirrored // the longer way
 	return Reflection{
 		AtKm: r.x, Sea: sea, NullDB: min(deepestNullDB, -20*math.Log10(1-strength)),
-		SpacingTxM: m.lambda * d / (2 * h2), SpacingRxM: m.lambda * d / (2 * h1),
+		SpacingTxM: m.lambda / ((h1+h2)/mirrored + (h2-h1)/direct), // lambda d/(2 h2) for flat rays
+		SpacingRxM: m.lambda / ((h1+h2)/mirrored + (h1-h2)/direct),
 	}, true
 }
 
