@@ -51,15 +51,14 @@ type Coast struct {
 	sheets []*blockSet // row by row
 }
 
-// Coast returns the coast within a bound of longitudes and latitudes, in degrees; west of 180 and
-// east of it the bound goes on beyond 180 or -180. It reads the land cover of the bound and up to
-// 50 km around, less where the shore is near, and keeps 1 KB for every 16 by 16 km. Where no
-// class of the land cover is sea it reads nothing. More than a million square kilometres are
-// refused.
+// Coast returns the coast within a bound of longitudes and latitudes, in degrees; a bound that
+// crosses the date line goes on beyond 180. It reads the land cover of the bound and up to 50 km
+// around, less where the shore is near, and keeps 1 KB for every 16 by 16 km. Where no class of
+// the land cover is sea it reads nothing. More than a million square kilometres are refused.
 //
 // Sea are the cells of a class that is, and, if the spec says that the sea lies beyond the
 // elevation rasters, all places outside those, on the cover raster or not. The 50 km hold to
-// within the diagonal of a block of cells: 0.7 km, or one cell where that is larger.
+// within the diagonal of a block of cells: about 0.7 km, or one cell's where that is larger.
 func (g *Ground) Coast(bound orb.Bound) (*Coast, error) {
 	s := g.shore
 	if s == nil {

@@ -277,6 +277,28 @@ func TestCoastBounds(t *testing.T) {
 	}
 }
 
+// A bound across the date line, on a raster across it: land on both sides of 180 degrees is near
+// the one cell of sea on it.
+func TestCoastAcrossTheDateLine(t *testing.T) {
+	path := writeOneSea(t, 480, 240, 240, 120, 4326, affine{179, 1.0 / 240, 0, 52.5, 0, -1.0 / 240})
+	g := open(t, Spec{Elevation: []string{utmPlane().write(t, "plane.tif")}, Cover: path, Classes: coastClasses})
+	c, err := g.Coast(orb.Bound{Min: orb.Point{179.2, 51.6}, Max: orb.Point{180.8, 52.4}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, tc := range []struct {
+		lon  float64
+		want terrain.Zone
+	}{ // half a degree of longitude at 52 N is 34.3 km, 0.78 are 53.5 km
+		{179.22, terrain.Inland}, {179.5, terrain.Coastal}, {-179.5, terrain.Coastal}, {-179.22, terrain.Inland},
+	} {
+		col, row := g.cover.cell(orb.Point{tc.lon, 52})
+		if got := c.Zone(terrain.Inland, 5, col, row); got != tc.want {
+			t.Errorf("%g E: zone %d, want %d", tc.lon, got, tc.want)
+		}
+	}
+}
+
 // Many goroutines from the first touch on: each gets the zones of one alone. Run with -race.
 func TestCoastConcurrent(t *testing.T) {
 	spec := seaWest(t, 450000, flat(60))

@@ -1,9 +1,11 @@
 package raster
 
 import (
+	"fmt"
 	"math"
 	"slices"
 
+	"github.com/lukeroth/gdal"
 	"github.com/paulmach/orb"
 
 	"fellreach/terrain"
@@ -13,9 +15,9 @@ import (
 // goes on beyond the raster.
 type shore struct {
 	cover                *file
-	classes              []float32 // those of the raster that are sea
-	openSea              []*file   // outside all of these lies the sea; empty where it does not
-	blockCols, blockRows int       // cells of a block
+	classes              []int32 // those of the raster that are sea
+	openSea              []*file // outside all of these lies the sea; empty where it does not
+	blockCols, blockRows int     // cells of a block
 
 	sea  *sheetTable[seaSheet]
 	near *sheetTable[blockSet]
@@ -29,8 +31,8 @@ func newShore(g *Ground) *shore {
 	}
 	s := &shore{cover: g.cover}
 	for value, class := range g.spec.Classes {
-		if class.Zone == terrain.Sea {
-			s.classes = append(s.classes, float32(value))
+		if class.Zone == terrain.Sea && value > noClass && value <= math.MaxInt32 && !g.cover.values.isVoid(float64(value)) {
+			s.classes = append(s.classes, int32(value))
 		}
 	}
 	if s.classes == nil {
@@ -91,21 +93,48 @@ func (s *shore) markClasses(key sheetKey, sea *blockSet) error {
 	}
 	width := w.lastCol - w.firstCol
 	step := max(1, windowCells/width)
-	for row := w.firstRow; row < w.lastRow; row += step {
-		grid, err := s.cover.read(w.firstCol, row, width, min(step, w.lastRow-row))
+	for row := w.firstRow; row < w.lastRow; {
+		cells, err := s.cover.readClasses(w.firstCol, row, width, min(step, w.lastRow-row))
 		if err != nil {
 			return err
 		}
-		for r := range grid.Rows {
-			blocks := &sea[(row+r)/s.blockRows-key.row*sheetBlocks]
-			s.markRow(grid.Cells[r*width:(r+1)*width], blocks)
+		for line := range slices.Chunk(cells, width) {
+			s.markRow(line, &sea[row/s.blockRows-key.row*sheetBlocks])
+			row++
 		}
 	}
 	return nil
 }
 
+// noClass stands for a cell that is masked out.
+const noClass = math.MinInt32
+
+// readClasses reads a window of cells as they are stored, several times quicker than read does.
+// The nodata number stands as it is.
+func (f *file) readClasses(col, row, cols, rows int) ([]int32, error) {
+	cells := make([]int32, cols*rows)
+	err := f.with(func(dataset gdal.Dataset) error {
+		band := dataset.RasterBand(1)
+		if err := band.IO(gdal.Read, col, row, cols, rows, cells, cols, rows, 0, 0); err != nil || !f.values.masked {
+			return err
+		}
+		mask := make([]uint8, len(cells))
+		err := band.GetMaskBand().IO(gdal.Read, col, row, cols, rows, mask, cols, rows, 0, 0)
+		for i, m := range mask {
+			if m == 0 {
+				cells[i] = noClass
+			}
+		}
+		return err
+	})
+	if err != nil {
+		return nil, fmt.Errorf("%s: reading the cells from column %d, row %d on: %w", f.info.Path, col, row, err)
+	}
+	return cells, nil
+}
+
 // markRow marks the blocks of which a row of cells holds sea. The first cell begins a block.
-func (s *shore) markRow(cells []float32, blocks *[sheetBlocks]bool) {
+func (s *shore) markRow(cells []int32, blocks *[sheetBlocks]bool) {
 	block := 0
 	for run := range slices.Chunk(cells, s.blockCols) {
 		blocks[block] = blocks[block] || slices.ContainsFunc(run, s.isSea)
@@ -113,7 +142,7 @@ func (s *shore) markRow(cells []float32, blocks *[sheetBlocks]bool) {
 	}
 }
 
-func (s *shore) isSea(class float32) bool { return slices.Contains(s.classes, class) }
+func (s *shore) isSea(class int32) bool { return slices.Contains(s.classes, class) }
 
 // markOpenSea marks the blocks whose middle lies outside all elevation rasters, where the sea is
 // there.

@@ -4,8 +4,9 @@ import "sync"
 
 // The nearness of the sea is worked out in blocks of cells, and blocks are kept by the sheet.
 const (
-	// blockM is the side of a block, at most, unless one cell is larger. Places are told apart no
-	// finer, so that it is the tolerance of the coast's 50 km: about a block's diagonal, 0.7 km.
+	// blockM is the greatest side of a block at the middle of the raster, unless one cell is
+	// larger. Places are told apart no finer, so that the coast's 50 km are good to about a block's
+	// diagonal, 0.7 km.
 	blockM = 500
 
 	// sheetBlocks is the side of a sheet in blocks: about 16 km.
