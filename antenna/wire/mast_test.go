@@ -4,6 +4,8 @@ import (
 	"math"
 	"math/cmplx"
 	"testing"
+
+	"fellreach/antenna"
 )
 
 // besideMast returns a dipole of 0.47 wl, radius 0.003 wl, beside a mast.
@@ -75,14 +77,128 @@ func besideCylinderDBi(spacingM, radiusM float64, azRad []float64) []float64 {
 	return gains
 }
 
-func TestCageAgainstCylinderSeries(t *testing.T) {
+// The cage and the single wire against the series, from a pole to a tower of two wavelengths.
+// Tolerances: away and beside, half a decibel covers the cut of the mast and the dipole's real
+// current; in the shadow 1 dB down to -20 dBi.
+func TestMastAgainstCylinderSeries(t *testing.T) {
 	for _, tc := range []struct{ spacingM, radiusM float64 }{
-		{0.25, 0.01}, {0.25, 0.03}, {0.25, 0.05}, {0.4, 0.08}, {0.35, 0.12},
-		{0.5, 0.15}, {0.5, 0.2}, {0.6, 0.25}, {0.6, 0.3}, {0.75, 0.3}, {1, 0.2},
+		{0.25, 0.01}, {0.5, 0.02}, {0.25, 0.03}, {0.25, 0.05}, {0.4, 0.08}, {0.35, 0.12},
+		{0.5, 0.2}, {0.7, 0.38}, {0.75, 0.45}, {0.95, 0.61}, {1.1, 0.8}, {1.3, 1},
 	} {
-		_, r := excited(t, besideMast(tc.spacingM, tc.radiusM, 0, 4.5))
-		want := besideCylinderDBi(tc.spacingM, tc.radiusM, []float64{0, math.Pi / 4, math.Pi / 2, 3 * math.Pi / 4, math.Pi})
-		got := []float64{r.gainDBi(vec{1, 0, 0}), r.gainDBi(vec{1, 1, 0}), r.gainDBi(vec{0, 1, 0}), r.gainDBi(vec{-1, 1, 0}), r.gainDBi(vec{-1, 0, 0})}
-		t.Logf("%v: got %.2f want %.2f", tc, got, want)
+		_, r := excited(t, besideMast(tc.spacingM, tc.radiusM, 0, 5))
+		want := besideCylinderDBi(tc.spacingM, tc.radiusM, []float64{0, math.Pi / 4, math.Pi / 2, math.Pi})
+		for i, to := range []vec{{1, 0, 0}, {1, 1, 0}, {0, 1, 0}, {-1, 0, 0}} {
+			tolerance, what := 0.25, "gain at 0.5 wl"
+			if i == 3 {
+				tolerance, what = 1, "gain in the shadow"
+				if want[i] < -21 {
+					continue // a minimum too deep to compare
+				}
+			}
+			near(t, what+" of "+format(tc.radiusM)+" wl at "+format(tc.spacingM)+" wl, towards "+format(to[0]), r.gainDBi(to), want[i], tolerance)
+		}
+	}
+}
+
+// Source: the same wires solved without regard to the symmetry of the cage or to the border: one
+// matrix of all. Tolerance: rounding.
+func TestCageIsItsWires(t *testing.T) {
+	for _, radiusM := range []float64{0.01, 0.04, 0.1} {
+		s := besideMast(0.3, radiusM, 0.1, 1.2)
+		p, err := s.prepare(testHz, 0)
+		if err != nil {
+			t.Fatal(err)
+		}
+		plain := Structure{Wires: s.Wires, Feeds: s.Feeds}
+		for _, r := range p.mast.runs {
+			plain.Wires = append(plain.Wires, Wire{From: r.start, To: r.place(r.count), DiameterM: 2 * r.radiusM, Material: antenna.Ideal, Segments: r.count})
+		}
+		n, r := excited(t, s)
+		m, q := excited(t, plain)
+		if d := cmplx.Abs(n.TogetherOhm() - m.TogetherOhm()); d > 1e-6 {
+			t.Errorf("mast of radius %g wl: %.6f ohm, as %d plain wires %.6f", radiusM, n.TogetherOhm(), len(plain.Wires)-1, m.TogetherOhm())
+		}
+		for _, to := range []vec{{1, 0, 0}, {-1, 0.3, 0.2}, {0, 1, 1}} {
+			near(t, "gain beside a cage", r.gainDBi(to), q.gainDBi(to), 1e-6)
+		}
+		if n.Segments != m.Segments {
+			t.Errorf("%d segments, as plain wires %d", n.Segments, m.Segments)
+		}
+	}
+}
+
+// A mast that is far away changes nothing: 1 % of the impedance at 20 wl.
+func TestFarMast(t *testing.T) {
+	s := besideMast(20, 0.05, 0, 5)
+	z, free := network(t, s).TogetherOhm(), dipoleImpedanceOhm(t, 0.47, 0.003, 0.5)
+	if cmplx.Abs(z-free) > 0.01*cmplx.Abs(free) {
+		t.Errorf("20 wl from a mast %.3f ohm, in the clear %.3f", z, free)
+	}
+}
+
+// The same antenna, rolled on its mast: solved in its own frame with the mast leaning, seen through
+// the mount, and solved in the frame of the site. Source: both are one structure.
+func TestRolledAntennaOnUprightMast(t *testing.T) {
+	spec := YagiSpec{DiameterM: 0.01, Material: antenna.Ideal, Elements: []Element{
+		{Length: antenna.Length{M: 0.5}, At: antenna.Length{M: -0.2}}, {Length: antenna.Length{M: 0.46}, Driven: true}, {Length: antenna.Length{M: 0.44}, At: antenna.Length{M: 0.15}}}}
+	a, err := Yagi(spec)
+	built(t, a, err)
+	for _, rollDeg := range []float64{0, 35, 90} {
+		in := installed(antenna.Setting{FreqHz: testHz, MastDiameterM: 0.06, StandoffM: 0.4})
+		in.RollDeg, in.MastAboveM = rollDeg, 0.7
+		got, err := a.SolveInstalled(in)
+		if err != nil {
+			t.Fatal(err)
+		}
+		in, _ = in.checked()
+		c, err := a.cut(in)
+		if err != nil {
+			t.Fatal(err)
+		}
+		// Clockwise seen from behind turns up to the right, from z to -y.
+		site := Structure{Wires: c.structure.Wires, Feeds: c.structure.Feeds}.turned(vec{1, 0, 0}, rollDeg*math.Pi/180, vec{})
+		upright := in
+		upright.RollDeg = 0
+		site.Mast = upright.mast(layout{wires: site.Wires})
+		n, r := excited(t, site)
+		if cmplx.Abs(n.TogetherOhm()-got.ImpedanceOhm) > 1e-6*cmplx.Abs(got.ImpedanceOhm) {
+			t.Errorf("rolled by %g: %.5f ohm, at the site %.5f", rollDeg, got.ImpedanceOhm, n.TogetherOhm())
+		}
+		for _, d := range []antenna.Direction{{AzDeg: 20, ElDeg: 5}, {AzDeg: 100, ElDeg: -30}, {AzDeg: 250, ElDeg: 60}} {
+			f, want := (antenna.Mount{RollDeg: rollDeg}).Field(got.Pattern, d), r.Field(d)
+			if turned := f.Theta*cmplx.Conj(f.Phi) - want.Theta*cmplx.Conj(want.Phi); cmplx.Abs(turned) > 2e-3 {
+				t.Errorf("rolled by %g, towards %v: %v and at the site %v are polarized differently", rollDeg, d, f, want)
+			}
+			near(t, "rolled gain", f.GainDBi(), want.GainDBi(), 0.01)
+		}
+	}
+}
+
+// The extent of the mast, as its rule has it.
+func TestMastOfAnInstallation(t *testing.T) {
+	rod := layout{wires: []Wire{upright(0.5, 0.001)}, boomMiddleM: 0.1}
+	in := installed(antenna.Setting{FreqHz: testHz, DesignHz: testHz, MastDiameterM: 0.05})
+	for _, tc := range []struct {
+		standoffM, aboveM float64
+		from, to          vec
+	}{
+		{0, math.Inf(1), vec{0.1, 0, -1}, vec{0.1, 0, -0.5}},
+		{0.3, math.Inf(1), vec{-0.3, 0, -2.5}, vec{-0.3, 0, 2.5}},
+		{0.3, 0, vec{-0.3, 0, -3}, vec{-0.3, 0, 0}},
+		{0.3, -0.4, vec{-0.3, 0, -2.4}, vec{-0.3, 0, -0.4}},
+		{0.3, 2.3, vec{-0.3, 0, -2.7}, vec{-0.3, 0, 2.3}},
+	} {
+		in.StandoffM, in.MastAboveM = tc.standoffM, tc.aboveM
+		m := in.mast(rod)
+		whole := m.lengthM() * 1.0000001
+		if tc.standoffM > 0 && whole-math.Floor(whole) > 1e-5 {
+			t.Errorf("%+v: mast of %g wl, want whole wavelengths", tc, m.lengthM())
+		}
+		if vec(m.To).apart(tc.to) > 0.26 || vec(m.From).apart(tc.from) > 1 {
+			t.Errorf("%+v: mast from %v to %v", tc, m.From, m.To)
+		}
+	}
+	if in.MastDiameterM = 0; in.mast(rod).exists() {
+		t.Error("a mast without a diameter")
 	}
 }
