@@ -2,23 +2,12 @@ package raster
 
 import (
 	"fmt"
-	"math"
+	"slices"
 
 	"github.com/paulmach/orb"
 
 	"fellreach/terrain"
 )
-
-// maxCoastalAslM is the greatest height of coastal land.
-const maxCoastalAslM = 100
-
-// mayBeCoastal says whether land would be coastal if the sea were near.
-//
-// Coastal land is that up to 100 m above the sea and within 50 km of the nearest sea, in any
-// direction: Rec. ITU-R P.1812, the table of radio-climatic zones (from memory).
-func mayBeCoastal(zone terrain.Zone, aslM float64) bool {
-	return zone == terrain.Inland && aslM <= maxCoastalAslM
-}
 
 // markCoast makes the low land of a profile coastal where the sea is near; at holds its points in
 // the cover raster's system.
@@ -28,7 +17,7 @@ func (g *Ground) markCoast(p *terrain.Profile, at []orb.Point) error {
 	}
 	s := nearSampler{shore: g.shore}
 	for i, zone := range p.Zone {
-		if !mayBeCoastal(zone, p.AslM[i]) {
+		if !zone.IsCoastalNearSea(p.AslM[i]) {
 			continue
 		}
 		near, err := s.at(g.cover.cell(at[i]))
@@ -42,95 +31,76 @@ func (g *Ground) markCoast(p *terrain.Profile, at []orb.Point) error {
 	return nil
 }
 
-// A Coast tells coastal land from inland within a bound. It is made once, by [Ground.Coast], and
-// then asked from memory alone; many goroutines may ask it.
-type Coast struct {
-	shore  *shore // nil where there is no coast
-	first  sheetKey
-	cols   int
-	sheets []*blockSet // row by row
-}
-
-// Coast returns the coast within a bound of longitudes and latitudes, in degrees; a bound that
-// crosses the date line goes on beyond 180. It reads the land cover of the bound and up to 50 km
-// around, less where the shore is near, and keeps 1 KB for every 16 by 16 km. Where no class of
-// the land cover is sea it reads nothing. More than a million square kilometres are refused.
+// Coast returns where the sea is near in the smallest rectangle of the cover raster's grid that
+// holds all of the places, and some kilometres around; the places may lie beyond the raster. It
+// reads the land cover of the rectangle and up to 50 km around, less where the shore is near, and
+// keeps 1 KB for every 16 by 16 km. Where no class of the land cover is sea it reads nothing and
+// the coast is the zero value. More than a million square kilometres are refused.
 //
 // Sea are the cells of a class that is, and, if the spec says that the sea lies beyond the
 // elevation rasters, all places outside those, on the cover raster or not. The 50 km hold to
 // within the diagonal of a block of cells: about 0.7 km, or one cell's where that is larger.
-func (g *Ground) Coast(bound orb.Bound) (*Coast, error) {
+func (g *Ground) Coast(places []orb.Point) (*terrain.Coast, error) {
 	s := g.shore
 	if s == nil {
-		return &Coast{}, nil
+		return &terrain.Coast{}, nil
 	}
-	first, last, err := s.sheetsOf(bound)
+	first, last, err := s.sheetsOf(places)
 	if err != nil {
 		return nil, err
 	}
-	c := &Coast{shore: s, first: first, cols: last.col - first.col + 1}
-	if rows := last.row - first.row + 1; c.cols > maxSheets || rows > maxSheets || c.cols*rows > maxSheets {
+	cols, rows := last.col-first.col+1, last.row-first.row+1
+	if cols > maxSheets || rows > maxSheets || cols*rows > maxSheets {
 		return nil, fmt.Errorf("%s: the coast of %d by %d km is asked for, more than a million square kilometres: take a smaller area",
-			g.cover.info.Path, c.cols*sheetBlocks*blockM/1000, rows*sheetBlocks*blockM/1000)
+			g.cover.info.Path, cols*sheetBlocks*blockM/1000, rows*sheetBlocks*blockM/1000)
 	}
-	for row := first.row; row <= last.row; row++ {
-		for col := first.col; col <= last.col; col++ {
-			near, err := s.near.get(sheetKey{col, row})
-			if err != nil {
-				return nil, err
-			}
-			c.sheets = append(c.sheets, near)
+	c := &terrain.Coast{
+		FirstCol: first.col * sheetBlocks * s.blockCols, FirstRow: first.row * sheetBlocks * s.blockRows,
+		BlockCols: s.blockCols, BlockRows: s.blockRows,
+		Cols: cols * sheetBlocks, Rows: rows * sheetBlocks,
+	}
+	for sheetRow := first.row; sheetRow <= last.row; sheetRow++ {
+		if err := s.appendNear(c, sheetRow, first.col, last.col); err != nil {
+			return nil, err
 		}
 	}
 	return c, nil
 }
 
-// sheetsOf returns the first and the last sheet, both ways, of a bound of longitudes and latitudes
-// and one block around.
-func (s *shore) sheetsOf(bound orb.Bound) (first, last sheetKey, err error) {
-	var edge []orb.Point
-	for i := range edgePoints + 1 {
-		t := float64(i) / edgePoints
-		lon := bound.Left() + t*(bound.Right()-bound.Left())
-		lat := bound.Bottom() + t*(bound.Top()-bound.Bottom())
-		edge = append(edge, orb.Point{lon, bound.Bottom()}, orb.Point{lon, bound.Top()}, orb.Point{bound.Left(), lat}, orb.Point{bound.Right(), lat})
-	}
-	if err := s.cover.crs.forward(edge); err != nil {
-		return first, last, err
-	}
-	blocks := orb.Bound{Min: orb.Point{math.Inf(1), math.Inf(1)}, Max: orb.Point{math.Inf(-1), math.Inf(-1)}}
-	for _, p := range edge {
-		col, row, ok := s.block(s.cover.cell(p))
-		if !ok {
-			return first, last, fmt.Errorf("%s: its reference system cannot hold all of longitude %g to %g, latitude %g to %g",
-				s.cover.info.Path, bound.Left(), bound.Right(), bound.Bottom(), bound.Top())
+// appendNear adds a row of sheets to a coast.
+func (s *shore) appendNear(c *terrain.Coast, sheetRow, firstCol, lastCol int) error {
+	var sheets []*blockSet
+	for sheetCol := firstCol; sheetCol <= lastCol; sheetCol++ {
+		near, err := s.near.get(sheetKey{sheetCol, sheetRow})
+		if err != nil {
+			return err
 		}
-		blocks = blocks.Extend(orb.Point{float64(col), float64(row)})
+		sheets = append(sheets, near)
 	}
-	first, _, _ = sheetOf(int(blocks.Left())-1, int(blocks.Bottom())-1)
-	last, _, _ = sheetOf(int(blocks.Right())+1, int(blocks.Top())+1)
-	return first, last, nil
+	for row := range sheetBlocks {
+		for _, near := range sheets {
+			c.Near = append(c.Near, near[row][:]...)
+		}
+	}
+	return nil
 }
 
-// Zone returns the zone of a place: coastal where its cover is inland, its ground, aslM metres
-// above sea level, is low, and the sea is near; else the zone of its cover, as it is given. The
-// place is stated in the cover raster's cell-centre coordinates, which may lie beyond its edge.
-// Zone panics for a place outside the bound that the coast was made for.
-func (c *Coast) Zone(cover terrain.Zone, aslM, col, row float64) terrain.Zone {
-	if c.shore == nil || !mayBeCoastal(cover, aslM) {
-		return cover
+// sheetsOf returns the first and the last sheet, both ways, of places and one block around them.
+func (s *shore) sheetsOf(places []orb.Point) (first, last sheetKey, err error) {
+	at := slices.Clone(places)
+	if err := s.cover.crs.forward(at); err != nil {
+		return first, last, err
 	}
-	blockCol, blockRow, ok := c.shore.block(col, row)
-	if !ok {
-		return cover
+	blocks := make(orb.MultiPoint, len(at))
+	for i, p := range at {
+		col, row, ok := s.block(s.cover.cell(p))
+		if !ok {
+			return first, last, fmt.Errorf("%s: its reference system cannot hold %s", s.cover.info.Path, terrain.FormatDecimal(places[i]))
+		}
+		blocks[i] = orb.Point{float64(col), float64(row)}
 	}
-	key, blockCol, blockRow := sheetOf(blockCol, blockRow)
-	sheetCol, sheetRow := key.col-c.first.col, key.row-c.first.row
-	if sheetCol < 0 || sheetCol >= c.cols || sheetRow < 0 || sheetRow >= len(c.sheets)/c.cols {
-		panic(fmt.Sprintf("raster: column %g, row %g of the land cover is outside the bound of its coast", col, row))
-	}
-	if c.sheets[sheetRow*c.cols+sheetCol][blockRow][blockCol] {
-		return terrain.Coastal
-	}
-	return cover
+	bound := blocks.Bound().Pad(1)
+	first, _, _ = sheetOf(int(bound.Left()), int(bound.Bottom()))
+	last, _, _ = sheetOf(int(bound.Right()), int(bound.Top()))
+	return first, last, nil
 }

@@ -3,6 +3,8 @@ package raster
 import (
 	"testing"
 
+	"github.com/paulmach/orb"
+
 	"fellreach/terrain"
 )
 
@@ -59,8 +61,7 @@ func BenchmarkCoastCold(b *testing.B) {
 // A coast asked for a place, as a sweep does for every cell.
 func BenchmarkCoastZone(b *testing.B) {
 	g := open(b, coastGround(b, coastClasses))
-	bound := utm(b, 433000, 5270000).Bound().Extend(utm(b, 472000, 5279000))
-	c, err := g.Coast(bound)
+	c, err := g.Coast([]orb.Point{utm(b, 433000, 5270000), utm(b, 472000, 5279000)})
 	if err != nil {
 		b.Fatal(err)
 	}

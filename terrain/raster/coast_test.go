@@ -142,7 +142,7 @@ func TestNoSeaNothingRead(t *testing.T) {
 	bare.Cover = ""
 	for _, spec := range []Spec{spec, bare} {
 		g := open(t, spec)
-		c, err := g.Coast(orb.Bound{Min: orb.Point{-180, -90}, Max: orb.Point{180, 90}})
+		c, err := g.Coast([]orb.Point{{-180, -90}, {180, 90}})
 		if g.shore != nil || err != nil {
 			t.Errorf("a shore, or %v", err)
 		}
@@ -224,14 +224,14 @@ func TestHallinsCoast(t *testing.T) {
 	}
 }
 
-// A coast gives the zones that profiles have, everywhere in its bound.
+// A coast gives the zones that profiles have.
 func TestCoastAgreesWithProfiles(t *testing.T) {
 	g := open(t, seaWest(t, 450000, func(x float64) float64 { return 60 + 50*math.Sin(x/3000) }))
 	p, err := g.Profile(utm(t, 445000, 5247000), utm(t, 595000, 5265000))
 	if err != nil {
 		t.Fatal(err)
 	}
-	c, err := g.Coast(orb.MultiPoint(p.Points).Bound())
+	c, err := g.Coast(p.Points)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -251,38 +251,44 @@ func TestCoastAgreesWithProfiles(t *testing.T) {
 	}
 }
 
-func TestCoastBounds(t *testing.T) {
+// A coast covers its places and one block around; too many kilometres are refused, and so is what
+// is no place.
+func TestCoastRectangle(t *testing.T) {
 	g := open(t, seaWest(t, 450000, flat(60)))
-	c, err := g.Coast(orb.Bound{Min: utm(t, 500000, 5250000), Max: utm(t, 501000, 5251000)})
+	c, err := g.Coast([]orb.Point{utm(t, 490000, 5250000), utm(t, 530000, 5257000)})
 	if err != nil {
 		t.Fatal(err)
 	}
-	if got := c.Zone(terrain.Inland, 5, math.NaN(), 0); got != terrain.Inland {
-		t.Errorf("no position has zone %d", got)
-	}
-	func() {
-		defer func() {
-			if text, ok := recover().(string); !ok || !strings.HasPrefix(text, "raster: column 1500") {
-				t.Errorf("far outside the bound: %v", text)
+	for _, e := range []float64{489600, 530400} {
+		for _, n := range []float64{5249600, 5257400} {
+			want := terrain.Coastal
+			if e > 500000 {
+				want = terrain.Inland
 			}
-		}()
-		c.Zone(terrain.Inland, 5, 1500, 100)
-	}()
-	_, err = g.Coast(orb.Bound{Min: orb.Point{-40, 30}, Max: orb.Point{0, 60}})
-	if err == nil || !strings.Contains(err.Error(), "smaller area") {
-		t.Errorf("a continent: %v", err)
+			if got := c.Zone(terrain.Inland, 5, (e-440000)/100-0.5, (5266000-n)/100-0.5); got != want {
+				t.Errorf("%g, %g: zone %d, want %d", e, n, got, want)
+			}
+		}
 	}
-	if _, err = g.Coast(orb.Bound{Min: orb.Point{math.NaN(), 30}, Max: orb.Point{0, 60}}); err == nil {
-		t.Error("a bound of NaN passes")
+	for _, tc := range []struct {
+		places []orb.Point
+		want   string
+	}{
+		{[]orb.Point{{-40, 30}, {0, 60}}, "smaller area"},
+		{[]orb.Point{{math.NaN(), 30}}, "cannot hold"},
+	} {
+		if _, err = g.Coast(tc.places); err == nil || !strings.Contains(err.Error(), tc.want) {
+			t.Errorf("%v: %v, want %q", tc.places, err, tc.want)
+		}
 	}
 }
 
-// A bound across the date line, on a raster across it: land on both sides of 180 degrees is near
-// the one cell of sea on it.
+// On a raster across the date line, land on both sides of 180 degrees is near the one cell of sea
+// on it.
 func TestCoastAcrossTheDateLine(t *testing.T) {
 	path := writeOneSea(t, 480, 240, 240, 120, 4326, affine{179, 1.0 / 240, 0, 52.5, 0, -1.0 / 240})
 	g := open(t, Spec{Elevation: []string{utmPlane().write(t, "plane.tif")}, Cover: path, Classes: coastClasses})
-	c, err := g.Coast(orb.Bound{Min: orb.Point{179.2, 51.6}, Max: orb.Point{180.8, 52.4}})
+	c, err := g.Coast([]orb.Point{{179.2, 51.6}, {-179.2, 52.4}})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -315,7 +321,7 @@ func TestCoastConcurrent(t *testing.T) {
 			if err != nil || !slices.Equal(got.Zone, want.Zone) {
 				t.Errorf("%v, or other zones", err)
 			}
-			if _, err := g.Coast(orb.MultiPoint(want.Points).Bound()); err != nil {
+			if _, err := g.Coast(want.Points); err != nil {
 				t.Error(err)
 			}
 		})

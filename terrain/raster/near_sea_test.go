@@ -217,14 +217,14 @@ func TestHugeCover(t *testing.T) {
 		maxSheets int
 	}{
 		{"all land", terrain.Inland, 100}, // sheets of 15 km: 10 by 10 around two
-		{"all sea", terrain.Sea, 12},      // the sheets that the bound is on
+		{"all sea", terrain.Sea, 12},      // the sheets that the places are on
 	} {
 		spec.Classes = map[int]terrain.Class{0: {Zone: tc.zone}, seaClass: {Zone: terrain.Sea}}
 		g := open(t, spec)
 		if n := len(g.shore.sea.sheets); n != 0 {
 			t.Errorf("%s: opening reads %d sheets", tc.name, n)
 		}
-		c, err := g.Coast(orb.MultiPoint{from, to}.Bound())
+		c, err := g.Coast([]orb.Point{from, to})
 		if err != nil {
 			t.Fatal(err)
 		}
