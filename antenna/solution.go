@@ -22,6 +22,12 @@ type Setting struct {
 	// MastDiameterM is the diameter of the mast beside or below the antenna, StandoffM the
 	// distance between their axes. Zero standoff is an antenna on top of its mast.
 	MastDiameterM, StandoffM float64
+	// MastAboveM is how far a mast beside the antenna goes on above its feed (a stack's centre),
+	// in metres: infinity if it goes on and on. It says nothing where there is no standoff.
+	MastAboveM float64
+	// RollDeg is how far the mount rolls the antenna about its facing (see [Mount]); the mast
+	// stands upright all the same.
+	RollDeg float64
 }
 
 // The frequencies a Setting may have: beyond them no method of this program speaks.

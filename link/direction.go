@@ -29,6 +29,7 @@ func (w *way) budget(from, to *Station, freqHz float64) (Budget, error) {
 	b.DepartureDeg, b.ArrivalDeg = out.ElDeg, in.ElDeg
 	sent, caught := tx.field(out), rx.field(in)
 	share := verticalShare(sent, caught)
+	w.verticalShare = share
 
 	b.add(PowerLine, from.Name+": transmitter "+from.Radio.Name, from.Radio.PowerDBm, from.Radio.PowerSource)
 	tx.lines(&b, out, true)

@@ -21,7 +21,7 @@ type frontEnd struct {
 func (s *Station) frontEnd(freqHz float64, c Channel) (frontEnd, error) {
 	f := frontEnd{Station: s}
 	for i, hz := range [...]float64{freqHz, freqHz - c.BandwidthHz/2, freqHz + c.BandwidthHz/2} {
-		solution, err := s.Antenna.Solve(antenna.Setting{FreqHz: hz, DesignHz: c.centreHz(), MastDiameterM: s.MastDiameterM, StandoffM: s.StandoffM})
+		solution, err := s.Antenna.Solve(s.setting(hz, c.CentreHz()))
 		if err != nil {
 			return frontEnd{}, fmt.Errorf("%s: antenna %s: %w", s.Name, s.Antenna.Name, err)
 		}
@@ -36,6 +36,18 @@ func (s *Station) frontEnd(freqHz float64, c Channel) (frontEnd, error) {
 		}
 	}
 	return f, nil
+}
+
+// setting is how the station's antenna is used on a channel.
+func (s *Station) setting(freqHz, designHz float64) antenna.Setting {
+	if s.CutForHz > 0 {
+		designHz = s.CutForHz
+	}
+	setting := antenna.Setting{FreqHz: freqHz, DesignHz: designHz, MastDiameterM: s.MastDiameterM, StandoffM: s.StandoffM}
+	if s.MastDiameterM > 0 {
+		setting.MastAboveM, setting.RollDeg = s.MastAboveM, s.Mount.RollDeg
+	}
+	return setting
 }
 
 // field returns the antenna's field towards a direction, its nulls filled.
@@ -88,6 +100,9 @@ func (f *frontEnd) feederLines(add func(Kind, string, float64, string)) {
 	}
 	if f.Match.LossDB > 0 {
 		add(LossLine, "matching transformer", -f.line.TransformerLossDB, f.MatchSource)
+	}
+	if f.HarnessDB > 0 {
+		add(LossLine, "harness", -f.HarnessDB, f.HarnessSource)
 	}
 }
 

@@ -22,8 +22,8 @@ type Channel struct {
 	BandwidthHz   float64
 }
 
-// centreHz is what resonant lengths are cut for: the mean of out and back.
-func (c Channel) centreHz() float64 { return (c.OutHz + c.BackHz) / 2 }
+// CentreHz is what resonant lengths are cut for: the mean of out and back.
+func (c Channel) CentreHz() float64 { return (c.OutHz + c.BackHz) / 2 }
 
 // An Allowance is a loss set aside, in dB, not negative.
 type Allowance struct {

@@ -55,7 +55,7 @@ func (f *frontEnd) outsideNoise(b *Budget) heard {
 	b.add(NoiseLine, name, -noise.RiseDB(outside.Factor, stages, figure),
 		fmt.Sprintf("%s: Fa %.1f dB, over a noise figure of %g dB, referred to the receiver's port (%s)", outside.Source, 10*math.Log10(outside.Factor), figure, f.Noise.Source))
 	f.note(b, outside.Note)
-	return heard{noise.OutsideShare(outside.Factor, stages, figure), outside.DecileDB}
+	return heard{noise.OutsideShare(outside.Factor, stages, figure), outside.DecileDB * outside.ManMadeShare}
 }
 
 // stages lists what lies between the antenna and the receiver, the antenna first.
@@ -71,7 +71,7 @@ func (f *frontEnd) stages() (list []noise.Stage, amplified bool) {
 			}
 		}
 	}
-	list = append(list, noise.Passive(-10*math.Log10(f.solution.Efficiency)+f.line.TransformerLossDB))
+	list = append(list, noise.Passive(-10*math.Log10(f.solution.Efficiency)+f.HarnessDB+f.line.TransformerLossDB))
 	insert(true)
 	list = append(list, noise.Passive(f.line.MatchedLossDB+f.line.ExtraLossDB+f.line.MismatchLossDB))
 	insert(false)

@@ -34,7 +34,7 @@ func Trace(l *Link, p terrain.Profile, c Conditions) (*Section, error) {
 	if err != nil {
 		return nil, err
 	}
-	path := w.path(l.Channel.centreHz(), 1)
+	path := w.path(l.Channel.CentreHz(), 1)
 	found, err := propagation.FreeSpace.Loss(path)
 	if err != nil {
 		return nil, err

@@ -67,14 +67,19 @@ type Station struct {
 	// antenna.
 	Run   antenna.Run
 	Match antenna.Match
-	// The sources say where feeder, connectors and transformer are stated.
-	RunSource, ConnectorSource, MatchSource string
+	// HarnessDB is the loss of a stack's harness, between transformer and antennas.
+	HarnessDB float64
+	// The sources say where feeder, connectors, transformer and harness are stated.
+	RunSource, ConnectorSource, MatchSource, HarnessSource string
 
 	Antenna       antenna.Design
 	AntennaSource string
+	// CutForHz is the frequency the antenna's resonant lengths are cut for; 0 is each link's own.
+	CutForHz float64
 	// AglM is the height of the antenna's feed above ground, in metres.
 	AglM  float64
 	Mount antenna.Mount
-	// MastDiameterM and StandoffM are the metal beside the antenna (see [antenna.Setting]).
-	MastDiameterM, StandoffM float64
+	// MastDiameterM, StandoffM and MastAboveM are the metal beside the antenna (see
+	// [antenna.Setting]).
+	MastDiameterM, StandoffM, MastAboveM float64
 }

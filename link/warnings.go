@@ -6,11 +6,19 @@ import (
 	"fellreach/link/propagation"
 )
 
+// A reflection is worth a word when its nulls are this deep and a mast can be moved out of one.
+// Common practice, no source.
+const (
+	notedNullDB = 3
+	mastHeightM = 50
+)
+
 // warnings are those of the path as a whole: reflections, and ends under the canopy.
 func (w *way) warnings(c propagation.FresnelClearance) []Warning {
 	var list []Warning
 	if c.WorstRatio > 1 && !w.trans {
-		if r, found := propagation.FindReflection(w.path(w.link.Channel.centreHz(), 1)); found {
+		r, found := propagation.FindReflection(w.path(w.link.Channel.CentreHz(), w.verticalShare))
+		if found && r.NullDB >= notedNullDB && min(r.SpacingTxM, r.SpacingRxM) <= mastHeightM {
 			list = append(list, Warning{"", w.reflectionText(r)})
 		}
 	}

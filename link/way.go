@@ -20,6 +20,7 @@ type way struct {
 	toSecond, toFirst antenna.Direction
 	trans             bool
 	losses            map[lossKey]propagation.Loss
+	verticalShare     float64 // of the budget computed last
 }
 
 // lossKey tells evaluations of the path method apart.
@@ -94,7 +95,7 @@ func (w *way) loss(freqHz, verticalShare float64) (propagation.Loss, error) {
 
 // seenFromFrom returns the profile and its worst point as seen from the link's From.
 func (w *way) seenFromFrom() (terrain.Profile, propagation.FresnelClearance, error) {
-	found, err := propagation.Clearance(w.path(w.link.Channel.centreHz(), 1))
+	found, err := propagation.Clearance(w.path(w.link.Channel.CentreHz(), 1))
 	if err != nil || w.first == w.link.From {
 		return w.profile, found, err
 	}

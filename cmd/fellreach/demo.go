@@ -3,7 +3,6 @@ package main
 import (
 	"context"
 	_ "embed"
-	"errors"
 	"fmt"
 	"os"
 	"path/filepath"
@@ -63,31 +62,46 @@ func writeDemo(ctx context.Context, folder string) error {
 		return err
 	}
 	defer os.RemoveAll(work)
-	if err := errors.Join(os.Chmod(work, 0o755), writeIsland(work), os.WriteFile(filepath.Join(work, "hallin.yaml"), demoPlan, 0o644), ctx.Err()); err != nil {
+	if err := os.Chmod(work, 0o755); err != nil {
 		return err
+	}
+	for _, write := range []func(folder string) error{writeHeights, writeCover, writeDemoPlan} {
+		if err := ctx.Err(); err != nil {
+			return err
+		}
+		if err := write(work); err != nil {
+			return err
+		}
 	}
 	return os.Rename(work, folder)
 }
 
-// writeIsland writes the island's two rasters.
-func writeIsland(folder string) error {
-	heights, cover := terrain.NewGrid(island.Cols, island.Rows), terrain.NewGrid(island.Cols, island.Rows)
+func writeHeights(folder string) error {
+	grid := terrain.NewGrid(island.Cols, island.Rows)
 	for i, dm := range island.Heights() {
-		heights.Cells[i] = float32(dm) / 10
+		grid.Cells[i] = float32(dm) / 10
 	}
+	void := float64(island.NoData)
+	return raster.WriteGeoTIFF(filepath.Join(folder, "hallin-dem.tif"), raster.GeoTIFF{
+		Grid: grid, GeoTransform: islandPlace, EPSG: island.EPSG, Type: raster.Int16, Scale: 0.1, NoData: &void, Unit: "m",
+		About: "heights of Hallin, an invented island, in decimetres",
+	})
+}
+
+func writeCover(folder string) error {
+	grid := terrain.NewGrid(island.Cols, island.Rows)
 	for i, class := range island.Cover() {
-		cover.Cells[i] = float32(class)
+		grid.Cells[i] = float32(class)
 	}
-	place := [6]float64{island.WestM, island.CellM, 0, island.NorthM, 0, -island.CellM}
-	void, none := float64(island.NoData), 0.0
-	return errors.Join(
-		raster.WriteGeoTIFF(filepath.Join(folder, "hallin-dem.tif"), raster.GeoTIFF{
-			Grid: heights, GeoTransform: place, EPSG: island.EPSG, Type: raster.Int16, Scale: 0.1, NoData: &void, Unit: "m",
-			About: "heights of Hallin, an invented island, in decimetres",
-		}),
-		raster.WriteGeoTIFF(filepath.Join(folder, "hallin-cover.tif"), raster.GeoTIFF{
-			Grid: cover, GeoTransform: place, EPSG: island.EPSG, Type: raster.Uint8, NoData: &none,
-			About: "land cover of Hallin: 1 sea, 2 open, 3 woodland, 4 village, 5 fresh water",
-		}),
-	)
+	return raster.WriteGeoTIFF(filepath.Join(folder, "hallin-cover.tif"), raster.GeoTIFF{
+		Grid: grid, GeoTransform: islandPlace, EPSG: island.EPSG, Type: raster.Uint8, NoData: new(float64),
+		About: "land cover of Hallin: 1 sea, 2 open, 3 woodland, 4 village, 5 fresh water",
+	})
+}
+
+// islandPlace is the geotransform of both rasters.
+var islandPlace = [6]float64{island.WestM, island.CellM, 0, island.NorthM, 0, -island.CellM}
+
+func writeDemoPlan(folder string) error {
+	return os.WriteFile(filepath.Join(folder, "hallin.yaml"), demoPlan, 0o644)
 }

@@ -17,6 +17,8 @@ type decoder struct {
 	file  string
 	errs  Errors
 	where map[string]position
+	// optional are keys of the whole file that may be missing although its shape requires them.
+	optional []string
 }
 
 // position is a place in the file, from 1.
@@ -230,7 +232,7 @@ func (d *decoder) fields(entries []entry, place position, v reflect.Value, path 
 		d.value(e.node, v.FieldByIndex(fields[i].index), fields[i].rules, inner)
 	}
 	for _, f := range fields {
-		if f.required && !given[f.key] {
+		if f.required && !given[f.key] && !(path == "" && slices.Contains(d.optional, f.key)) {
 			d.report(place, join(path, f.key), "is missing", "")
 		}
 	}

@@ -195,11 +195,17 @@ func (n *Network) addLinks(c *checker) {
 	}
 }
 
+// link resolves a link. The first one that uses a station says what its antenna is cut for.
 func (n *Network) link(c *checker, path string, l Link) *link.Link {
 	out := &link.Link{
 		Name: l.Name, From: n.Stations[l.From], To: n.Stations[l.To], OneWay: l.OneWay,
 		Channel: c.Channels[l.Channel].resolve(l.Channel),
 		Aim:     link.Aim{AvailabilityPct: float64(*l.Aim.Availability)},
+	}
+	for _, s := range []*link.Station{out.From, out.To} {
+		if s.CutForHz == 0 {
+			s.CutForHz = out.Channel.CentreHz()
+		}
 	}
 	if l.Aim.Margin != nil {
 		out.Aim.MarginDB = float64(*l.Aim.Margin)

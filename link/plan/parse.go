@@ -25,7 +25,13 @@ const (
 )
 
 // Load reads and parses a plan file.
-func Load(path string) (*Plan, error) {
+func Load(path string) (*Plan, error) { return load(path, Parse) }
+
+// LoadAntennas reads and parses a plan file of which only the channels and antennas are wanted: it
+// may lack ground, sites and links.
+func LoadAntennas(path string) (*Plan, error) { return load(path, ParseAntennas) }
+
+func load(path string, parse func(name string, data []byte) (*Plan, error)) (*Plan, error) {
 	f, err := os.Open(path)
 	if err != nil {
 		return nil, err
@@ -35,15 +41,22 @@ func Load(path string) (*Plan, error) {
 	if err != nil {
 		return nil, err
 	}
-	return Parse(path, data)
+	return parse(path, data)
 }
 
 // Parse reads a plan, checks it whole and fills in its defaults. The error is an [Errors] with
 // all that is wrong. The name is the file's path: other paths in the plan are relative to its
 // folder. Parse opens no file.
-func Parse(name string, data []byte) (*Plan, error) {
-	d := &decoder{file: name, where: map[string]position{}}
-	p := &Plan{file: name, where: d.where}
+func Parse(name string, data []byte) (*Plan, error) { return (&decoder{file: name}).parse(data) }
+
+// ParseAntennas is Parse for a plan that may lack ground, sites and links.
+func ParseAntennas(name string, data []byte) (*Plan, error) {
+	return (&decoder{file: name, optional: []string{"ground", "sites", "links"}}).parse(data)
+}
+
+func (d *decoder) parse(data []byte) (*Plan, error) {
+	d.where = map[string]position{}
+	p := &Plan{file: d.file, where: d.where}
 	if body := d.tree(data); body != nil {
 		d.value(body, reflect.ValueOf(p).Elem(), tagRules{}, "")
 	}

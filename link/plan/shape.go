@@ -59,7 +59,7 @@ type Class struct {
 // Air is the refractivity at the path centre, by Rec. ITU-R P.453.
 type Air struct {
 	N0        *float64 `json:"n0,omitempty" jsonschema:"minimum=200,maximum=500" jsonschema_description:"sea-level surface refractivity, N-units"`
-	DeltaN    *float64 `json:"delta_n,omitempty" jsonschema:"minimum=-50,maximum=120" jsonschema_description:"fall of refractivity over the lowest kilometre, N-units per km"`
+	DeltaN    *float64 `json:"delta_n,omitempty" jsonschema:"minimum=1,maximum=120" jsonschema_description:"fall of refractivity over the lowest kilometre, N-units per km"`
 	Dn1       *float64 `json:"dn1,omitempty" jsonschema:"minimum=-1500,maximum=0" jsonschema_description:"refractivity gradient of the lowest 65 m not exceeded for 1 % of the year, N-units per km, for P.530"`
 	Roughness *Length  `json:"roughness,omitempty" jsonschema_description:"standard deviation of the terrain heights in a square of 110 km, for P.530"`
 }

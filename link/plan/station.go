@@ -11,7 +11,7 @@ import (
 
 // addStations resolves every station that has a radio and an antenna.
 func (n *Network) addStations(c *checker) {
-	designs := map[string]antenna.Design{}
+	designs := map[string]built{}
 	for i, s := range c.Sites {
 		path := fmt.Sprintf("sites[%d]", i)
 		if len(s.Stations) == 0 {
@@ -23,26 +23,28 @@ func (n *Network) addStations(c *checker) {
 	}
 }
 
-func (n *Network) addStation(c *checker, designs map[string]antenna.Design, path, name string, siteIndex int, st Station) {
+func (n *Network) addStation(c *checker, designs map[string]built, path, name string, siteIndex int, st Station) {
 	if st.Radio == "" || st.Antenna == nil {
 		return
 	}
 	use := st.Antenna
 	if _, known := designs[use.Use]; !known {
-		d, err := c.design(use.Use)
+		d, err := c.built(use.Use)
 		if err != nil {
 			c.refuse("antennas."+use.Use, err)
 		}
 		designs[use.Use] = d
 	}
-	s := c.Sites[siteIndex]
+	s, design := c.Sites[siteIndex], designs[use.Use]
 	out := &link.Station{
 		Name: name, Order: siteIndex, At: n.places[siteIndex],
 		ClearingM:     float64(*s.Clearing),
 		Surroundings:  c.surroundings(fmt.Sprintf("sites[%d]", siteIndex), s),
 		Noise:         c.noise(siteIndex),
 		Radio:         c.resolveRadio(st.Radio),
-		Antenna:       designs[use.Use],
+		Antenna:       design.Design,
+		Match:         design.match,
+		HarnessDB:     design.harnessDB,
 		AntennaSource: c.source("antennas." + use.Use),
 		AglM:          float64(use.AboveGround),
 		Mount:         n.mount(siteIndex, *use),
@@ -52,7 +54,8 @@ func (n *Network) addStation(c *checker, designs map[string]antenna.Design, path
 		out.GroundAslM = &level
 	}
 	if s.Mast != nil {
-		_, out.MastDiameterM = mastSize(s.Mast)
+		heightM, widthM := mastSize(s.Mast)
+		out.MastDiameterM, out.MastAboveM = widthM, heightM-out.AglM
 	}
 	if use.Standoff != nil {
 		out.StandoffM = float64(*use.Standoff)
@@ -125,10 +128,8 @@ func (c *checker) feed(out *link.Station, path string, st Station) {
 			c.refuse("feeders."+f.Use, err)
 		}
 	}
-	if m := matchOf(c.Antennas[st.Antenna.Use]); m != nil {
-		out.Match = m.resolve()
-		out.MatchSource = c.source("antennas." + st.Antenna.Use + ".match")
-	}
+	out.MatchSource = c.source("antennas." + st.Antenna.Use + ".match")
+	out.HarnessSource = c.source("antennas." + st.Antenna.Use + ".harness")
 }
 
 func (f Feeder) resolve(name string) antenna.Feeder {
@@ -174,17 +175,6 @@ func (c *checker) resolveRadio(name string) link.Radio {
 		}
 	} else {
 		need.RequiredSNRDB, need.Source = float64(*r.RequiredSNR), c.source(path)
-	}
-	return out
-}
-
-func (m Match) resolve() antenna.Match {
-	var out antenna.Match
-	if m.Ratio != nil {
-		out.Ratio = float64(*m.Ratio)
-	}
-	if m.Loss != nil {
-		out.LossDB = float64(*m.Loss)
 	}
 	return out
 }
