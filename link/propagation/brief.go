@@ -19,11 +19,16 @@ type Brief struct {
 	earth     SmoothEarth
 	requests  []Request
 	lbs1      []float64 // for each request, troposcatter over 1 km without an angle
+	leastTime []float64 // for each, a bound from below of ducting's time variability
 }
 
+// A Region bounds the paths that a [Brief] is asked for: none is longer, and the centre of none is
+// nearer to the equator.
+type Region struct{ MostKm, LeastLatDeg float64 }
+
 // NewBrief prepares for requests at freqHz, 30e6 to 6e9 Hz, in air of sea-level refractivity n0,
-// N-units.
-func NewBrief(freqHz, n0 float64, requests []Request) *Brief {
+// N-units, on the paths of a region.
+func NewBrief(freqHz, n0 float64, within Region, requests []Request) *Brief {
 	f := freqHz / 1e9
 	b := &Brief{
 		f: f, lambda: diffractionWavelengthM(freqHz), lbfs1: lineOfSightDB(f, 1), coupling: couplingBasisDB(f),
@@ -31,6 +36,7 @@ func NewBrief(freqHz, n0 float64, requests []Request) *Brief {
 	}
 	for _, r := range requests {
 		b.lbs1 = append(b.lbs1, scatterBasisDB(f, n0, r.TimePct))
+		b.leastTime = append(b.leastTime, leastDuctTimeDB(r.TimePct, within.MostKm, mostLogBeta(within.LeastLatDeg)))
 	}
 	return b
 }
@@ -74,14 +80,14 @@ func (b *Brief) Loss(o *Outline, g Ground, verticalShare float64, out []Combined
 		lowered(obstructions{o.Hobs, o.AlphaT, o.AlphaR}).limited(o.TxGroundM, o.RxGroundM)
 	p.ld50 = p.diffractionDB(o.Slopes, o.Ae)
 	logD := math.Log10(o.LengthKm)
-	for i, r := range b.requests {
-		lbs := b.lbs1[i] + scatterPathDB(logD, p.theta)
-		out[i] = p.request(r, lbs, logD)
+	for i := range b.requests {
+		out[i] = p.request(i, logD)
 	}
 }
 
-// request evaluates one request behind the loss by troposcatter.
-func (p *briefPath) request(r Request, lbs, logD float64) Combined {
+// request evaluates the i-th request.
+func (p *briefPath) request(i int, logD float64) Combined {
+	r, lbs := p.requests[i], p.lbs1[i]+scatterPathDB(logD, p.theta)
 	lb0p, lbd := p.lbfs, p.lbfs+p.ld50
 	var least minimum
 	if r.TimePct < 50 {
@@ -90,7 +96,7 @@ func (p *briefPath) request(r Request, lbs, logD float64) Combined {
 	}
 	lbda := lbd
 	if r.Ducting {
-		lbda = p.withDucting(r.TimePct, lb0p, lbd, logD)
+		lbda = p.withDucting(i, lb0p, lbd, logD)
 	}
 	lbam := lbda
 	switch {
@@ -147,8 +153,9 @@ func (p *briefPath) askHorizons() {
 
 // withDucting leads Lbd towards ducting. Ducting counts where Lminbap is below Lbd, and Lminbap is
 // never below Lba: a bound of Lba from below that reaches Lbd settles it.
-func (p *briefPath) withDucting(pct, lb0p, lbd, logD float64) float64 {
-	if p.leastDuctingDB(pct, logD) >= lbd {
+func (p *briefPath) withDucting(i int, lb0p, lbd, logD float64) float64 {
+	pct, leastTime := p.requests[i].TimePct, p.leastTime[i]
+	if p.leastDuctingDB(logD)+leastTime >= lbd {
 		return lbd
 	}
 	p.askTime()
@@ -159,7 +166,7 @@ func (p *briefPath) withDucting(pct, lb0p, lbd, logD float64) float64 {
 		smooth:   lineOfSums(p.V1, p.V2, p.LengthKm).limited(p.TxGroundM, p.RxGroundM),
 	}
 	u.dct, u.dcr = p.ground.CoastKm()
-	if u.leastDB(pct) >= lbd {
+	if u.leastDB(leastTime) >= lbd {
 		return lbd
 	}
 	u.hte, u.hre = u.hts-u.smooth.tx, u.hrs-u.smooth.rx
@@ -169,7 +176,8 @@ func (p *briefPath) withDucting(pct, lb0p, lbd, logD float64) float64 {
 
 // leastDuctingDB is a quick bound of Lba from below: without shielding, with the most that the coast
 // can take off, and the least angles. On a line of sight dlt + dlr is the length of the path.
-func (p *briefPath) leastDuctingDB(pct, logD float64) float64 {
+// The time variability is not in it.
+func (p *briefPath) leastDuctingDB(logD float64) float64 {
 	least := p.coupling + 20*logD
 	if p.TransHorizon {
 		least = p.coupling + 20*math.Log10(p.Dlt+p.Dlr)
@@ -178,5 +186,5 @@ func (p *briefPath) leastDuctingDB(pct, logD float64) float64 {
 		least -= 2 * mostCoastDB
 	}
 	theta := 1000*p.LengthKm/p.Ae + min(p.ThetaT, 0) + min(p.ThetaR, 0)
-	return least + ductAngleDB(p.f, p.Ae, theta) + leastDuctTimeDB(pct, p.LengthKm)
+	return least + ductAngleDB(p.f, p.Ae, theta)
 }

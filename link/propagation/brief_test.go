@@ -74,7 +74,7 @@ func TestBriefIsTheFullMethod(t *testing.T) {
 			t.Fatal(err)
 		}
 		o, out := outlineOf(&p), make([]Combined, 2)
-		b := NewBrief(p.FreqHz, p.N0, []Request{{p.TimePct, true}, {p.TimePct, false}})
+		b := NewBrief(p.FreqHz, p.N0, Region{MostKm: p.LengthKm(), LeastLatDeg: p.LatDeg}, []Request{{p.TimePct, true}, {p.TimePct, false}})
 		b.Loss(&o, searched{&p}, p.VerticalShare, out)
 		lloc := LocationDB(p.LocationPct, p.LocationSpreadDB)
 		for i, want := range []float64{full.DB, without.DB} {
@@ -90,6 +90,35 @@ func TestElevationSeries(t *testing.T) {
 	for _, slope := range []float64{0, 1e-9, -3, 19.999, 20.001, -500, 4000} {
 		if got, want := ElevationMrad(slope), 1000*math.Atan(slope/1000); math.Abs(got-want) > 1e-13*math.Max(1, math.Abs(want)) {
 			t.Errorf("ElevationMrad(%g) = %.17g, want %.17g", slope, got, want)
+		}
+	}
+}
+
+// The bound by which ducting is left out, over all smaller beta: a scan, since the term is no
+// simple function of it.
+func TestLeastDuctTime(t *testing.T) {
+	for _, p := range []float64{1, 10, 50} {
+		for _, mostKm := range []float64{1, 50, 150, 300} {
+			for _, latDeg := range []float64{0, 30, 47.5, 70, 89} {
+				top := mostLogBeta(latDeg)
+				least := leastDuctTimeDB(p, mostKm, top)
+				for _, d := range []float64{0.25, mostKm / 3, mostKm} {
+					for below := 0.0; below < 400; below += 0.05 + below/50 {
+						if got := ductTimeDB(p, d, top-below); got < least-1e-9 {
+							t.Fatalf("p %g, %g of %g km, latitude %g: A = %g at log beta %g, under the bound %g", p, d, mostKm, latDeg, got, top-below, least)
+						}
+					}
+				}
+			}
+		}
+	}
+	for _, dtm := range []float64{0, 5, 50, 500} {
+		for _, dlm := range []float64{0, 5, 50, 500} {
+			for lat := -90.0; lat <= 90; lat += 7.5 {
+				if u := timeParametersOf(dtm, dlm, 0, lat); math.Log10(u.beta0) > mostLogBeta(lat)+1e-12 {
+					t.Errorf("dtm %g, dlm %g, latitude %g: beta0 %g is above its bound", dtm, dlm, lat, u.beta0)
+				}
+			}
 		}
 	}
 }

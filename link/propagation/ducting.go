@@ -86,11 +86,16 @@ func (u *duct) coastDB(dc, dl, hs float64) float64 {
 // alongDB returns Ad(p), the loss along the anomalous structure by angle and time, (~51) to (~56).
 func (u *duct) alongDB(p float64) float64 {
 	h := &u.horizons
-	logBeta := u.logBeta()
+	return ductAngleDB(u.f, h.ae, u.thetaPrime()) + ductTimeDB(p, u.d, u.logBeta())
+}
+
+// ductTimeDB returns A(p), the time variability of ducting over d km by the logarithm of beta, (~53)
+// to (~56).
+func ductTimeDB(p, d, logBeta float64) float64 {
 	gamma := 1.076 / math.Pow(2.0058-logBeta, 1.012) *
-		math.Exp(-(9.51-4.8*logBeta+0.198*logBeta*logBeta)*1e-6*math.Pow(u.d, 1.13))
+		math.Exp(-(9.51-4.8*logBeta+0.198*logBeta*logBeta)*1e-6*math.Pow(d, 1.13))
 	x := math.Log10(p) - logBeta // of p/beta
-	return ductAngleDB(u.f, h.ae, u.thetaPrime()) - 12 + (1.2+3.7e-3*u.d)*x + 12*math.Pow(10, gamma*x)
+	return -12 + (1.2+3.7e-3*d)*x + 12*math.Pow(10, gamma*x)
 }
 
 // thetaPrime is the angular distance of the path along the structure, mrad, (~52).
@@ -105,20 +110,28 @@ func ductAngleDB(f, ae, theta float64) float64 { return 5e-5 * ae * math.Cbrt(f)
 // mostCoastDB is the most that [duct.coastDB] takes off at one end.
 const mostCoastDB = 6
 
-// leastDuctTimeDB is a bound from below of the time term A(p) over d km. beta is never above
-// 10^1.67, so x = log(p/beta) is at least log p - 1.67; where that is positive, 12 * 10^(gamma x) is
-// at least 12, and elsewhere positive.
-func leastDuctTimeDB(p, d float64) float64 {
-	const mostLogBeta = 1.67
-	if x := math.Log10(p) - mostLogBeta; x < 0 {
-		return (1.2+3.7e-3*d)*x - 12
+// mostLogBeta is the logarithm of the largest beta0 at a latitude and nearer to the pole: mu1 and its
+// product with mu4 are 1 at most, as are mu2 and mu3.
+func mostLogBeta(latDeg float64) float64 {
+	return max(1.67-0.015*math.Abs(latDeg), math.Log10(4.17))
+}
+
+// leastDuctTimeDB is a bound of A(p) from below on paths of up to mostKm where beta is at most
+// 10^logBeta. Where p is above that, A(p) falls as beta grows (tested up to 300 km), so the largest
+// beta bounds it, with the lesser slope of short paths and the lesser exponent of long ones;
+// elsewhere the power is positive.
+func leastDuctTimeDB(p, mostKm, logBeta float64) float64 {
+	x := math.Log10(p) - logBeta
+	if x < 0 || mostKm > 300 {
+		return (1.2+3.7e-3*mostKm)*min(x, 0) - 12
 	}
-	return 0
+	return ductTimeDB(p, mostKm, logBeta) - 3.7e-3*mostKm*x
 }
 
 // leastDB is a bound of the loss from below that does not need the heights over the smooth surface.
-func (u *duct) leastDB(p float64) float64 {
-	return u.couplingDB() + ductAngleDB(u.f, u.horizons.ae, u.thetaPrime()) + leastDuctTimeDB(p, u.d)
+// leastTime is one of A(p).
+func (u *duct) leastDB(leastTime float64) float64 {
+	return u.couplingDB() + ductAngleDB(u.f, u.horizons.ae, u.thetaPrime()) + leastTime
 }
 
 // logBeta returns the logarithm of beta, beta0 with its corrections for the geometry of the path

@@ -1,0 +1,89 @@
+package coverage
+
+import (
+	"math"
+
+	"fellreach/link/propagation"
+)
+
+var _ propagation.Ground = (*Cell)(nil)
+
+// SlopesBeta implements [propagation.Ground].
+func (c *Cell) SlopesBeta() propagation.Slopes {
+	return c.walk.beta.slopes(c.d, c.Outline.Hrs, c.walk.clearLimit/c.d, c.own, true)
+}
+
+// LevelSlopes implements [propagation.Ground].
+func (c *Cell) LevelSlopes(radiusKm, txM, rxM float64) propagation.Slopes {
+	return levelSlopes(radiusKm, txM, rxM, c.d, c.walk.stepKm, c.interior)
+}
+
+// ObstacleKm implements [propagation.Ground]. Without interior points it is the path's middle.
+func (c *Cell) ObstacleKm() float64 {
+	if c.interior == 0 {
+		return c.d / 2
+	}
+	if math.IsNaN(c.obstacleKm) {
+		s := &c.walk.bare
+		_, c.obstacleKm = s.tightest(s.ray(c.d, c.Outline.Hrs), c.d, math.Inf(1), c.own, false)
+	}
+	return c.obstacleKm
+}
+
+// RoughnessM implements [propagation.Ground].
+func (c *Cell) RoughnessM(txM, rxM float64) float64 {
+	w, o := c.walk, &c.Outline
+	l := line{txM, (rxM - txM) / c.d}
+	if c.interior == 0 {
+		return max(o.TxGroundM-txM, o.RxGroundM-rxM)
+	}
+	first, last := w.index(o.Dlt), w.index(c.d-o.Dlr)
+	if !o.TransHorizon {
+		first = w.index(c.ObstacleKm())
+		last = first
+	}
+	first, last = min(first, last), max(first, last)
+	hm := math.Inf(-1)
+	stacked := c.interior - len(c.own)
+	for i := max(first, stacked+1); i <= last; i++ {
+		p := &c.own[i-stacked-1]
+		hm = max(hm, p.bare-l.at(p.d))
+	}
+	if first > stacked {
+		return hm
+	}
+	if !w.blocked {
+		w.blocks.build(w.aslM[:w.known+1], w.stepKm)
+		w.blocked = true
+	}
+	return w.blocks.highestOver(l, first, min(last, stacked), hm)
+}
+
+// index is the number of the point at a distance.
+func (w *walk) index(km float64) int { return int(math.Round(km / w.stepKm)) }
+
+// Zones implements [propagation.Ground].
+func (c *Cell) Zones() (dtm, dlm, sea float64) { return c.dtm, c.dlm, c.sea }
+
+// LatDeg implements [propagation.Ground].
+func (c *Cell) LatDeg() float64 {
+	_, lat := c.walk.disc.Places.At(c.EastM/2, c.NorthM/2)
+	return lat
+}
+
+// noCoastKm is P.1812's distance to the coast where there is none.
+const noCoastKm = 500
+
+// CoastKm implements [propagation.Ground].
+func (c *Cell) CoastKm() (tx, rx float64) {
+	w := c.walk
+	first, last := w.firstSeaKm, w.lastSeaKm
+	for i := range c.own {
+		w.noteSea(&first, &last, c.own[i].d, c.zoneOf[i])
+	}
+	w.noteSea(&first, &last, c.d, c.zoneOf[len(c.own)])
+	if math.IsNaN(first) {
+		return noCoastKm, noCoastKm
+	}
+	return first, c.d - last
+}

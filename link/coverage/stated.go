@@ -1,0 +1,65 @@
+package coverage
+
+import (
+	"math"
+
+	"fellreach/link/propagation"
+	"fellreach/terrain"
+)
+
+// statedProfile lays out the profile of a cell as the package defines it, point by point; ok is
+// false where it is not known. It shares with the sweep where the ground is sampled and nothing
+// else.
+func (s *sweep) statedProfile(index int) (p terrain.Profile, latDeg float64, ok bool) {
+	east, north := s.frame.Plane.At(float64(index%s.frame.Cols), float64(index/s.frame.Cols))
+	if math.Hypot(east, north) < nearestM {
+		east, north = 0, nearestM
+	}
+	distM := math.Hypot(east, north)
+	n := interiorPoints(distM, s.stepM)
+	p = terrain.Profile{DistKm: make([]float64, n+2), AslM: make([]float64, n+2), CoverM: make([]float64, n+2), Zone: make([]terrain.Zone, n+2)}
+	w := newWalk(s)
+	radial := math.Round(math.Atan2(east, north)*float64(s.radials)/(2*math.Pi) + float64(s.radials))
+	w.start(int(radial) % s.radials)
+	copy(p.AslM[:n+1], w.aslM)
+	copy(p.CoverM[:n+1], w.coverM)
+	copy(p.Zone[:n+1], w.zones)
+	for i := range p.DistKm {
+		p.DistKm[i] = float64(i) * s.stepKm
+	}
+	for i := w.known + 1; i <= n; i++ {
+		p.AslM[i] = math.NaN()
+	}
+	own := min(s.ownPoints, n)
+	first := n - own + 1
+	unit := s.stepM / distM
+	ray := terrain.Ray{East: east / distM * s.stepM * float64(first), North: north / distM * s.stepM * float64(first), StepEast: east * unit, StepNorth: north * unit}
+	aslM := make([]float64, own)
+	s.disc.Sample(ray, aslM, p.CoverM[first:n+1], p.Zone[first:n+1])
+	for i, h := range aslM {
+		if !math.IsNaN(h) {
+			p.AslM[first+i] = h
+		}
+	}
+	p.DistKm[n+1] = distM / 1000
+	p.AslM[n+1], p.CoverM[n+1], p.Zone[n+1] = s.disc.Point(east, north)
+	for _, h := range p.AslM {
+		if math.IsNaN(h) {
+			return p, 0, false
+		}
+	}
+	_, latDeg = s.disc.Places.At(east/2, north/2)
+	return p.Cleared(s.ClearingM, 0), latDeg, true
+}
+
+// statedPath is the path over a stated profile, at the median of time and locations.
+func (s *sweep) statedPath(p terrain.Profile, latDeg, freqHz, verticalShare, n0 float64) propagation.Path {
+	path := propagation.Path{
+		Profile: p, FreqHz: freqHz, TxAglM: s.AglM, RxAglM: s.FarAglM, VerticalShare: verticalShare,
+		DeltaN: s.DeltaN, N0: n0, TimePct: 50, LocationPct: 50, LatDeg: latDeg, TxCoastKm: noCoastKm, RxCoastKm: noCoastKm,
+	}
+	if first, last, ok := p.CoastKm(); ok {
+		path.TxCoastKm, path.RxCoastKm = first, last
+	}
+	return path
+}
