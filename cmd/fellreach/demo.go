@@ -45,7 +45,7 @@ func newDemo(t *terminal) *cobra.Command {
 			if err := report.LinksTable(t.out, result); err != nil {
 				return err
 			}
-			t.hint("\nwrote %[1]s: a plan, an elevation raster and a land-cover raster. Go on with\n  fellreach links %[1]s/hallin.yaml --lines\n  fellreach section %[1]s/hallin.yaml --link \"West head..Ormvik\" --format svg -o section.svg", folder)
+			t.hint("\nwrote %[1]s: a plan, an elevation raster and a land-cover raster. Go on with\n  fellreach links %[1]s/hallin.yaml --lines\n  fellreach section %[1]s/hallin.yaml --link \"West head..Ormvik/coast\" --format svg -o section.svg", folder)
 			return nil
 		},
 	}

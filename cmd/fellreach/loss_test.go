@@ -56,14 +56,29 @@ func TestLossOverRidge(t *testing.T) {
 	near(t, "loss over free space", got.LossDB-got.Terms["Lbfs"], want, 1.5)
 }
 
-// The terms bear the Recommendation's symbols.
+// termSymbols are the keys of the terms: the symbols of Rec. ITU-R P.1812 that its readers are
+// promised.
+const termSymbols = `Lbfs Lb0p Lb0beta Lbulla_k50 Lbulls_k50 Ldsph_k50 Ld50 Ldbeta Fi Ldp Lbd50 Lbd Lminb0p Lba Lminbap Lbda Lbam Lbs Lbc Lloc Lb Ep
+	theta theta_t theta_r dlt dlr dtm dlm ae hst hsr hstd hsrd hte hre hm hts hrs omega beta0`
+
+// The terms bear the Recommendation's symbols: all of them with P.1812, those it works out with
+// another method. Lb is the loss.
 func TestLossTerms(t *testing.T) {
-	got := lossOf(t, smallProfile, "--frequency", "151.5 MHz", "--method", "p526")
-	for _, symbol := range []string{"Lbfs", "Lbulla_k50", "Lbulls_k50", "Ldsph_k50", "Ld50", "theta", "theta_t", "theta_r", "dlt", "dlr", "ae", "hts", "hrs"} {
-		if _, ok := got.Terms[symbol]; !ok {
-			t.Errorf("no %s among %v", symbol, got.Terms)
+	for method, symbols := range map[string]string{
+		"p1812": termSymbols, "p526": "Lbfs Lbulla_k50 Lbulls_k50 Ldsph_k50 Ld50 theta theta_t theta_r dlt dlr ae hts hrs Lb", "free-space": "Lbfs ae hts hrs Lb",
+	} {
+		got := lossOf(t, smallProfile, "--frequency", "151.5 MHz", "--method", method)
+		if got.Method != method || len(got.Warnings) > 0 {
+			t.Errorf("%s: %+v", method, got)
 		}
+		for _, symbol := range strings.Fields(symbols) {
+			if _, ok := got.Terms[symbol]; !ok {
+				t.Errorf("%s: no %s among the terms", method, symbol)
+			}
+		}
+		near(t, "Lb", got.Terms["Lb"], got.LossDB, 1e-9)
 	}
+	got := lossOf(t, smallProfile, "--frequency", "151.5 MHz", "--method", "p526")
 	near(t, "ae", got.Terms["ae"], 6371*157/(157-45.0), 0.5) // P.1812: a k, k = 157/(157 - delta N)
 	near(t, "hts", got.Terms["hts"], 110, 1e-9)
 	near(t, "hrs", got.Terms["hrs"], 120, 1e-9)
@@ -77,6 +92,18 @@ func TestLossTable(t *testing.T) {
 			t.Errorf("want %q in:\n%s", want, text)
 		}
 	}
+}
+
+// Without a latitude P.1812 takes one and says so.
+func TestLossWithoutLatitude(t *testing.T) {
+	path := write(t, t.TempDir(), "profile.csv", smallProfile)
+	args := []string{"loss", path, "--frequency", "151.5 MHz", "--method", "p1812", "--format", "json"}
+	silent := decoded[lossAnswer](t, succeeds(t, exitDone, append(args, "--latitude=-45")...))
+	warned := decoded[lossAnswer](t, succeeds(t, exitDone, args...))
+	if len(silent.Warnings) != 0 || len(warned.Warnings) != 1 || !strings.Contains(warned.Warnings[0], "45") {
+		t.Errorf("warnings %q with a latitude, %q without", silent.Warnings, warned.Warnings)
+	}
+	near(t, "loss", warned.LossDB, silent.LossDB, 1e-9)
 }
 
 // Polarization counts where the ground does: on a sea path beyond the horizon at low frequency.

@@ -118,6 +118,7 @@ var planMistakes = []mistake{
 	{"no such site", edit("to: B", "to: D"), onPlan, exitUsage, `links[0].to: there is no site "D"`},
 	{"no fade stated", edit(`, fade: "10 dB"`, ""), onPlan, exitUsage, "links[0].fade: is missing"},
 	{"no pattern file", edit(`{kind: omni, gain: "2 dBi"`, `{kind: table, pattern: none.csv`, `"15 m"`, `"15 m", facing: toward B`, `"16 m"`, `"16 m", facing: toward A`, `"17 m"`, `"17 m", facing: toward A`), onPlan, exitUsage, "antennas.a: open none.csv: no such file"},
+	{"air that thickens upwards", edit("format: 1", "format: 1\nair: {delta_n: -20}"), onPlan, exitUsage, "2:16: air.delta_n: -20 is out of range"},
 	{"a check of a bad plan", edit("format: 1", "format: 7"), "plan check FOLDER/plan.yaml", exitUsage, "7 is out of range"},
 }
 
