@@ -7,7 +7,7 @@ import (
 	"github.com/paulmach/orb"
 )
 
-// nearSeaM is how far inland the sea makes a coast.
+// nearSeaM is how far from the sea land is coastal; its source stands at [terrain.MaxCoastalAslM].
 const nearSeaM = 50_000
 
 // maxReachBlocks bounds how many blocks are looked over in one direction. It cuts the 50 km short
@@ -81,7 +81,8 @@ func (s *shore) around(key sheetKey) (a surround, ok bool, err error) {
 	if _, a.rows, ok = middle[0].reach(); !ok {
 		return a, false, nil
 	}
-	a.rows = min(a.rows+a.rows/8+1, maxReachBlocks) // rows may draw nearer to each other, by a Mercator map's scale up to 85 degrees
+	// Rows may draw nearer to each other: on a Mercator map at 85 degrees by 9 % over 50 km.
+	a.rows = min(a.rows+a.rows/8+1, maxReachBlocks)
 	a.firstRow = top - a.rows/2 - 1
 	a.metrics, err = s.metrics(key.col, a.firstRow, sheetBlocks+2*(a.rows/2+1))
 	for _, m := range a.metrics {
