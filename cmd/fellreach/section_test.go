@@ -1,6 +1,7 @@
 package main
 
 import (
+	"cmp"
 	"encoding/csv"
 	"encoding/xml"
 	"io"
@@ -45,7 +46,7 @@ func sectionOf(t *testing.T, path, link string) sectionAnswer {
 
 func TestSectionJSONKeys(t *testing.T) {
 	type object = map[string]any
-	s := decoded[object](t, succeeds(t, exitDone, "section", demo(t), "--link", "trunk", "--format", "json"))
+	s := decoded[object](t, succeeds(t, exitDone, "section", jacksboro, "--link", "backbone", "--format", "json"))
 	haveKeys(t, s, "from", "to", "distance_km", "azimuth_deg", "back_azimuth_deg", "step_m", "points", "clearance", "horizon")
 	haveKeys(t, s["points"].([]any)[0].(object), "d_km", "lon", "lat", "ground_m", "cover_m", "zone", "ray_m", "bulge_m", "fresnel1_m")
 	haveKeys(t, s["clearance"].(object), "worst_ratio", "at_km", "needed_ratio")
@@ -55,7 +56,8 @@ func TestSectionJSONKeys(t *testing.T) {
 // d1 d2 / 2 a, the first Fresnel radius sqrt(lambda d1 d2 / d), and the worst clearance the least
 // over the points between.
 func TestSectionGeometry(t *testing.T) {
-	for _, link := range []string{"West head..Ormvik", "trunk", "Pass gauge..Hallin Top/gauges"} {
+	for _, l := range linksOf(t, demo(t)) {
+		link := cmp.Or(l.Name, l.From+".."+l.To)
 		s := sectionOf(t, demo(t), link)
 		lambdaM := 299792458 / s.FrequencyHz
 		last := len(s.Points) - 1

@@ -82,14 +82,14 @@ func madeBudget(from, to *link.Station, freqHz, lossDB, marginDB float64) link.B
 // two frequencies.
 func madeResult() *plan.Result {
 	far := link.Warning{Text: "the path is made up"}
-	return &plan.Result{Title: "Made islets", Stations: []*link.Station{harbour, reef, hill}, Links: []*link.Result{
+	return &plan.Result{Title: "Made islets", Notes: []string{"a note on the whole plan"}, Stations: []*link.Station{harbour, reef, hill}, Links: []*link.Result{
 		{
 			Link:    &link.Link{Name: "crossing", From: harbour, To: reef, Channel: poll},
 			Profile: madeProfile(harbour.At, reef.At, 10, 0, 0, 0, 0, 5),
 			Directions: []link.Budget{
 				madeBudget(harbour, reef, 151.5e6, 120.25, 33.749), madeBudget(reef, harbour, 151.5e6, 120.25, 33.749),
 			},
-			MarginDB: 33.749, ChancePct: 99.97, Verdict: link.Closes,
+			MarginDB: 33.749, ChancePct: 99.97, Verdict: link.Closes, Sensitivity: link.Sensitivity{FromMastDB: 0.254, ToMastDB: 0.5, RasterDB: -1.004, ChancePct: 0.04},
 			Clearance: propagation.FresnelClearance{WorstRatio: 0.75, NeededRatio: 0.6, Index: 2, AtKm: 11.2},
 			Warnings:  []link.Warning{far, {At: "Harbour", Text: "the mast is made up"}},
 		},
