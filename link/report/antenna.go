@@ -11,7 +11,9 @@ import (
 	"github.com/jedib0t/go-pretty/v6/table"
 )
 
-type antennaJSON struct {
+// Antenna is an antenna as installed, as JSON holds it: in full precision, gains with the conductors'
+// loss and without mismatch, the pattern's azimuth 0 the facing, exact nulls as -100 dBi.
+type Antenna struct {
 	Name           string        `json:"name"`
 	Kind           string        `json:"kind"`
 	FrequencyHz    float64       `json:"frequency_hz"`
@@ -72,10 +74,12 @@ type patternJSON struct {
 // patternStepDeg is the step of the pattern in JSON, in azimuth and elevation.
 const patternStepDeg = 5
 
-// AntennaJSON writes an antenna as installed, in full precision. The gains hold the conductors'
-// loss and no mismatch; the pattern's azimuth 0 is the facing. Exact nulls are written as -100 dBi.
-func AntennaJSON(w io.Writer, a *plan.AntennaResult) error {
-	out := antennaJSON{
+// AntennaJSON writes an antenna as [AntennaOf] gives it.
+func AntennaJSON(w io.Writer, a *plan.AntennaResult) error { return indented(w, AntennaOf(a)) }
+
+// AntennaOf returns an antenna as installed as JSON holds it.
+func AntennaOf(a *plan.AntennaResult) Antenna {
+	out := Antenna{
 		Name: a.Name, Kind: a.Kind, FrequencyHz: a.FreqHz, ImpedanceOhm: ohm(a.ImpedanceOhm), VSWR: vswrJSON{a.VSWR, a.ReferenceOhm},
 		DirectivityDBi: a.DirectivityDBi, GainDBi: a.GainDBi, Efficiency: a.Efficiency, Segments: a.Segments, Source: a.Source,
 		Cut: []cutJSON{}, Warnings: append([]string{}, a.Notes...),
@@ -105,7 +109,7 @@ func AntennaJSON(w io.Writer, a *plan.AntennaResult) error {
 			out.Pattern = append(out.Pattern, patternJSON{az, el, g.v, g.h})
 		}
 	}
-	return indented(w, out)
+	return out
 }
 
 func ohm(z complex128) ohmJSON { return ohmJSON{real(z), imag(z)} }

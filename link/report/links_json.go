@@ -8,7 +8,9 @@ import (
 	"fellreach/link/plan"
 )
 
-type linksJSON struct {
+// Links is the links of a plan with their budgets, as JSON holds them: in full precision, the chance
+// a fraction of one.
+type Links struct {
 	Title string     `json:"title"`
 	Links []linkJSON `json:"links"`
 	Notes []string   `json:"notes,omitempty"`
@@ -66,14 +68,16 @@ type lineJSON struct {
 	Source  string    `json:"source"`
 }
 
-// LinksJSON writes the links of a plan with their budgets, in full precision. The chance is a
-// fraction of one.
-func LinksJSON(w io.Writer, r *plan.Result) error {
-	out := linksJSON{Title: r.Title, Links: make([]linkJSON, len(r.Links)), Notes: r.Notes}
+// LinksJSON writes the links of a plan as [LinksOf] gives them.
+func LinksJSON(w io.Writer, r *plan.Result) error { return indented(w, LinksOf(r)) }
+
+// LinksOf returns the links of a plan as JSON holds them.
+func LinksOf(r *plan.Result) Links {
+	out := Links{Title: r.Title, Links: make([]linkJSON, len(r.Links)), Notes: r.Notes}
 	for i, l := range r.Links {
 		out.Links[i] = linkOf(l)
 	}
-	return indented(w, out)
+	return out
 }
 
 func linkOf(r *link.Result) linkJSON {

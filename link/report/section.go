@@ -13,7 +13,9 @@ import (
 	"github.com/paulmach/orb/geojson"
 )
 
-type sectionJSON struct {
+// Section is a path as JSON holds it: in full precision, horizon distances counted from each end,
+// zones by the codes of Rec. ITU-R P.1812.
+type Section struct {
 	From       string             `json:"from"`
 	To         string             `json:"to"`
 	DistanceKm float64            `json:"distance_km"`
@@ -48,11 +50,13 @@ type horizonJSON struct {
 	ToKm         float64 `json:"to_km"`
 }
 
-// SectionJSON writes a section in full precision. Horizon distances count from each end; zones
-// are those of Rec. ITU-R P.1812.
-func SectionJSON(w io.Writer, s *link.Section) error {
+// SectionJSON writes a section as [SectionOf] gives it.
+func SectionJSON(w io.Writer, s *link.Section) error { return indented(w, SectionOf(s)) }
+
+// SectionOf returns a section as JSON holds it.
+func SectionOf(s *link.Section) Section {
 	p := s.Profile
-	out := sectionJSON{
+	out := Section{
 		From: s.Link.From.Name, To: s.Link.To.Name, DistanceKm: p.LengthKm(), AzimuthDeg: p.AzDeg, BackAzDeg: p.BackAzDeg, StepM: stepM(s),
 		Frequency: s.FreqHz, RadiusKm: s.RadiusKm,
 		Clearance: clearanceJSON{s.Clearance.WorstRatio, s.Clearance.AtKm, s.Clearance.NeededRatio},
@@ -62,7 +66,7 @@ func SectionJSON(w io.Writer, s *link.Section) error {
 	for i := range p.DistKm {
 		out.Points = append(out.Points, sectionPointJSON{p.DistKm[i], p.Points[i].Lon(), p.Points[i].Lat(), p.AslM[i], p.CoverM[i], int(p.Zone[i]), s.RayM[i], s.BulgeM[i], s.Fresnel1M[i]})
 	}
-	return indented(w, out)
+	return out
 }
 
 func stepM(s *link.Section) float64 {
