@@ -18,6 +18,8 @@ type Disc struct {
 	Heights []Layer
 	// Cover tells what stands on the ground; nil where nothing is known.
 	Cover *CoverLayer
+	// Coast tells, in the cover layer's cells, where low land is coastal.
+	Coast *Coast
 	// BeyondSea says that outside all rasters lies the sea.
 	BeyondSea bool
 	// Places leads from the plane to longitude and latitude.
@@ -98,7 +100,17 @@ func (d *Disc) Point(east, north float64) (aslM, coverM float64, zone Zone) {
 		return aslM, 0, Inland
 	}
 	coverM, zone = d.Cover.at(d.Cover.Place.At(east, north))
-	return aslM, coverM, zone
+	return aslM, coverM, d.Coastal(zone, aslM, east, north)
+}
+
+// Coastal returns the zone of a place on the plane, its ground aslM metres above sea level (NaN
+// where that is not known), from the zone of its cover.
+func (d *Disc) Coastal(zone Zone, aslM, east, north float64) Zone {
+	if d.Coast == nil || !zone.IsCoastalNearSea(aslM) {
+		return zone
+	}
+	col, row := d.Cover.Place.At(east, north)
+	return d.Coast.Zone(zone, aslM, col, row)
 }
 
 func (c *CoverLayer) at(col, row float64) (heightM float64, zone Zone) {
@@ -138,6 +150,13 @@ func (d *Disc) Sample(r Ray, aslM, coverM []float64, zones []Zone) {
 		if aslM[i], sea = d.Height(r.East+at*r.StepEast, r.North+at*r.StepNorth); sea {
 			coverM[i], zones[i] = 0, Sea
 		}
+	}
+	if d.Coast == nil {
+		return
+	}
+	for i, zone := range zones {
+		at := float64(i)
+		zones[i] = d.Coastal(zone, aslM[i], r.East+at*r.StepEast, r.North+at*r.StepNorth)
 	}
 }
 

@@ -18,6 +18,7 @@ var rooms = map[string][]string{
 	"link/propagation": {"terrain"},
 	"link/noise":       {},
 	"link":             {"antenna", "terrain", "link/propagation", "link/noise"},
+	"link/coverage":    {"antenna", "terrain", "terrain/raster", "link", "link/propagation", "link/noise"},
 	"link/plan":        {"antenna", "antenna/wire", "terrain", "terrain/raster", "link", "link/propagation", "link/noise"},
 	"link/report":      {"antenna", "antenna/wire", "terrain", "terrain/raster", "link", "link/propagation", "link/plan"},
 	"cmd/fellreach":    nil, // everything

@@ -18,11 +18,11 @@ func BenchmarkSweep(b *testing.B) {
 			if err != nil {
 				b.Fatal(err)
 			}
-			brief := propagation.NewBrief(450e6, 325, propagation.Region{MostKm: 20, LeastLatDeg: 47}, timeRequests[:1])
+			brief := propagation.NewBrief(propagation.P1812, 450e6, 325, propagation.Region{MostKm: 20, LeastLatDeg: 47}, timeRequests[:1])
 			cells := make([]float32, frame.Cols*frame.Rows)
 			b.ReportAllocs()
 			for b.Loop() {
-				err := s.run(context.Background(), func() func(*Cell) {
+				_, err := s.run(context.Background(), func() func(*Cell) {
 					out := make([]propagation.Combined, 1)
 					return func(c *Cell) {
 						brief.Loss(&c.Outline, c, 1, out)

@@ -36,9 +36,9 @@ func sweepAll(t testing.TB, s *sweep, a asking, every int) map[int]foundCell {
 	var mu sync.Mutex
 	var briefs []*propagation.Brief
 	for _, f := range a.freqs {
-		briefs = append(briefs, propagation.NewBrief(f, madeN0, propagation.Region{MostKm: 20, LeastLatDeg: 47}, timeRequests))
+		briefs = append(briefs, propagation.NewBrief(propagation.P1812, f, madeN0, propagation.Region{MostKm: 20, LeastLatDeg: 47}, timeRequests))
 	}
-	err := s.run(context.Background(), func() func(*Cell) {
+	_, err := s.run(context.Background(), func() func(*Cell) {
 		return func(c *Cell) {
 			if c.Index%every != 0 {
 				return
@@ -69,7 +69,7 @@ func compare(t *testing.T, s *sweep, a asking, index int, f foundCell) (worst fl
 		t.Fatalf("cell %d has a loss and no profile", index)
 	}
 	for i, freq := range a.freqs {
-		p := s.statedPath(profile, lat, freq, a.share, madeN0)
+		p := s.path(profile, lat, freq, a.share, madeN0)
 		for k, r := range timeRequests {
 			p.TimePct = r.TimePct
 			method := propagation.P1812WithoutDucting

@@ -52,8 +52,27 @@ func (s *sweep) statedProfile(index int) (p terrain.Profile, latDeg float64, ok 
 	return p.Cleared(s.ClearingM, 0), latDeg, true
 }
 
-// statedPath is the path over a stated profile, at the median of time and locations.
-func (s *sweep) statedPath(p terrain.Profile, latDeg, freqHz, verticalShare, n0 float64) propagation.Path {
+// ownProfile lays out the profile of a cell as a link would take it: equal intervals of at most the
+// step, on the cell's own bearing; ok is false where it is not known.
+func (s *sweep) ownProfile(index int) (p terrain.Profile, latDeg float64, ok bool) {
+	east, north := s.frame.Plane.At(float64(index%s.frame.Cols), float64(index/s.frame.Cols))
+	distM := max(math.Hypot(east, north), nearestM)
+	n := int(math.Ceil(distM / s.stepM))
+	p = terrain.Profile{DistKm: make([]float64, n+1), AslM: make([]float64, n+1), CoverM: make([]float64, n+1), Zone: make([]terrain.Zone, n+1)}
+	s.disc.Sample(terrain.Ray{StepEast: east / float64(n), StepNorth: north / float64(n)}, p.AslM, p.CoverM, p.Zone)
+	p.AslM[0], p.Zone[0] = s.site.groundM, s.site.zone
+	for i := range p.DistKm {
+		p.DistKm[i] = distM / 1000 * float64(i) / float64(n)
+	}
+	if _, err := terrain.Bridge(p.DistKm, p.AslM, nil, nil, s.BridgeM); err != nil {
+		return p, 0, false
+	}
+	_, latDeg = s.disc.Places.At(east/2, north/2)
+	return p.Cleared(s.ClearingM, 0), latDeg, true
+}
+
+// path is the path over a profile, at the median of time and locations.
+func (s *sweep) path(p terrain.Profile, latDeg, freqHz, verticalShare, n0 float64) propagation.Path {
 	path := propagation.Path{
 		Profile: p, FreqHz: freqHz, TxAglM: s.AglM, RxAglM: s.FarAglM, VerticalShare: verticalShare,
 		DeltaN: s.DeltaN, N0: n0, TimePct: 50, LocationPct: 50, LatDeg: latDeg, TxCoastKm: noCoastKm, RxCoastKm: noCoastKm,

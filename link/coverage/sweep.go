@@ -87,12 +87,12 @@ func newSweep(s Spec, disc *terrain.Disc, frame *raster.Frame) (*sweep, error) {
 // run visits every cell within range whose profile is known, on all cores. visitor makes the function
 // of one goroutine; a cell is visited once, and by one goroutine. progress, if not nil, is told how
 // many radials are done.
-func (s *sweep) run(ctx context.Context, visitor func() func(*Cell), progress func(done, total int)) error {
+func (s *sweep) run(ctx context.Context, visitor func() func(*Cell), progress func(done, total int)) (tally, error) {
 	p, err := s.divide(ctx)
 	if err != nil {
-		return err
+		return tally{}, err
 	}
-	var next, done atomic.Int64
+	var next, done, visited atomic.Int64
 	work, ctx := errgroup.WithContext(ctx)
 	for range s.workers {
 		work.Go(func() error {
@@ -105,25 +105,31 @@ func (s *sweep) run(ctx context.Context, visitor func() func(*Cell), progress fu
 				if err := ctx.Err(); err != nil {
 					return fmt.Errorf("stopped at radial %d of %d: %w", radial, s.radials, err)
 				}
-				w.visit(radial, p.cells[p.start[radial]:p.start[radial+1]], visit)
+				visited.Add(w.visit(radial, p.cells[p.start[radial]:p.start[radial+1]], visit))
 				if count := int(done.Add(1)); progress != nil {
 					progress(count, s.radials)
 				}
 			}
 		})
 	}
-	return work.Wait()
+	err = work.Wait()
+	return tally{len(p.cells), int(visited.Load())}, err
 }
 
-// visit walks one radial and visits its cells on the way.
-func (w *walk) visit(radial int, cells []int32, visit func(*Cell)) {
+// A tally counts the cells within range, and those of them that were visited.
+type tally struct{ cells, visited int }
+
+// visit walks one radial, visits its cells on the way and returns how many have a profile.
+func (w *walk) visit(radial int, cells []int32, visit func(*Cell)) (visited int64) {
 	if len(cells) == 0 {
-		return
+		return 0
 	}
 	w.start(radial)
 	for _, p := range w.list.of(w.sweep, cells) {
 		if w.cell.set(p) {
 			visit(&w.cell)
+			visited++
 		}
 	}
+	return visited
 }

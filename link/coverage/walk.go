@@ -52,7 +52,7 @@ func (w *walk) start(radial int) {
 	for i := 1; i < len(w.coverM) && float64(i)*w.stepM < w.ClearingM; i++ {
 		w.coverM[i] = 0
 	}
-	w.known = w.bridge()
+	w.known = w.bridge(sin*w.stepM, cos*w.stepM)
 	w.pushed, w.wooded, w.blocked = 0, false, false
 	w.bare.start(w.ae, w.site.antennaM)
 	if w.needsBeta {
@@ -76,7 +76,8 @@ func (w *walk) noteSea(first, last *float64, d float64, zone terrain.Zone) {
 }
 
 // bridge fills voids that may be crossed and returns the last point before the first that may not.
-func (w *walk) bridge() int {
+// east and north lead from each point to the next.
+func (w *walk) bridge(east, north float64) int {
 	for i := 1; i < len(w.aslM); i++ {
 		if !math.IsNaN(w.aslM[i]) {
 			continue
@@ -92,6 +93,7 @@ func (w *walk) bridge() int {
 		from, rise := w.aslM[i-1], (w.aslM[next]-w.aslM[i-1])/float64(next-i+1)
 		for k := i; k < next; k++ {
 			w.aslM[k] = from + rise*float64(k-i+1)
+			w.zones[k] = w.disc.Coastal(w.zones[k], w.aslM[k], float64(k)*east, float64(k)*north)
 		}
 	}
 	return len(w.aslM) - 1

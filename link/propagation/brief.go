@@ -9,10 +9,11 @@ type Request struct {
 	Ducting bool
 }
 
-// A Brief evaluates P.1812 at one frequency for very many paths that are given as outlines of
-// their ground: the formulas of [P1812], without terms and notes. It leaves out what cannot move
+// A Brief evaluates a method at one frequency for very many paths that are given as outlines of
+// their ground: the formulas of [P1812], [P526] or [FreeSpace], without terms and notes. It leaves out what cannot move
 // the loss by 1e-7 dB. It checks nothing; many goroutines may use it at once.
 type Brief struct {
+	method    string
 	f, lambda float64
 	lbfs1     float64 // free space over 1 km
 	coupling  float64 // the part of the ducting loss that all paths share, less 20 log(1 km)
@@ -26,13 +27,17 @@ type Brief struct {
 // nearer to the equator.
 type Region struct{ MostKm, LeastLatDeg float64 }
 
-// NewBrief prepares for requests at freqHz, 30e6 to 6e9 Hz, in air of sea-level refractivity n0,
-// N-units, on the paths of a region.
-func NewBrief(freqHz, n0 float64, within Region, requests []Request) *Brief {
+// NewBrief prepares one of this package's methods for requests at freqHz, 30e6 to 6e9 Hz, in air of
+// sea-level refractivity n0, N-units, on the paths of a region. Methods other than [P1812] know no
+// time and answer all requests alike.
+func NewBrief(m Model, freqHz, n0 float64, within Region, requests []Request) *Brief {
 	f := freqHz / 1e9
 	b := &Brief{
-		f: f, lambda: diffractionWavelengthM(freqHz), lbfs1: lineOfSightDB(f, 1), coupling: couplingBasisDB(f),
+		method: m.Name, f: f, lambda: diffractionWavelengthM(freqHz), lbfs1: lineOfSightDB(f, 1), coupling: couplingBasisDB(f),
 		earth: NewSmoothEarth(freqHz, 1), requests: requests,
+	}
+	if m.Name != P1812.Name {
+		b.lbfs1 = FreeSpaceDB(freqHz, 1000)
 	}
 	for _, r := range requests {
 		b.lbs1 = append(b.lbs1, scatterBasisDB(f, n0, r.TimePct))
@@ -67,10 +72,12 @@ func (b *Brief) Loss(o *Outline, g Ground, verticalShare float64, out []Combined
 	p.earth.verticalShare = verticalShare
 	rise := (o.Hts - o.Hrs) / 1000
 	p.lbfs = b.lbfs1 + 10*math.Log10(o.LengthKm*o.LengthKm+rise*rise)
-	if o.LengthKm < leastKm {
-		for i := range out {
-			out[i] = Combined{p.lbfs, p.lbfs}
-		}
+	switch {
+	case b.method == FreeSpace.Name:
+		p.sameForAll(out, Combined{math.Inf(-1), p.lbfs})
+		return
+	case b.method == P1812.Name && o.LengthKm < leastKm: // whatever the locations
+		p.sameForAll(out, Combined{p.lbfs, math.Inf(-1)})
 		return
 	}
 	_, _, sea := g.Zones()
@@ -79,9 +86,19 @@ func (b *Brief) Loss(o *Outline, g Ground, verticalShare float64, out []Combined
 	p.smooth = lineOfSums(o.V1, o.V2, o.LengthKm).
 		lowered(obstructions{o.Hobs, o.AlphaT, o.AlphaR}).limited(o.TxGroundM, o.RxGroundM)
 	p.ld50 = p.diffractionDB(o.Slopes, o.Ae)
+	if b.method == P526.Name {
+		p.sameForAll(out, Combined{math.Inf(-1), p.lbfs + p.ld50})
+		return
+	}
 	logD := math.Log10(o.LengthKm)
 	for i := range b.requests {
 		out[i] = p.request(i, logD)
+	}
+}
+
+func (p *briefPath) sameForAll(out []Combined, c Combined) {
+	for i := range out {
+		out[i] = c
 	}
 }
 

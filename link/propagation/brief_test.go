@@ -74,7 +74,7 @@ func TestBriefIsTheFullMethod(t *testing.T) {
 			t.Fatal(err)
 		}
 		o, out := outlineOf(&p), make([]Combined, 2)
-		b := NewBrief(p.FreqHz, p.N0, Region{MostKm: p.LengthKm(), LeastLatDeg: p.LatDeg}, []Request{{p.TimePct, true}, {p.TimePct, false}})
+		b := NewBrief(P1812, p.FreqHz, p.N0, Region{MostKm: p.LengthKm(), LeastLatDeg: p.LatDeg}, []Request{{p.TimePct, true}, {p.TimePct, false}})
 		b.Loss(&o, searched{&p}, p.VerticalShare, out)
 		lloc := LocationDB(p.LocationPct, p.LocationSpreadDB)
 		for i, want := range []float64{full.DB, without.DB} {
@@ -121,4 +121,26 @@ func TestLeastDuctTime(t *testing.T) {
 			}
 		}
 	}
+}
+
+// Source: the full forms of the other methods.
+func TestBriefOtherMethods(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		p := drawPath(t)
+		if len(p.DistKm) < 3 {
+			t.Skip("no interior point")
+		}
+		o := outlineOf(&p)
+		for _, m := range []Model{FreeSpace, P526} {
+			full, err := m.Loss(p)
+			if err != nil {
+				t.Fatal(err)
+			}
+			out := make([]Combined, 1)
+			NewBrief(m, p.FreqHz, p.N0, Region{MostKm: p.LengthKm()}, []Request{{50, true}}).Loss(&o, searched{&p}, p.VerticalShare, out)
+			if got := out[0].LossDB(0); !(math.Abs(got-full.DB) <= 1e-9) {
+				t.Errorf("%s: brief %.12g, full %.12g dB", m.Name, got, full.DB)
+			}
+		}
+	})
 }

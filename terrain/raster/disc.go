@@ -53,8 +53,16 @@ func (g *Ground) Disc(site orb.Point, radiusM float64) (*terrain.Disc, error) {
 	if err != nil {
 		return nil, err
 	}
-	d.Cover, err = g.coverLayer(place)
-	return d, err
+	var first cellWindow
+	if d.Cover, first, err = g.coverLayer(place); err != nil || d.Cover == nil {
+		return d, err
+	}
+	if d.Coast, err = g.Coast(d.Places.Nodes()); err != nil {
+		return nil, err
+	}
+	d.Coast.FirstCol -= first.col
+	d.Coast.FirstRow -= first.row
+	return d, nil
 }
 
 // nodeSpacingM is the distance of the nodes of a disc's meshes.
@@ -173,10 +181,10 @@ func (f *file) readStrips(w cellWindow, use func(strip *terrain.Grid, row int) e
 }
 
 // coverLayer reads the part of the cover raster that a mesh covers, nil where there is none.
-func (g *Ground) coverLayer(place *terrain.Mesh) (*terrain.CoverLayer, error) {
+func (g *Ground) coverLayer(place *terrain.Mesh) (*terrain.CoverLayer, cellWindow, error) {
 	w, ok := g.cover.windowOf(place.Nodes())
 	if !ok {
-		return nil, nil
+		return nil, w, nil
 	}
 	layer := &terrain.CoverLayer{Cols: w.cols, Rows: w.rows, Classes: []terrain.Class{{Zone: terrain.Inland}}, Place: place}
 	index := map[float32]uint8{}
@@ -198,7 +206,7 @@ func (g *Ground) coverLayer(place *terrain.Mesh) (*terrain.CoverLayer, error) {
 		return nil
 	})
 	w.moveTo(place)
-	return layer, err
+	return layer, w, err
 }
 
 // classNumber returns the number in the layer of what a cell's value stands for, 0 for a void.

@@ -1,0 +1,131 @@
+package coverage
+
+import (
+	"cmp"
+	"context"
+	"fmt"
+	"math"
+	"slices"
+	"sync"
+
+	"fellreach/link"
+	"fellreach/terrain"
+
+	"golang.org/x/sync/errgroup"
+)
+
+// A Check is how far the map is from other evaluations of its cells, on a sample of them.
+type Check struct {
+	Samples int `json:"samples"`
+	// SweepMaxDB is the largest difference between the loss of the sweep and the direct evaluation
+	// of the very same profile.
+	SweepMaxDB float64 `json:"sweep_max_db"`
+	// The others are differences between the loss of a cell and that of its own profile as a link
+	// would take it, in equal steps on its own bearing: the map's sampling error.
+	CellMedianDB float64 `json:"cell_median_db"`
+	CellP95DB    float64 `json:"cell_p95_db"`
+	CellMaxDB    float64 `json:"cell_max_db"`
+}
+
+// mostSweepDB is the promise of the sweep.
+const mostSweepDB = 1e-6
+
+// A sampling keeps a part of the cells for the check, the same ones in every run.
+type sampling struct {
+	sweep *sweep
+	every uint32
+
+	mutex sync.Mutex
+	kept  []sampledCell
+}
+
+type sampledCell struct {
+	index        int
+	lossDB       float64
+	verticalPart float64
+}
+
+// wantedSamples is about how many cells are looked at; the least that is promised is 1,000, where
+// the map has so many.
+const wantedSamples = 1500
+
+func newSampling(s *sweep) *sampling {
+	cells := math.Pi * s.RangeM * s.RangeM / (s.frame.CellM * s.frame.CellM)
+	return &sampling{sweep: s, every: uint32(max(1, cells/wantedSamples))}
+}
+
+// loss keeps a cell if it is one of the sample.
+func (s *sampling) loss(c *Cell, b cellBudget) {
+	if scatter := uint32(c.Index) * 2654435761; scatter>>4%s.every != 0 { // Knuth's multiplicative hash
+		return
+	}
+	s.mutex.Lock()
+	s.kept = append(s.kept, sampledCell{c.Index, b.lossDB, b.verticalPart})
+	s.mutex.Unlock()
+}
+
+// check evaluates the sample. A sweep that is off is an error.
+func (s *sampling) check(ctx context.Context, t *Task, places *link.Places) (Check, error) {
+	slices.SortFunc(s.kept, func(a, b sampledCell) int { return cmp.Compare(a.index, b.index) })
+	sweepDB, cellDB := make([]float64, len(s.kept)), make([]float64, len(s.kept))
+	work, ctx := errgroup.WithContext(ctx)
+	work.SetLimit(s.sweep.workers)
+	const batch = 50
+	for from := 0; from < len(s.kept); from += batch {
+		work.Go(func() error {
+			if ctx.Err() != nil {
+				return ctx.Err()
+			}
+			for i := from; i < min(from+batch, len(s.kept)); i++ {
+				var err error
+				if sweepDB[i], cellDB[i], err = s.compare(t, places.Directions[0].FreqHz, s.kept[i]); err != nil {
+					return err
+				}
+			}
+			return nil
+		})
+	}
+	if err := work.Wait(); err != nil {
+		return Check{}, err
+	}
+	return summary(sweepDB, cellDB)
+}
+
+// compare evaluates a cell on the profile of the sweep, and on its own. Where the latter crosses a
+// void the difference is NaN.
+func (s *sampling) compare(t *Task, freqHz float64, c sampledCell) (sweepDB, cellDB float64, err error) {
+	evaluate := func(p terrain.Profile, latDeg float64) (float64, error) {
+		loss, err := t.Conditions.Method.Loss(s.sweep.path(p, latDeg, freqHz, c.verticalPart, t.Conditions.N0))
+		return math.Abs(loss.DB - c.lossDB), err
+	}
+	p, latDeg, ok := s.sweep.statedProfile(c.index)
+	if !ok {
+		return 0, 0, fmt.Errorf("coverage: cell %d has a loss without a profile", c.index)
+	}
+	if sweepDB, err = evaluate(p, latDeg); err != nil {
+		return 0, 0, err
+	}
+	if p, latDeg, ok = s.sweep.ownProfile(c.index); !ok {
+		return sweepDB, math.NaN(), nil
+	}
+	cellDB, err = evaluate(p, latDeg)
+	return sweepDB, cellDB, err
+}
+
+func summary(sweepDB, cellDB []float64) (Check, error) {
+	c := Check{Samples: len(sweepDB)}
+	if c.Samples == 0 {
+		return c, nil
+	}
+	c.SweepMaxDB = slices.Max(sweepDB)
+	cellDB = slices.DeleteFunc(cellDB, math.IsNaN)
+	if len(cellDB) > 0 {
+		slices.Sort(cellDB)
+		at := func(share float64) float64 { return cellDB[int(share*float64(len(cellDB)-1))] }
+		c.CellMedianDB, c.CellP95DB, c.CellMaxDB = at(0.5), at(0.95), at(1)
+	}
+	if !(c.SweepMaxDB <= mostSweepDB) {
+		return c, fmt.Errorf("the map failed its self-check: the sweep is off by %.3g dB from the direct evaluation of the same profiles, more than %g dB; this is a fault of the program", c.SweepMaxDB, float64(mostSweepDB))
+	}
+	return c, nil
+}
