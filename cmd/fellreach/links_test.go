@@ -205,11 +205,9 @@ func TestLinksStatus(t *testing.T) {
 
 // The same plan gives the same bytes, however the work is shared out.
 func TestLinksRepeat(t *testing.T) {
-	for _, format := range []string{"table", "json", "csv", "geojson"} {
-		one := succeeds(t, exitLinks, "links", demo(t), "--format", format)
-		if two := succeeds(t, exitLinks, "links", demo(t), "--format", format); one != two {
-			t.Errorf("%s differs between two runs", format)
-		}
+	one := succeeds(t, exitLinks, "links", demo(t), "--format", "json") // in full precision
+	if two := succeeds(t, exitLinks, "links", demo(t), "--format", "json"); one != two {
+		t.Error("two runs differ")
 	}
 }
 

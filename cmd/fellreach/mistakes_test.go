@@ -36,7 +36,7 @@ type mistake struct {
 	name string
 	// prepare spoils the folder that holds plan.yaml, ground.tif and profile.csv; nil leaves it.
 	prepare func(t *testing.T, folder string)
-	// args is the command line; FOLDER/ in it stands for the folder.
+	// args is the command line, FOLDER standing for the folder, _ for a space within an argument.
 	args   string
 	status int
 	want   string // in the error, FOLDER/ left out of it
@@ -86,8 +86,7 @@ func flatGround() raster.GeoTIFF {
 
 const onPlan = "links FOLDER/plan.yaml -o FOLDER/out"
 
-// mistakes are the user's; each row but the last few stands for a way a plan, a file or a command
-// line goes wrong.
+// mistakes are the ways in which a plan, a raster, a profile or a command line goes wrong.
 var mistakes = slices.Concat(planMistakes, groundMistakes, lossMistakes, usageMistakes)
 
 var planMistakes = []mistake{
