@@ -21,18 +21,25 @@ type Network struct {
 	Links      []*link.Link             // in the order of the plan
 	Conditions link.Conditions
 
-	plan   *Plan
-	places []orb.Point // of the plan's sites
+	plan    *Plan
+	places  []orb.Point // of the plan's sites
+	spec    raster.Spec
+	designs map[string]built // by the antenna's name
 }
 
 // Open opens the plan's rasters and resolves its names. Errors are [Errors] where they have a
 // place in the plan. The caller closes the network.
-func (p *Plan) Open() (*Network, error) {
+func (p *Plan) Open() (*Network, error) { return p.open(nil) }
+
+// open resolves the plan, on what a network opened before has in common with it.
+func (p *Plan) open(before *Network) (*Network, error) {
 	n := &Network{
 		Title:      p.Title,
 		Stations:   map[string]*link.Station{},
 		Conditions: p.conditions(),
 		plan:       p,
+		spec:       p.groundSpec(),
+		designs:    p.designsOf(before),
 	}
 	c := &checker{Plan: p}
 	n.locate(c)
@@ -41,14 +48,15 @@ func (p *Plan) Open() (*Network, error) {
 	if len(c.errs) > 0 {
 		return nil, c.errs.sorted()
 	}
-	var err error
-	if n.Ground, err = raster.Open(p.groundSpec()); err != nil {
+	if err := n.openGround(before); err != nil {
 		return nil, c.at("ground", err)
 	}
 	n.checkGround(c)
 	n.findCanopies(c)
 	if len(c.errs) > 0 {
-		n.Close()
+		if !n.SharesGround(before) {
+			n.Close()
+		}
 		return nil, c.errs.sorted()
 	}
 	return n, nil

@@ -11,31 +11,30 @@ import (
 
 // addStations resolves every station that has a radio and an antenna.
 func (n *Network) addStations(c *checker) {
-	designs := map[string]built{}
 	for i, s := range c.Sites {
 		path := fmt.Sprintf("sites[%d]", i)
 		if len(s.Stations) == 0 {
-			n.addStation(c, designs, path, s.Name, i, s.Station)
+			n.addStation(c, path, s.Name, i, s.Station)
 		}
 		for name, st := range sorted(s.Stations) {
-			n.addStation(c, designs, path+".stations."+name, s.Name+"/"+name, i, st)
+			n.addStation(c, path+".stations."+name, s.Name+"/"+name, i, st)
 		}
 	}
 }
 
-func (n *Network) addStation(c *checker, designs map[string]built, path, name string, siteIndex int, st Station) {
+func (n *Network) addStation(c *checker, path, name string, siteIndex int, st Station) {
 	if st.Radio == "" || st.Antenna == nil {
 		return
 	}
 	use := st.Antenna
-	if _, known := designs[use.Use]; !known {
+	if _, known := n.designs[use.Use]; !known {
 		d, err := c.built(use.Use)
 		if err != nil {
 			c.refuse("antennas."+use.Use, err)
 		}
-		designs[use.Use] = d
+		n.designs[use.Use] = d
 	}
-	s, design := c.Sites[siteIndex], designs[use.Use]
+	s, design := c.Sites[siteIndex], n.designs[use.Use]
 	out := &link.Station{
 		Name: name, Order: siteIndex, At: n.places[siteIndex],
 		ClearingM:     float64(*s.Clearing),

@@ -1,0 +1,57 @@
+package plan
+
+import (
+	"maps"
+	"reflect"
+
+	"fellreach/terrain/raster"
+
+	"github.com/paulmach/orb"
+)
+
+// OpenAfter opens the plan as [Plan.Open] does, on the ground of a network opened before where both
+// ask for the same ([Network.SharesGround] tells), and with the antennas solved there that both
+// describe alike. The network before must still be open.
+func (p *Plan) OpenAfter(before *Network) (*Network, error) { return p.open(before) }
+
+// SharesGround tells whether two networks stand on one ground: then only one of them is closed.
+func (n *Network) SharesGround(other *Network) bool { return other != nil && n.Ground == other.Ground }
+
+// Place returns the place of a site, by its index in the plan.
+func (n *Network) Place(site int) orb.Point { return n.places[site] }
+
+// Plan returns the plan that the network was opened from.
+func (n *Network) Plan() *Plan { return n.plan }
+
+func (n *Network) openGround(before *Network) (err error) {
+	if before != nil && reflect.DeepEqual(n.spec, before.spec) {
+		n.Ground = before.Ground
+		return nil
+	}
+	n.Ground, err = raster.Open(n.spec)
+	return err
+}
+
+// designsOf returns the antennas of a network before that the plan describes alike. What they have
+// solved is remembered in them.
+func (p *Plan) designsOf(before *Network) map[string]built {
+	if before == nil {
+		return map[string]built{}
+	}
+	designs := maps.Clone(before.designs)
+	maps.DeleteFunc(designs, func(name string, _ built) bool { return !p.sameAntenna(before.plan, name) })
+	return designs
+}
+
+// sameAntenna tells whether two plans describe an antenna alike, down to what it is a stack of.
+func (p *Plan) sameAntenna(q *Plan, name string) bool {
+	a, inP := p.Antennas[name]
+	b, inQ := q.Antennas[name]
+	if !inP || !inQ || !reflect.DeepEqual(a, b) {
+		return false
+	}
+	if stack, ok := a.Spec.(*Stack); ok {
+		return p.sameAntenna(q, stack.Of)
+	}
+	return true
+}
