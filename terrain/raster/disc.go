@@ -16,22 +16,18 @@ const MaxDiscCells = 400_000_000
 // needed. Implausible heights are an error, as are cover classes that the table lacks.
 //
 // Places come from PROJ at nodes no farther apart than 1 km; between them they are interpolated,
-// which is off by less than 0.1 m anywhere that is not within a degree of a pole (tested).
+// which is off by less than 0.2 m up to 80 degrees of latitude (tested).
 func (g *Ground) Disc(site orb.Point, radiusM float64) (*terrain.Disc, error) {
 	if err := checkPlace(site); err != nil {
 		return nil, err
 	}
 	d := &terrain.Disc{Site: site, RadiusM: radiusM, BeyondSea: g.spec.BeyondSea}
-	lay := func(fill func([]orb.Point) error) (*terrain.Mesh, error) {
-		half := radiusM + nodeSpacingM(radiusM)
-		return terrain.NewMesh(orb.Bound{Min: orb.Point{-half, -half}, Max: orb.Point{half, half}}, nodeSpacingM(radiusM), fill)
-	}
 	var err error
-	if d.Places, err = lay(func(nodes []orb.Point) error { return fromPlane(site, nodes) }); err != nil {
+	if d.Places, err = discMesh(radiusM, func(nodes []orb.Point) error { return fromPlane(site, nodes) }); err != nil {
 		return nil, err
 	}
 	for _, f := range g.elevation {
-		place, err := lay(func(nodes []orb.Point) error { return f.toCells(site, d.Places.Nodes(), nodes) })
+		place, err := f.discMesh(d)
 		if err != nil {
 			return nil, err
 		}
@@ -49,7 +45,7 @@ func (g *Ground) Disc(site orb.Point, radiusM float64) (*terrain.Disc, error) {
 	if g.cover == nil {
 		return d, nil
 	}
-	place, err := lay(func(nodes []orb.Point) error { return g.cover.toCells(site, d.Places.Nodes(), nodes) })
+	place, err := g.cover.discMesh(d)
 	if err != nil {
 		return nil, err
 	}
@@ -67,6 +63,17 @@ func (g *Ground) Disc(site orb.Point, radiusM float64) (*terrain.Disc, error) {
 
 // nodeSpacingM is the distance of the nodes of a disc's meshes.
 func nodeSpacingM(radiusM float64) float64 { return min(max(radiusM/64, 50), 1000) }
+
+// discMesh lays a mesh over the plane of a disc.
+func discMesh(radiusM float64, fill func([]orb.Point) error) (*terrain.Mesh, error) {
+	half := radiusM + nodeSpacingM(radiusM)
+	return terrain.NewMesh(orb.Bound{Min: orb.Point{-half, -half}, Max: orb.Point{half, half}}, nodeSpacingM(radiusM), fill)
+}
+
+// discMesh leads from the plane of a disc to the file's cells.
+func (f *file) discMesh(d *terrain.Disc) (*terrain.Mesh, error) {
+	return discMesh(d.RadiusM, func(nodes []orb.Point) error { return f.toCells(d.Site, d.Places.Nodes(), nodes) })
+}
 
 // fromPlane turns positions of the plane into longitude and latitude, in place.
 func fromPlane(site orb.Point, nodes []orb.Point) error {
