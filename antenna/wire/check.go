@@ -253,7 +253,7 @@ func (s Structure) checkMast(i int) (doubts []string, err error) {
 		return nil, fmt.Errorf("wire %d runs into the mast: its axis is %.3g m from the mast's surface", i+1, gapM)
 	case gapM < refusedGap*thin:
 		return nil, fmt.Errorf("wire %d is %.3g m from the mast's surface: at least %d radii (%.3g m) is needed", i+1, gapM, refusedGap, refusedGap*thin)
-	case gapM < doubtfulGap*thin || gapM < s.Mast.radiusM():
+	case gapM < doubtfulGap*thin:
 		doubts = append(doubts, fmt.Sprintf("wire %d is only %.3g m from the mast's surface: current crowds to one side, which is not modelled", i+1, gapM))
 	}
 	return doubts, nil

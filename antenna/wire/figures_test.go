@@ -150,24 +150,7 @@ func TestEfficiencyOfMetals(t *testing.T) {
 	}
 }
 
-// Source: rows of the reference tables typed, each solved there in five ways (two bases, three
-// densities, two kernels), from whose spread the tolerances come.
-func TestImpedancesOfRods(t *testing.T) {
-	for _, tc := range []struct{ lengthM, radiusM, at, r, x, tolR, tolX float64 }{
-		{0.46, 1e-5, 0.5, 60.31, -100.8, 0.61, 1.1},
-		{0.5, 0.001, 0.5, 84.97, 44.37, 0.93, 1.4},
-		{0.48, 0.003, 0.5, 77.97, 13.93, 1.4, 1.6},
-		{1.5, 0.001, 0.5, 120.1, 47.58, 1.3, 1.3},
-		{0.47, 0.001, 0.25, 121.4, -33.43, 1.9, 2.1},
-		{0.95, 0.001, 0.2, 81.83, -52.17, 1.5, 2},
-	} {
-		z := dipoleImpedanceOhm(t, tc.lengthM, tc.radiusM, tc.at)
-		near(t, "R of "+format(tc.lengthM)+" wl", real(z), tc.r, tc.tolR)
-		near(t, "X of "+format(tc.lengthM)+" wl", imag(z), tc.x, tc.tolX)
-	}
-}
-
-// Source: as above, junctions: a quarter-wave whip on four radials, a Vee of 90 degrees, a loop of
+// Source: see typed_test.go. Junctions: a quarter-wave whip on four radials, a Vee of 90 degrees, a loop of
 // one wavelength, a rod of 2:1 stepped radius.
 func TestImpedancesOfJunctions(t *testing.T) {
 	wire := func(from, to vec, radiusM float64) Wire {

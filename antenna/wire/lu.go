@@ -82,16 +82,6 @@ func (f *lu) update(from, to int) {
 	})
 }
 
-// subtract takes a multiple of one row from another.
-func subtract(row []complex128, factor complex128, other []complex128) {
-	row = row[:len(other)]
-	re, im := real(factor), imag(factor)
-	for j, v := range other {
-		a, b := real(v), imag(v)
-		row[j] -= complex(re*a-im*b, re*b+im*a)
-	}
-}
-
 // solve overwrites the right-hand side with the solution.
 func (f *lu) solve(b []complex128) {
 	for k, best := range f.pivots {

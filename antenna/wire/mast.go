@@ -7,13 +7,15 @@ import (
 	"math/cmplx"
 )
 
-// How a mast is modelled, by its radius in wavelengths: a pole thin enough is one wire on its axis,
-// a thicker one a cage of parallel wires on its surface, each of the radius that gives them
-// together the pole's surface. Both are within 0.2 dB of the series of modes of an infinite
-// cylinder away from the mast and beside it, and within 1 dB in its shadow down to -20 dBi, over
-// all radii allowed; the tests repeat the comparison.
+// How a mast is modelled, by its radius in wavelengths: as one wire on its axis if it is thin, else
+// as a cage of parallel wires on its surface, each of the radius that gives them together the
+// pole's surface. More wires than these change nothing; one wire on the axis of a pole of 0.015 wl
+// is off by 0.25 dB and 4 % of the resistance close by, since the current does not flow evenly
+// around it. Cages are within 0.1 dB of the series of modes of an infinite cylinder away from the
+// mast and beside it, and within 1 dB in its shadow down to -20 dBi, over all radii allowed; the
+// tests repeat the comparison.
 const (
-	oneWireRadiusWl = 0.02
+	oneWireRadiusWl = 0.003
 	sixWireRadiusWl = 0.05
 	cageSpacingWl   = 0.095 // between the wires of thicker cages, around the pole
 	thickestMastWl  = 1.0   // radius
@@ -188,12 +190,13 @@ func (c *cage) border(k float64, antenna *mesh) *border {
 	return b
 }
 
-// reduce takes from the antenna's matrix what the cage answers (its Schur complement).
+// reduce takes from the antenna's symmetric matrix what the cage answers (its Schur complement).
 func (b *border) reduce(z *matrix) {
 	parallel(z.rows, func(i int) {
 		row := z.row(i)
-		for j := range row {
-			row[j] -= dot(b.coupling.row(min(i, j)), b.answers.row(max(i, j))) // symmetric to the bit
+		for j := i; j < z.columns; j++ {
+			row[j] -= dot(b.coupling.row(i), b.answers.row(j))
+			z.data[j*z.columns+i] = row[j]
 		}
 	})
 }

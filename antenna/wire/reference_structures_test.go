@@ -55,15 +55,19 @@ func TestReferenceMutualImpedance(t *testing.T) {
 	c.done()
 }
 
+// yagiOf returns upright elements along x, the driven one given by its index.
+func yagiOf(lengthsM, positionsM []float64, radiusM float64, driven int) Structure {
+	s := Structure{Feeds: []Feed{{driven + 1, 0.5}}}
+	for i, lengthM := range lengthsM {
+		s.Wires = append(s.Wires, upright(lengthM, radiusM).moved(vec{positionsM[i], 0, 0}))
+	}
+	return s
+}
+
 func TestReferenceYagis(t *testing.T) {
 	c := tally{t: t}
 	for _, row := range referenceRows(t, "yagi.csv") {
-		s := Structure{Feeds: []Feed{{1 + int(number(t, row, "driven_index")), 0.5}}}
-		positions := numbers(t, row, "element_positions_wl")
-		for i, lengthM := range numbers(t, row, "element_lengths_wl") {
-			s.Wires = append(s.Wires, upright(lengthM, number(t, row, "element_radius_wl")).moved(vec{positions[i], 0, 0}))
-		}
-		n, r := excited(t, s)
+		n, r := excited(t, yagiOf(numbers(t, row, "element_lengths_wl"), numbers(t, row, "element_positions_wl"), number(t, row, "element_radius_wl"), int(number(t, row, "driven_index"))))
 		front := r.gainDBi(vec{1, 0, 0})
 		c.check(row, "gain", front, number(t, row, "gain_dBi"), number(t, row, "tol_gain_dB"))
 		if row["published_gain_dBi"] != "" {
@@ -178,6 +182,16 @@ func TestReferenceConductorLoss(t *testing.T) {
 	c.done()
 }
 
+// rowOf returns equal dipoles of 0.47 wl, radius 0.002 wl, each fed in its middle.
+func rowOf(count int, apart vec) Structure {
+	var s Structure
+	for i := range count {
+		s.Wires = append(s.Wires, upright(0.47, 0.002).moved(apart.times(float64(i))))
+		s.Feeds = append(s.Feeds, Feed{i + 1, 0.5})
+	}
+	return s
+}
+
 func TestReferenceStacks(t *testing.T) {
 	c := tally{t: t}
 	for _, row := range referenceRows(t, "collinear_stack.csv") {
@@ -186,12 +200,7 @@ func TestReferenceStacks(t *testing.T) {
 			along = vec{0, number(t, row, "spacing_wl"), 0}
 		}
 		count := int(number(t, row, "dipoles"))
-		var s Structure
-		for i := range count {
-			s.Wires = append(s.Wires, upright(number(t, row, "dipole_length_wl"), number(t, row, "radius_wl")).moved(along.times(float64(i))))
-			s.Feeds = append(s.Feeds, Feed{i + 1, 0.5})
-		}
-		_, r := excited(t, s)
+		_, r := excited(t, rowOf(count, along))
 		c.check(row, "gain", r.gainDBi(vec{1, 0, 0}), number(t, row, "gain_dBi"), number(t, row, "tol_gain_dB"))
 		tolerance := number(t, row, "tol_Z_ohm")
 		outer, inner := 1/r.PortA[0], 1/r.PortA[count/2]

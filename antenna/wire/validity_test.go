@@ -119,7 +119,7 @@ func TestDoubtfulStructures(t *testing.T) {
 	if n := network(t, Structure{Wires: []Wire{upright(0.47, 0.002)}, Feeds: middleFeed()}); len(n.Warnings) > 0 {
 		t.Errorf("a plain rod has warnings: %q", n.Warnings)
 	}
-	close := besideMast(0.08, 0.05, 0, 4)
+	close := besideMast(0.065, 0.05, 0, 4)
 	n := network(t, close)
 	if len(n.Warnings) != 1 || !strings.Contains(n.Warnings[0], "from the mast's surface") {
 		t.Errorf("close to a mast: warnings %q", n.Warnings)
