@@ -4,6 +4,7 @@ import (
 	"maps"
 	"reflect"
 
+	"fellreach/link"
 	"fellreach/terrain/raster"
 
 	"github.com/paulmach/orb"
@@ -54,4 +55,25 @@ func (p *Plan) sameAntenna(q *Plan, name string) bool {
 		return p.sameAntenna(q, stack.Of)
 	}
 	return true
+}
+
+// Channel returns a channel of the plan with its frequencies.
+func (p *Plan) Channel(name string) link.Channel { return p.Channels[name].resolve(name) }
+
+// MastSize returns the height of the site's mast and its diameter or face width in metres, zero where
+// the plan does not say.
+func (s Site) MastSize() (heightM, widthM float64) {
+	if s.Mast == nil {
+		return 0, 0
+	}
+	return mastSize(s.Mast)
+}
+
+// String writes the place as the plan does.
+func (a At) String() string {
+	if a.EPSG != nil {
+		where, _ := a.coordinates() // an EPSG place has no text to be wrong
+		return where.String()
+	}
+	return a.Text
 }

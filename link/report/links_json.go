@@ -24,7 +24,7 @@ type linkJSON struct {
 	DistanceKm  float64         `json:"distance_km"`
 	AzimuthDeg  float64         `json:"azimuth_deg"`
 	BackAzDeg   float64         `json:"back_azimuth_deg"`
-	Verdict     link.Verdict    `json:"verdict"`
+	Verdict     link.Verdict    `json:"verdict" enum:"closes,thin,fails"`
 	MarginDB    float64         `json:"margin_db"`
 	Chance      float64         `json:"chance"`
 	Clearance   clearanceJSON   `json:"clearance"`
@@ -64,7 +64,7 @@ type directionJSON struct {
 type lineJSON struct {
 	Name    string    `json:"name"`
 	ValueDB float64   `json:"value_db"`
-	Kind    link.Kind `json:"kind"`
+	Kind    link.Kind `json:"kind" enum:"power,gain,loss,noise,need,allowance"`
 	Source  string    `json:"source"`
 }
 

@@ -1,0 +1,7 @@
+package web
+
+const tileStoreBytes = 64 << 20
+
+type tileStore struct{}
+
+func newTileStore(int) *tileStore { return &tileStore{} }

@@ -1,0 +1,5 @@
+package web
+
+import "net/http"
+
+func (s *Server) serveTile(w http.ResponseWriter, r *http.Request) {}
