@@ -88,7 +88,7 @@ func newRoot(t *terminal) *cobra.Command {
 		return &usageError{fmt.Sprintf("%v\n    hint: `%s --help` lists the flags", err, cmd.CommandPath())}
 	})
 	root.PersistentFlags().BoolVar(&t.quiet, "quiet", false, "no progress and no hints on standard error")
-	root.AddCommand(newDemo(t), newLinks(t), newSection(t), newAntenna(t), newLoss(t), newTerrain(t), newPlan(t), newServe(t), newVersion(t))
+	root.AddCommand(newDemo(t), newLinks(t), newSection(t), newCover(t), newAntenna(t), newLoss(t), newTerrain(t), newPlan(t), newServe(t), newVersion(t))
 	return root
 }
 

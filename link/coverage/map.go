@@ -23,6 +23,8 @@ type Map struct {
 	Radials          int
 	Took             time.Duration // the sweep alone
 	Check            Check
+
+	disc *terrain.Disc
 }
 
 // Compute maps a task over the ground. progress, if not nil, is told how many radials are done, from
@@ -52,7 +54,7 @@ func (t *Task) over(ctx context.Context, places *link.Places, disc *terrain.Disc
 	if err != nil {
 		return nil, err
 	}
-	m := &Map{Frame: frame, Radials: s.radials}
+	m := &Map{Frame: frame, Radials: s.radials, disc: disc}
 	for _, layer := range []struct {
 		wanted bool
 		cells  *[]float32

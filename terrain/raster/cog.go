@@ -116,3 +116,29 @@ func (c COG) fill(dataset gdal.Dataset) error {
 	}
 	return nil
 }
+
+// ReadCOG reads the cells of a map back, NaN where it holds its nodata value. The file must have been
+// written for the frame.
+func ReadCOG(path string, f *Frame) ([]float32, error) {
+	dataset, err := openDataset(path)
+	if err != nil {
+		return nil, fmt.Errorf("%s: %w", path, err)
+	}
+	defer dataset.Close()
+	if dataset.RasterXSize() != f.Cols || dataset.RasterYSize() != f.Rows {
+		return nil, fmt.Errorf("%s has %d x %d cells, %d x %d are expected", path, dataset.RasterXSize(), dataset.RasterYSize(), f.Cols, f.Rows)
+	}
+	cells := make([]float32, f.Cols*f.Rows)
+	err = call(func() error {
+		return dataset.RasterBand(1).IO(gdal.Read, 0, 0, f.Cols, f.Rows, cells, f.Cols, f.Rows, 0, 0)
+	})
+	if err != nil {
+		return nil, fmt.Errorf("%s: %w", path, err)
+	}
+	for i, v := range cells {
+		if v == cogNoData {
+			cells[i] = float32(math.NaN())
+		}
+	}
+	return cells, nil
+}

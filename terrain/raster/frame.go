@@ -134,3 +134,34 @@ func utmWKT(p orb.Point) (string, error) {
 	})
 	return text, err
 }
+
+// Places turns corners of cells, columns and rows counted from the first cell's outer corner, into
+// places on WGS 84, in place.
+func (f *Frame) Places(corners []orb.Point) error {
+	crs, err := transformTo(f.WKT)
+	if err != nil {
+		return err
+	}
+	toSystem := affine(f.GeoTransform)
+	for i, p := range corners {
+		corners[i] = toSystem.apply(p[0], p[1])
+	}
+	return crs.inverse(corners)
+}
+
+// Centre returns the place in the middle of the frame.
+func (f *Frame) Centre() (orb.Point, error) {
+	at := []orb.Point{{float64(f.Cols) / 2, float64(f.Rows) / 2}}
+	err := f.Places(at)
+	return at[0], err
+}
+
+// SetPlane relates the cells to the plane of geodesics from a place, as a frame made for a site is
+// from the beginning.
+func (f *Frame) SetPlane(from orb.Point) error {
+	crs, err := transformTo(f.WKT)
+	if err != nil {
+		return err
+	}
+	return f.meshPlane(crs, from, math.Hypot(float64(f.Cols), float64(f.Rows))*f.CellM/2)
+}
