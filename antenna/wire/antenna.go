@@ -1,7 +1,6 @@
 package wire
 
 import (
-	"errors"
 	"fmt"
 
 	"fellreach/antenna"
@@ -27,18 +26,11 @@ func newAntenna(kind string, directional bool, b blueprint) Antenna {
 	return a
 }
 
-// A cut is an antenna with its lengths, for an installation but for its frequency.
-type cut struct {
-	layout
-	structure Structure
-	mainM     float64
-}
-
-// A solved antenna is what its solution came from.
+// A solved antenna is a solution, and what is told of how it came about.
 type solved struct {
 	antenna.Solution
-	network *Network
-	balance float64
+	segments int
+	balance  float64
 }
 
 // SolveInstalled solves the antenna in an installation.
@@ -68,24 +60,15 @@ func (a Antenna) solveInstalled(in Installation) (solved, error) {
 	})
 }
 
-// network solves the antenna at a frequency.
-func (c cut) network(freqHz, designHz float64) (*Network, error) {
-	s := c.structure
-	if meshHz(freqHz, designHz) != designHz {
-		s = s.divided(nil)
-	}
-	return s.Solve(freqHz, designHz)
-}
-
 // radiate drives a network as one antenna.
 func (c cut) radiate(in Installation, n *Network) (solved, error) {
 	r, err := n.Excite(together(n))
 	if err != nil {
 		return solved{}, err
 	}
-	notes := append(in.notes(c.structure.Mast), n.Warnings...)
+	remarks := in.notes(c.structure.Mast)
 	if ports := len(c.feeds); ports > 1 {
-		notes = append(notes, fmt.Sprintf("%d feeds driven in phase with equal voltages: a harness of equal lines of a multiple of a half wave", ports))
+		remarks = append(remarks, fmt.Sprintf("%d feeds driven in phase with equal voltages: a harness of equal lines of a multiple of a half wave", ports))
 	}
 	return solved{
 		Solution: antenna.Solution{
@@ -93,10 +76,11 @@ func (c cut) radiate(in Installation, n *Network) (solved, error) {
 			ImpedanceOhm: n.TogetherOhm(),
 			Efficiency:   r.Efficiency(),
 			Source:       fmt.Sprintf("solved: %d segments, power balance %.3f", n.Segments, r.Balance()),
-			Notes:        append(notes, r.warnings()...),
+			Remarks:      remarks,
+			Notes:        slices.Concat(n.Warnings, r.warnings()),
 		},
-		network: n,
-		balance: r.Balance(),
+		segments: n.Segments,
+		balance:  r.Balance(),
 	}, nil
 }
 
@@ -107,80 +91,4 @@ func together(n *Network) []complex128 {
 		volts[i] = 1
 	}
 	return volts
-}
-
-// The lengths between which a resonance is sought, and where it is first looked for, in
-// wavelengths.
-const (
-	shortestResonantWl = 0.3
-	longestResonantWl  = 0.6
-	guessedResonantWl  = 0.47
-)
-
-// cut cuts the antenna for an installation, which has been checked. Its wires are divided by the
-// rule for a length near the resonance, or the length given, and stay so whatever is done with
-// them: else the length found and what follows from it would jump with the number of segments.
-func (a Antenna) cut(in Installation) (cut, error) {
-	in.FreqHz = in.DesignHz
-	return a.cuts.get(in, func() (cut, error) {
-		wavelengthM := in.wavelengthM()
-		mainM := metres(a.blueprint.main, wavelengthM)
-		if a.blueprint.resonant() {
-			mainM = guessedResonantWl * wavelengthM
-		}
-		c := a.lay(in, mainM, nil)
-		p, err := c.structure.prepare(in.DesignHz, 0)
-		if err != nil {
-			return cut{}, err
-		}
-		segments := p.mesh.segmentsOfWires(len(c.wires))
-		if a.blueprint.resonant() {
-			if mainM, err = a.resonantM(in, segments); err != nil {
-				return cut{}, err
-			}
-		}
-		return a.lay(in, mainM, segments), nil
-	})
-}
-
-// lay lays the antenna out with a length of its main part and numbers of segments of its wires,
-// and puts it on its mast.
-func (a Antenna) lay(in Installation, mainM float64, segments []int) cut {
-	c := cut{layout: a.blueprint.lay(in.wavelengthM(), mainM), mainM: mainM}
-	c.structure = Structure{Wires: c.wires, Feeds: c.feeds, Mast: in.mast(c.layout)}.divided(segments)
-	return c
-}
-
-// divided returns the structure with numbers of segments, or with the rule for nil.
-func (s Structure) divided(segments []int) Structure {
-	wires := make([]Wire, len(s.Wires))
-	for i, w := range s.Wires {
-		if w.Segments = 0; segments != nil {
-			w.Segments = segments[i]
-		}
-		wires[i] = w
-	}
-	s.Wires = wires
-	return s
-}
-
-// resonantM returns the length of the main part at which the antenna has no reactance at the
-// design frequency, rising with the length.
-func (a Antenna) resonantM(in Installation, segments []int) (float64, error) {
-	wavelengthM := in.wavelengthM()
-	var last *Network
-	reactance := func(wl float64) (float64, error) {
-		n, err := a.lay(in, wl*wavelengthM, segments).structure.solveAfter(last, in.DesignHz)
-		if err != nil {
-			return 0, err
-		}
-		last = n
-		return imag(n.TogetherOhm()), nil
-	}
-	const step = 0.02
-	wl, err := risingZero(shortestResonantWl, longestResonantWl, guessedResonantWl, step, reactance)
-	if errors.Is(err, errNoZero) {
-		return 0, fmt.Errorf("no resonant length between %g and %g wl at %g Hz as installed: give the length, or make the rod thinner", shortestResonantWl, longestResonantWl, in.DesignHz)
-	}
-	return wl * wavelengthM, err
 }

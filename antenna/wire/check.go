@@ -12,22 +12,22 @@ import (
 // trials with this formulation, as the tests repeat them; common practice where no trial settles
 // it.
 const (
-	longestSegmentWl  = 0.1
-	shortestSegment   = 1    // radii, refused below; doubtful below leastRadii
-	thickFeedWl       = 0.01 // radius, doubtful above
-	thickWl           = 0.02 // radius, doubtful above
-	stubbyLength      = 20   // radii, doubtful below
-	refusedGap        = 3    // between the axes of separate wires, in radii of the thicker
-	doubtfulGap       = 6
-	refusedAngleDeg   = 5 // between joined wires
-	doubtfulAngleDeg  = 30
-	doubtfulRadii     = 4 // ratio at a node
-	doubtfulSegments  = 3 // ratio of lengths at a node
-	mostSegments      = 2000
-	mostWires         = 1000
-	shortFullWaveWl   = 0.85 // centre-fed wires about a full wave
-	longFullWaveWl    = 1.1
-	fartherThanAllowM = 1e5 // coordinates
+	longestSegmentWl = 0.1
+	shortestSegment  = 1    // radii, refused below; doubtful below leastRadii
+	thickFeedWl      = 0.01 // radius, doubtful above
+	thickWl          = 0.02 // radius, doubtful above
+	stubbyLength     = 20   // radii, doubtful below
+	refusedGap       = 3    // between the axes of separate wires, in radii of the thicker
+	doubtfulGap      = 6
+	refusedAngleDeg  = 5 // between joined wires
+	doubtfulAngleDeg = 30
+	doubtfulRadii    = 4 // ratio at a node
+	doubtfulSegments = 3 // ratio of lengths at a node
+	mostSegments     = 2000
+	mostWires        = 1000
+	shortFullWaveWl  = 0.85 // centre-fed wires about a full wave
+	longFullWaveWl   = 1.1
+	farthestM        = 1e5 // coordinates
 )
 
 // check returns what is wrong with a structure before it is divided, and what is doubtful.
@@ -71,8 +71,8 @@ func (s Structure) checkEach() error {
 func (w Wire) check(number int) error {
 	lengthM := w.lengthM()
 	switch {
-	case !vec(w.From).finite() || !vec(w.To).finite() || vec(w.From).length()+vec(w.To).length() > fartherThanAllowM:
-		return fmt.Errorf("wire %d: its ends %v and %v must be finite, within %g m", number, w.From, w.To, fartherThanAllowM)
+	case !vec(w.From).finite() || !vec(w.To).finite() || vec(w.From).length()+vec(w.To).length() > farthestM:
+		return fmt.Errorf("wire %d: its ends %v and %v must be finite, within %g m", number, w.From, w.To, farthestM)
 	case !(w.DiameterM > 0) || math.IsInf(w.DiameterM, 0):
 		return fmt.Errorf("wire %d: diameter %g m is not allowed: it must be above 0", number, w.DiameterM)
 	case lengthM == 0:
@@ -107,30 +107,6 @@ func (w Wire) doubts(number int, open bool, wavelengthM float64) []string {
 	return doubts
 }
 
-// checkFeeds returns what is wrong with the feeds by themselves.
-func (s Structure) checkFeeds() error {
-	if len(s.Feeds) == 0 {
-		return errors.New("no feed is given: at least one is needed")
-	}
-	var errs []error
-	for i, f := range s.Feeds {
-		switch {
-		case f.Wire < 1 || f.Wire > len(s.Wires):
-			errs = append(errs, fmt.Errorf("feed %d is on wire %d: the wires are numbered 1 to %d", i+1, f.Wire, len(s.Wires)))
-		case !(f.At >= 0 && f.At <= 1):
-			errs = append(errs, fmt.Errorf("feed %d on wire %d: place %g is out of range: 0 to 1 is allowed", i+1, f.Wire, f.At))
-		case f.At > 0 && f.At < 1 && s.Wires[f.Wire-1].Segments == 1:
-			errs = append(errs, fmt.Errorf("feed %d on wire %d: the wire has one segment, which leaves no node for a feed inside; give 2 or more", i+1, f.Wire))
-		}
-		for j, other := range s.Feeds[:i] {
-			if f == other {
-				errs = append(errs, fmt.Errorf("feeds %d and %d are in the same place on wire %d", j+1, i+1, f.Wire))
-			}
-		}
-	}
-	return errors.Join(errs...)
-}
-
 // checkSize returns an error if the wires have more segments than are allowed.
 func (s Structure) checkSize(wavelengthM float64) error {
 	segments := 0
@@ -157,45 +133,6 @@ func (s Structure) joinedTo(index int, place vec, wavelengthM float64) int {
 		}
 	}
 	return count
-}
-
-// checkEndFeeds returns an error for each feed at a wire's end that is joined to nothing, and for
-// each two that are one gap, on either side of the node of two wires.
-func (s Structure) checkEndFeeds(wavelengthM float64) error {
-	var errs []error
-	for i, f := range s.Feeds {
-		if f.At > 0 && f.At < 1 {
-			continue
-		}
-		place := s.Wires[f.Wire-1].line().at(f.At)
-		joined := s.joinedTo(f.Wire-1, place, wavelengthM)
-		if joined == 0 {
-			errs = append(errs, fmt.Errorf("feed %d is at the open end of wire %d: no current flows there; place it along the wire, or join another wire to that end", i+1, f.Wire))
-		}
-		for j, g := range s.Feeds[:i] {
-			other := s.Wires[g.Wire-1]
-			near := other.line().at(g.At).apart(place) < joinM(other.radiusM(), s.Wires[f.Wire-1].radiusM(), wavelengthM)
-			if joined == 1 && near {
-				errs = append(errs, fmt.Errorf("feeds %d and %d are one gap, where wires %d and %d meet", j+1, i+1, g.Wire, f.Wire))
-			}
-		}
-	}
-	return errors.Join(errs...)
-}
-
-// feedDoubts returns what is doubtful of the feeds.
-func (s Structure) feedDoubts(wavelengthM float64) []string {
-	var doubts []string
-	for i, f := range s.Feeds {
-		w := s.Wires[f.Wire-1]
-		if w.radiusM() > thickFeedWl*wavelengthM {
-			doubts = append(doubts, fmt.Sprintf("feed %d: radius %.3g wl of wire %d is over %g wl: resistance is uncertain by 5 to 10 %%, resonance by 1 %%", i+1, w.radiusM()/wavelengthM, f.Wire, thickFeedWl))
-		}
-		if wl := w.lengthM() / wavelengthM; math.Abs(f.At-0.5) < 0.05 && wl > shortFullWaveWl && wl < longFullWaveWl {
-			doubts = append(doubts, fmt.Sprintf("feed %d: in the middle of a wire of %.2f wl the impedance depends on the size of the gap (up to 30 %%)", i+1, wl))
-		}
-	}
-	return doubts
 }
 
 // checkPair checks two wires, by their indices, against each other.
@@ -260,13 +197,18 @@ func (s Structure) checkMast(i int) (doubts []string, err error) {
 }
 
 // check returns what is wrong with a mesh, and what is doubtful.
-func (m *mesh) check(s Structure, wavelengthM float64) (warnings []string, err error) {
+func (m *mesh) check(wavelengthM float64) (warnings []string, err error) {
 	var errs []error
 	for _, r := range m.runs {
 		warning, err := r.check(wavelengthM)
 		errs = append(errs, err)
 		if warning != "" {
 			warnings = append(warnings, warning)
+		}
+	}
+	for i, p := range m.ports {
+		if len(p) == 0 {
+			errs = append(errs, fmt.Errorf("feed %d: no current can flow there; place it along the wire", i+1))
 		}
 	}
 	for _, b := range m.bases {

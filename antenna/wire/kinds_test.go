@@ -268,6 +268,12 @@ func TestWires(t *testing.T) {
 	if r.HzPerMM != 0 || len(r.Cut) != 2 || r.Cut[1] != (Part{"wire 2", 0.47}) {
 		t.Errorf("%g Hz per mm, parts %v", r.HzPerMM, r.Cut)
 	}
+	finer := rod
+	finer.Segments = 34
+	asked, err := Wires([]Wire{finer}, middleFeed())
+	if r := analysed(t, built(t, asked, err), clearOfMasts(), 50); r.Segments != 34 {
+		t.Errorf("%d segments, want the 34 asked for", r.Segments)
+	}
 	if one, err := Wires([]Wire{rod}, middleFeed()); err != nil || one.Directional {
 		t.Errorf("a wire along z: directional %v, %v", one.Directional, err)
 	}

@@ -71,7 +71,13 @@ func newMesh(s Structure, wavelengthM float64) *mesh {
 	m := &mesh{}
 	feedEnds := make([]end, len(s.Feeds))
 	for i, w := range s.Wires {
-		m.divide(i, w, s.Feeds, feedEnds, wavelengthM)
+		cuts := w.cuts(i, s.Feeds)
+		ends := m.divide(i, w, cuts, wavelengthM)
+		for j, feed := range s.Feeds {
+			if feed.Wire == i+1 {
+				feedEnds[j] = ends[slices.Index(slices.Concat([]float64{0}, cuts, []float64{1}), feed.At)]
+			}
+		}
 	}
 	m.join(wavelengthM)
 	for _, e := range feedEnds {
@@ -80,38 +86,24 @@ func newMesh(s Structure, wavelengthM float64) *mesh {
 	return m
 }
 
-// divide adds the runs of a wire, one for each piece between feeds, or one for several pieces in
-// equal segments, and finds the segment ends at its feeds.
-func (m *mesh) divide(index int, w Wire, feeds []Feed, feedEnds []end, wavelengthM float64) {
-	lengthM, first := w.lengthM(), len(m.runs)
-	cuts := w.cuts(index, feeds)
+// divide adds the runs of a wire, one for each piece between cuts, or one for several pieces in
+// equal segments. It returns the segment ends at the wire's start, at its cuts and at its end.
+func (m *mesh) divide(index int, w Wire, cuts []float64, wavelengthM float64) []end {
 	counts := w.segmentsOf(cuts, wavelengthM)
-	pieces := piecesOf(cuts, lengthM)
-	lastEnd := func() end { return end{len(m.runs) - 1, m.runs[len(m.runs)-1].count - 1, 1} }
-	place := vec(w.From)
-	for i, pieceM := range pieces {
+	ends := []end{{len(m.runs), 0, 0}}
+	r := run{wire: index, start: w.From, along: w.line().along().unit(), radiusM: w.radiusM()}
+	for i, pieceM := range piecesOf(cuts, w.lengthM()) {
 		stepM := pieceM / float64(counts[i])
-		if i > 0 && math.Abs(stepM-m.runs[len(m.runs)-1].stepM) < 1e-9*stepM {
-			m.runs[len(m.runs)-1].count += counts[i]
-		} else {
-			m.runs = append(m.runs, run{index, place, w.line().along().unit(), stepM, counts[i], w.radiusM()})
+		if i > 0 && math.Abs(stepM-r.stepM) > 1e-9*stepM {
+			m.runs = append(m.runs, r)
+			r.start, r.count = r.place(r.count), 0
 		}
-		place = place.plus(w.line().along().unit().times(pieceM))
-		for f, feed := range feeds {
-			if feed.Wire == index+1 && i < len(cuts) && feed.At == cuts[i] {
-				feedEnds[f] = lastEnd()
-			}
-		}
+		r.stepM = stepM
+		r.count += counts[i]
+		ends = append(ends, end{len(m.runs), r.count - 1, 1})
 	}
-	for f, feed := range feeds {
-		switch {
-		case feed.Wire != index+1:
-		case feed.At == 0:
-			feedEnds[f] = end{first, 0, 0}
-		case feed.At == 1:
-			feedEnds[f] = lastEnd()
-		}
-	}
+	m.runs = append(m.runs, r)
+	return ends
 }
 
 // cuts returns the ascending fractions at which feeds divide a wire, its ends left out.

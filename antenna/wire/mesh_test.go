@@ -3,6 +3,7 @@ package wire
 import (
 	"math"
 	"math/cmplx"
+	"slices"
 	"testing"
 
 	"fellreach/antenna"
@@ -57,21 +58,22 @@ func TestCurrentsAreConserved(t *testing.T) {
 		for i := range amplitudes {
 			amplitudes[i] = complex(rapid.Float64Range(-1, 1).Draw(t, "re"), math.Sin(float64(i)))
 		}
-		into := map[[3]int]complex128{}
+		var places []vec
+		var sums []complex128
 		for i, currents := range m.currents(amplitudes) {
 			r := &m.runs[i]
-			for _, side := range []struct {
-				node int
-				sign complex128
-			}{{0, -1}, {r.count, 1}} {
-				place := r.place(side.node)
-				key := [3]int{int(math.Round(1e6 * place[0])), int(math.Round(1e6 * place[1])), int(math.Round(1e6 * place[2]))}
-				into[key] += side.sign * currents[side.node]
+			for node, sign := range map[int]complex128{0: -1, r.count: 1} {
+				at := slices.IndexFunc(places, func(p vec) bool { return p.apart(r.place(node)) < 1e-5 })
+				if at < 0 {
+					places, sums = append(places, r.place(node)), append(sums, 0)
+					at = len(places) - 1
+				}
+				sums[at] += sign * currents[node]
 			}
 		}
-		for place, sum := range into {
+		for i, sum := range sums {
 			if cmplx.Abs(sum) > 1e-12 {
-				t.Errorf("%v flows into the node at %v um", sum, place)
+				t.Errorf("%v flows into the node at %v", sum, places[i])
 			}
 		}
 	})

@@ -73,6 +73,7 @@ func meshHz(freqHz, designHz float64) float64 {
 	return designHz
 }
 
+// prepare checks a structure and divides it.
 func (s Structure) prepare(freqHz, designHz float64) (prepared, error) {
 	if _, err := (antenna.Setting{FreqHz: freqHz, DesignHz: designHz}).Checked(); err != nil {
 		return prepared{}, err
@@ -83,7 +84,7 @@ func (s Structure) prepare(freqHz, designHz float64) (prepared, error) {
 		return prepared{}, err
 	}
 	p := prepared{mesh: newMesh(s, wavelengthM), warnings: warnings}
-	more, err := p.mesh.check(s, wavelengthM)
+	more, err := p.mesh.check(wavelengthM)
 	p.warnings = append(p.warnings, more...)
 	if s.Mast.exists() {
 		p.mast = s.Mast.mesh(s.Wires[s.Feeds[0].Wire-1].line().at(s.Feeds[0].At), wavelengthM)
@@ -91,6 +92,7 @@ func (s Structure) prepare(freqHz, designHz float64) (prepared, error) {
 	return p, err
 }
 
+// solve fills and solves the matrix of a prepared structure.
 func (s Structure) solve(p prepared, freqHz float64, last *Network) (*Network, error) {
 	n := &Network{
 		FreqHz:   freqHz,
@@ -112,7 +114,10 @@ func (s Structure) solve(p prepared, freqHz float64, last *Network) (*Network, e
 		n.border = c.border(n.k, n.mesh)
 		n.border.reduce(z)
 	}
-	return n, n.drive(z)
+	if err := n.drive(z); err != nil {
+		return nil, err
+	}
+	return n, nil
 }
 
 // cage returns the factored mast, from another network if it has the same.

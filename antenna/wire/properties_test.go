@@ -206,7 +206,7 @@ func TestConvergence(t *testing.T) {
 		t.Errorf("refined to %+v, want 40 segments, %.4f ohm, changed by %.4f", refined, third, third-second)
 	}
 	thick := rodOf(t, 0.47, 0.0125, 0.5)
-	if refined, err = thick.Refine(clearOfMasts()); err != nil || !refined.ThicknessOnly {
+	if refined, err = thick.Refine(clearOfMasts()); err != nil || refined.Segments != 18 || refined.ChangeOhm != 0 {
 		t.Errorf("a thick rod was refined: %+v, %v", refined, err)
 	}
 }

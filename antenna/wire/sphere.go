@@ -122,18 +122,21 @@ func (r *Radiation) Pattern() antenna.Pattern {
 	return antenna.Pattern{Field: s.field, PeakDBi: 10 * math.Log10(s.peak()), Phased: true}
 }
 
-// peak returns the largest power: that of the largest sample, and from there upwards in ever
-// smaller steps.
+// peak returns the largest power: from the sample that promises most, with the parabolas through its
+// neighbours, upwards in ever smaller steps.
 func (s *sphere) peak() float64 {
 	var at antenna.Direction
-	most, step := 0.0, 180/float64(s.elevations)
+	promised, step := 0.0, 180/float64(s.elevations)
 	for el := range s.elevations + 1 {
 		for az := range s.azimuths {
-			if p := s.at(el, az).Power(); p > most {
-				most, at = p, antenna.Direction{AzDeg: float64(az) * step, ElDeg: float64(el)*step - 90}
+			power := s.at(el, az).Power()
+			summit := power + rise(s.at(el-1, az).Power(), power, s.at(el+1, az).Power()) + rise(s.at(el, az-1).Power(), power, s.at(el, az+1).Power())
+			if summit > promised {
+				promised, at = summit, antenna.Direction{AzDeg: float64(az) * step, ElDeg: float64(el)*step - 90}
 			}
 		}
 	}
+	most := s.field(at).Power()
 	for step > 1e-3 {
 		higher := false
 		for _, to := range []antenna.Direction{{AzDeg: step}, {AzDeg: -step}, {ElDeg: step}, {ElDeg: -step}} {
@@ -148,4 +151,13 @@ func (s *sphere) peak() float64 {
 		}
 	}
 	return most
+}
+
+// rise returns how far the parabola through three equally spaced values rises above the middle one,
+// if that is the largest.
+func rise(before, middle, after float64) float64 {
+	if before > middle || after > middle || before+after == 2*middle {
+		return 0
+	}
+	return (after - before) * (after - before) / (8 * (2*middle - before - after))
 }
