@@ -64,25 +64,30 @@ func (c *Cell) set(p place) bool {
 // sampleOwn reads the points on the own bearing, whose direction is given.
 func (c *Cell) sampleOwn(count int, east, north float64) bool {
 	w := c.walk
-	first := c.interior - count + 1
-	stepM, from := w.stepM, float64(first)*w.stepM
-	ray := terrain.Ray{East: east * from, North: north * from, StepEast: east * stepM, StepNorth: north * stepM}
-	w.disc.Sample(ray, c.aslM[:count], c.coverM[:count], c.zoneOf[:count])
+	w.disc.Sample(w.ownRay(count, 1000*c.d, east, north), c.aslM[:count], c.coverM[:count], c.zoneOf[:count])
 	c.own = c.points[:count]
 	for i := range c.own {
-		h, cover := c.aslM[i], c.coverM[i]
+		d, h, cover := c.d-float64(count-i)*w.stepKm, c.aslM[i], c.coverM[i]
 		if math.IsNaN(h) {
-			if first+i > w.known {
+			at := w.index(d)
+			if at > w.known {
 				return false
 			}
-			h = w.aslM[first+i]
+			h = w.aslM[at]
 		}
-		if cover > 0 && float64(first+i)*stepM < w.ClearingM {
+		if cover > 0 && 1000*d < w.ClearingM {
 			cover = 0
 		}
-		c.own[i] = sample{w.km(first + i), h, h + cover}
+		c.own[i] = sample{d, h, h + cover}
 	}
 	return true
+}
+
+// ownRay leads over the last count points of the profile of a cell at distM, in steps up to one
+// before the cell; east and north are its direction.
+func (s *sweep) ownRay(count int, distM, east, north float64) terrain.Ray {
+	from := distM - float64(count)*s.stepM
+	return terrain.Ray{East: east * from, North: north * from, StepEast: east * s.stepM, StepNorth: north * s.stepM}
 }
 
 func (c *Cell) findOutline(groundM float64) {

@@ -9,11 +9,12 @@
 // approximation of the profile.
 //
 // The profile of a cell at the distance d and the step s is fixed so. Its first point is the site.
-// Its interior points lie at the multiples of s up to half a step before the cell, on the radial
-// nearest in azimuth; the last K of them (4, or 8 in fine quality) lie on the cell's own bearing
-// instead. Its last point is the cell's centre, with its own distance and height. Cover is left out
-// within the site's clearing. Where a void is bridged it is the radial's; a place on the own bearing
-// that is not known takes the radial's height.
+// The last K interior points (4, or 8 in fine quality) lie on the cell's own bearing, at 1 to K steps
+// before the cell, as those of a link do: what stands right before the far end matters most. The
+// others lie at the multiples of s up to half a step before those, on the radial nearest in azimuth.
+// The last point is the cell's centre, with its own distance and height. Cover is left out within the
+// site's clearing. Where a void is bridged it is the radial's; a place on the own bearing that is not
+// known takes the height of the radial's nearest point.
 //
 // # Why it is exact
 //

@@ -15,7 +15,8 @@ func (c *Cell) SlopesBeta() propagation.Slopes {
 
 // LevelSlopes implements [propagation.Ground].
 func (c *Cell) LevelSlopes(radiusKm, txM, rxM float64) propagation.Slopes {
-	return levelSlopes(radiusKm, txM, rxM, c.d, c.walk.stepKm, c.interior)
+	l := levelGround{drop: 500 / radiusKm, txM: txM, rxM: rxM, d: c.d, step: c.walk.stepKm, count: c.interior - len(c.own), own: c.own}
+	return l.slopes()
 }
 
 // ObstacleKm implements [propagation.Ground]. Without interior points it is the path's middle.
@@ -37,30 +38,29 @@ func (c *Cell) RoughnessM(txM, rxM float64) float64 {
 	if c.interior == 0 {
 		return max(o.TxGroundM-txM, o.RxGroundM-rxM)
 	}
-	first, last := w.index(o.Dlt), w.index(c.d-o.Dlr)
+	from, to := o.Dlt, c.d-o.Dlr
 	if !o.TransHorizon {
-		first = w.index(c.ObstacleKm())
-		last = first
+		from = c.ObstacleKm()
+		to = from
 	}
-	first, last = min(first, last), max(first, last)
+	between := w.stepKm / 4 // no two points are nearer to each other than twice that
+	from, to = min(from, to)-between, max(from, to)+between
 	hm := math.Inf(-1)
-	stacked := c.interior - len(c.own)
-	for i := max(first, stacked+1); i <= last; i++ {
-		p := &c.own[i-stacked-1]
-		hm = max(hm, p.bare-l.at(p.d))
-	}
-	if first > stacked {
-		return hm
+	for i := range c.own {
+		if p := &c.own[i]; p.d > from && p.d < to {
+			hm = max(hm, p.bare-l.at(p.d))
+		}
 	}
 	if !w.blocked {
 		w.blocks.build(w.aslM[:w.known+1], w.stepKm)
 		w.blocked = true
 	}
-	return w.blocks.highestOver(l, first, min(last, stacked), hm)
+	first, last := int(math.Ceil(from/w.stepKm)), int(math.Floor(to/w.stepKm))
+	return w.blocks.highestOver(l, first, min(last, c.interior-len(c.own)), hm)
 }
 
-// index is the number of the point at a distance.
-func (w *walk) index(km float64) int { return int(math.Round(km / w.stepKm)) }
+// index is the number of the radial's point nearest to a distance.
+func (s *sweep) index(km float64) int { return int(math.Round(km / s.stepKm)) }
 
 // Zones implements [propagation.Ground].
 func (c *Cell) Zones() (dtm, dlm, sea float64) { return c.dtm, c.dlm, c.sea }

@@ -6,41 +6,63 @@ import (
 	"fellreach/link/propagation"
 )
 
-// levelSlopes returns Bullington's slopes over points at height 0, at the distances step, 2 step, ...
-// count step, on an Earth of effective radius ap, between antennas at txM at 0 and rxM at d: what a
-// search over all of them would find. The sight lines have their extremes next to known places, and
-// on a free path the diffraction parameter has one maximum.
-func levelSlopes(ap, txM, rxM, d, step float64, count int) propagation.Slopes {
-	drop := 500 / ap
-	s := propagation.Slopes{Stim: math.Inf(-1), Str: (rxM - txM) / d, Srim: math.Inf(-1), Height: math.Inf(-1)}
-	bulge := func(i int) float64 { di := float64(i) * step; return drop * di * (d - di) }
-	near := func(km float64) (lo, hi int) {
-		lo = min(max(int(km/step), 1), count)
-		return lo, min(lo+1, count)
+// levelGround is a profile whose points all lie at height 0: count points at multiples of step and
+// the cell's own beyond them, km, under antennas at txM at 0 and rxM at d. drop is 500 over the
+// effective radius, m/km^2.
+//
+// What a search over all points would find is found without one. The sight lines have their extremes
+// next to known places, and on a free path the diffraction parameter has one maximum.
+type levelGround struct {
+	drop, txM, rxM float64
+	d, step        float64
+	count          int
+	own            []sample
+}
+
+func (l *levelGround) bulge(at float64) float64  { return l.drop * at * (l.d - at) }
+func (l *levelGround) fromTx(at float64) float64 { return (l.bulge(at) - l.txM) / at }
+func (l *levelGround) fromRx(at float64) float64 { return (l.bulge(at) - l.rxM) / (l.d - at) }
+
+// height is that over the ray by the root of the Fresnel zone, as in [propagation.Slopes].
+func (l *levelGround) height(at float64) float64 {
+	return (l.bulge(at) - (l.txM*(l.d-at)+l.rxM*at)/l.d) / math.Sqrt(at*(l.d-at)/l.d)
+}
+
+func (l *levelGround) slopes() propagation.Slopes {
+	s := propagation.Slopes{Stim: math.Inf(-1), Str: (l.rxM - l.txM) / l.d, Srim: math.Inf(-1), Height: math.Inf(-1)}
+	s.Stim = l.largest(l.fromTx, l.near(math.Sqrt(l.txM/l.drop)))
+	if s.Blocked() {
+		s.Srim = l.largest(l.fromRx, l.near(l.d-math.Sqrt(l.rxM/l.drop)))
+	} else {
+		s.Height = l.largest(l.height, l.peak())
 	}
-	if count < 1 {
-		return s
+	return s
+}
+
+// near is the number of the last point up to a distance, from 1 to count.
+func (l *levelGround) near(at float64) int { return min(max(int(at/l.step), 1), l.count) }
+
+// largest returns the largest value of f at point i, at the next, and at the cell's own points.
+func (l *levelGround) largest(f func(float64) float64, i int) float64 {
+	most := math.Inf(-1)
+	for k := max(i, 1); k <= min(i+1, l.count); k++ {
+		most = max(most, f(float64(k)*l.step))
 	}
-	fromTx := func(i int) float64 { return (bulge(i) - txM) / (float64(i) * step) }
-	lo, hi := near(math.Sqrt(txM / drop))
-	if s.Stim = max(fromTx(lo), fromTx(hi)); s.Blocked() {
-		fromRx := func(i int) float64 { return (bulge(i) - rxM) / (d - float64(i)*step) }
-		lo, hi = near(d - math.Sqrt(rxM/drop))
-		s.Srim = max(fromRx(lo), fromRx(hi))
-		return s
+	for k := range l.own {
+		most = max(most, f(l.own[k].d))
 	}
-	height := func(i int) float64 {
-		di := float64(i) * step
-		return (bulge(i) - (txM*(d-di)+rxM*di)/d) / math.Sqrt(di*(d-di)/d)
-	}
-	lo, hi = 1, count
-	for lo < hi { // the parameter grows up to its maximum and falls after it
-		if mid := (lo + hi) / 2; height(mid+1) > height(mid) {
+	return most
+}
+
+// peak is the number of the point with the greatest height: they grow up to it and fall after it.
+func (l *levelGround) peak() int {
+	lo, hi := 1, l.count
+	for lo < hi {
+		if mid := (lo + hi) / 2; l.height(float64(mid+1)*l.step) > l.height(float64(mid)*l.step) {
 			lo = mid + 1
 		} else {
 			hi = mid
 		}
 	}
-	s.Height = height(lo)
-	return s
+	return lo
 }

@@ -32,14 +32,14 @@ func (s *sweep) statedProfile(index int) (p terrain.Profile, latDeg float64, ok 
 	}
 	own := min(s.ownPoints, n)
 	first := n - own + 1
-	unit := s.stepM / distM
-	ray := terrain.Ray{East: east / distM * s.stepM * float64(first), North: north / distM * s.stepM * float64(first), StepEast: east * unit, StepNorth: north * unit}
 	aslM := make([]float64, own)
-	s.disc.Sample(ray, aslM, p.CoverM[first:n+1], p.Zone[first:n+1])
+	s.disc.Sample(s.ownRay(own, distM, east/distM, north/distM), aslM, p.CoverM[first:n+1], p.Zone[first:n+1])
 	for i, h := range aslM {
-		if !math.IsNaN(h) {
-			p.AslM[first+i] = h
+		p.DistKm[first+i] = distM/1000 - float64(own-i)*s.stepKm
+		if at := s.index(p.DistKm[first+i]); math.IsNaN(h) && at <= w.known {
+			h = w.aslM[at]
 		}
+		p.AslM[first+i] = h
 	}
 	p.DistKm[n+1] = distM / 1000
 	p.AslM[n+1], p.CoverM[n+1], p.Zone[n+1] = s.disc.Point(east, north)
