@@ -68,8 +68,8 @@ type Solution struct {
 	Efficiency float64
 	// GainKnown says that the pattern is gain and not directivity, as makers state it.
 	GainKnown bool
-	// Source says how the figures came about, for the budget's lines; Notes hold the limits
-	// of the method that were touched.
-	Source string
-	Notes  []string
+	// Source says how the figures came about, for the budget's lines; Remarks how the antenna was
+	// taken to be installed; Notes hold the limits of the method that were touched.
+	Source         string
+	Remarks, Notes []string
 }

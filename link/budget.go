@@ -41,6 +41,7 @@ type Budget struct {
 	DepartureDeg, ArrivalDeg float64
 	ChancePct                float64
 	Warnings                 []Warning
+	Remarks                  []Warning // how things were taken to be: nothing to act on
 }
 
 // A Warning is what a reader of a budget must know: a limit that was touched, at a station or,

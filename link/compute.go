@@ -18,7 +18,7 @@ type Result struct {
 	Verdict             Verdict
 	Clearance           propagation.FresnelClearance // AtKm counts from From
 	Sensitivity         Sensitivity
-	Warnings            []Warning
+	Warnings, Remarks   []Warning
 }
 
 // Compute works out a link over the ground between its ends. The profile p runs from the end
@@ -69,6 +69,9 @@ func (r *Result) direct(w *way, from, to *Station, freqHz float64) error {
 	r.ChancePct = min(r.ChancePct, b.ChancePct)
 	for _, warning := range b.Warnings {
 		r.Warnings = addWarning(r.Warnings, warning)
+	}
+	for _, remark := range b.Remarks {
+		r.Remarks = addWarning(r.Remarks, remark)
 	}
 	return nil
 }

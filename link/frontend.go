@@ -71,6 +71,9 @@ func (f *frontEnd) lines(b *Budget, toward antenna.Direction, transmits bool) {
 	}
 	b.Lines = append(b.Lines, part...)
 	b.warn(f.Name, f.warnings(toward)...)
+	for _, text := range f.solution.Remarks {
+		b.Remarks = addWarning(b.Remarks, Warning{f.Name, text})
+	}
 }
 
 func (f *frontEnd) insertLines(add func(Kind, string, float64, string), transmits, atMast bool) {

@@ -19,6 +19,7 @@ const (
 // ReadProfile reads a profile from comma-separated values under a header that names the columns:
 // d_km and h_m (distance and bare ground above sea level) and, where wanted, R_m (height of what
 // stands on the ground, else 0) and zone (1 sea, 3 coastal land, 4 inland, else 4), in any order.
+// The other columns of a section (lon, lat, ray_m, bulge_m, fresnel1_m) may stand beside them.
 // Distances start at 0 and increase. There are at least 2 points and at most 100,000, in at most
 // 16 MB.
 //
@@ -79,9 +80,9 @@ func (t *profileTable) readHeader() error {
 			column = strings.TrimPrefix(column, "\ufeff") // spreadsheets write a byte order mark
 		}
 		switch column {
-		case "d_km", "h_m", "R_m", "zone":
+		case "d_km", "h_m", "R_m", "zone", "lon", "lat", "ray_m", "bulge_m", "fresnel1_m":
 		default:
-			return t.errorf("unknown column %q, the columns are d_km, h_m, R_m and zone", column)
+			return t.errorf("unknown column %.40q, the columns are d_km, h_m, R_m and zone", column)
 		}
 		if seen[column] {
 			return t.errorf("column %s stands twice", column)
@@ -125,7 +126,7 @@ func (t *profileTable) add(record []string) error {
 	for i, column := range t.columns {
 		v, err := strconv.ParseFloat(strings.TrimSpace(record[i]), 64)
 		if err != nil || math.IsNaN(v) || math.IsInf(v, 0) {
-			return t.errorf("%s is %q, a number is needed", column, record[i])
+			return t.errorf("%s is %.40q, a number is needed", column, record[i])
 		}
 		switch column {
 		case "d_km":

@@ -208,24 +208,29 @@ func (n *Network) link(c *checker, path string, l Link) *link.Link {
 	out := &link.Link{
 		Name: l.Name, From: n.Stations[l.From], To: n.Stations[l.To], OneWay: l.OneWay,
 		Channel: c.Channels[l.Channel].resolve(l.Channel),
-		Aim:     link.Aim{AvailabilityPct: float64(*l.Aim.Availability)},
+		Aim:     l.Aim.resolve(),
 	}
 	for _, s := range []*link.Station{out.From, out.To} {
 		if s.CutForHz == 0 {
 			s.CutForHz = out.Channel.CentreHz()
 		}
 	}
-	if l.Aim.Margin != nil {
-		out.Aim.MarginDB = float64(*l.Aim.Margin)
-	}
-	if l.Aim.Chance != nil {
-		out.Aim.ChancePct = float64(*l.Aim.Chance)
-	}
 	if l.Fade != nil {
 		out.Fade = &link.Allowance{Name: "fading", LossDB: float64(*l.Fade), Source: "stated, " + c.source(path+".fade")}
 	}
 	for i, a := range l.Allowances {
 		out.Allowances = append(out.Allowances, link.Allowance{Name: a.Name, LossDB: float64(a.Loss), Source: c.source(fmt.Sprintf("%s.allowances[%d]", path, i))})
+	}
+	return out
+}
+
+func (a *Aim) resolve() link.Aim {
+	out := link.Aim{AvailabilityPct: float64(*a.Availability)}
+	if a.Margin != nil {
+		out.MarginDB = float64(*a.Margin)
+	}
+	if a.Chance != nil {
+		out.ChancePct = float64(*a.Chance)
 	}
 	return out
 }

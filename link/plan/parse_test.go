@@ -201,7 +201,7 @@ func TestAllProblemsAtOnce(t *testing.T) {
 
 func TestTooLarge(t *testing.T) {
 	_, err := Parse("large.yaml", []byte(bare+"# "+strings.Repeat("x", 10<<20)))
-	if err == nil || !strings.Contains(err.Error(), "larger than a plan may be, 4 MiB") {
+	if err == nil || !strings.Contains(err.Error(), "larger than a plan may be, 1 MiB") {
 		t.Errorf("a plan of 10 MB gave %v", err)
 	}
 }

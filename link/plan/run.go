@@ -15,8 +15,10 @@ import (
 
 // A Result is a plan computed: its links in the order of the plan.
 type Result struct {
-	Title string
-	Links []*link.Result
+	Title  string
+	Method string   // edition of the path method
+	Aim    link.Aim // of links that state none of their own
+	Links  []*link.Result
 	// Stations are the ends of the links, in the order of the plan, each once.
 	Stations []*link.Station
 	// Notes hold for the plan as a whole.
@@ -27,7 +29,7 @@ type Result struct {
 // finished, never twice at once. The errors of all links that have no answer come together, each
 // with its place in the plan.
 func (n *Network) Run(ctx context.Context, done func()) (*Result, error) {
-	r := &Result{Title: n.Title, Links: make([]*link.Result, len(n.Links))}
+	r := &Result{Title: n.Title, Method: n.Conditions.Method.Edition, Aim: n.plan.Aim.resolve(), Links: make([]*link.Result, len(n.Links))}
 	c := &checker{Plan: n.plan}
 	var mu sync.Mutex
 	work, inner := errgroup.WithContext(ctx)

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"io"
 	"math"
+	"strings"
 
 	"fellreach/antenna"
 	"fellreach/link/plan"
@@ -31,6 +32,7 @@ type Antenna struct {
 	Refined        *refinedJSON  `json:"refined,omitempty"`
 	Source         string        `json:"source"`
 	Warnings       []string      `json:"warnings"`
+	Notes          []string      `json:"notes"`
 	Toward         *towardJSON   `json:"toward,omitempty"`
 	Pattern        []patternJSON `json:"pattern"`
 }
@@ -82,7 +84,7 @@ func AntennaOf(a *plan.AntennaResult) Antenna {
 	out := Antenna{
 		Name: a.Name, Kind: a.Kind, FrequencyHz: a.FreqHz, ImpedanceOhm: ohm(a.ImpedanceOhm), VSWR: vswrJSON{a.VSWR, a.ReferenceOhm},
 		DirectivityDBi: a.DirectivityDBi, GainDBi: a.GainDBi, Efficiency: a.Efficiency, Segments: a.Segments, Source: a.Source,
-		Cut: []cutJSON{}, Warnings: append([]string{}, a.Notes...),
+		Cut: []cutJSON{}, Warnings: append([]string{}, a.Notes...), Notes: append([]string{}, a.Remarks...),
 	}
 	if a.ResonantHz > 0 {
 		out.ResonantHz, out.HzPerMM = &a.ResonantHz, &a.HzPerMM
@@ -156,12 +158,15 @@ func AntennaTable(w io.Writer, a *plan.AntennaResult) error {
 	if err := cutTable(w, a); err != nil {
 		return err
 	}
+	var notes strings.Builder
 	for _, note := range a.Notes {
-		if _, err := fmt.Fprintf(w, "warning: %s\n", note); err != nil {
-			return err
-		}
+		fmt.Fprintf(&notes, "warning: %s\n", note)
 	}
-	return nil
+	for _, remark := range a.Remarks {
+		fmt.Fprintf(&notes, "note: %s\n", remark)
+	}
+	_, err := io.WriteString(w, notes.String())
+	return err
 }
 
 func plusMinus(x float64) string {

@@ -30,6 +30,7 @@ type linkJSON struct {
 	Clearance   clearanceJSON   `json:"clearance"`
 	Sensitivity sensitivityJSON `json:"sensitivity"`
 	Warnings    []string        `json:"warnings"`
+	Notes       []string        `json:"notes"`
 	Directions  []directionJSON `json:"directions"`
 }
 
@@ -88,9 +89,13 @@ func linkOf(r *link.Result) linkJSON {
 		Clearance:   clearanceJSON{r.Clearance.WorstRatio, r.Clearance.AtKm, r.Clearance.NeededRatio},
 		Sensitivity: sensitivityJSON{r.Sensitivity.FromMastDB, r.Sensitivity.ToMastDB, r.Sensitivity.RasterDB, r.Sensitivity.ChancePct / 100},
 		Warnings:    []string{},
+		Notes:       []string{},
 	}
 	for _, w := range r.Warnings {
 		out.Warnings = append(out.Warnings, w.String())
+	}
+	for _, n := range r.Remarks {
+		out.Notes = append(out.Notes, n.String())
 	}
 	for _, b := range r.Directions {
 		d := directionJSON{

@@ -1,8 +1,10 @@
 package report
 
 import (
+	"cmp"
 	"fmt"
 	"io"
+	"math"
 	"slices"
 	"strings"
 
@@ -20,15 +22,15 @@ func LinksTable(w io.Writer, r *plan.Result) error {
 	for _, l := range r.Links {
 		back := "one way"
 		if len(l.Directions) > 1 {
-			back = signed(l.Directions[1].MarginDB, 1)
+			back = marginText(l.Directions[1].MarginDB)
 		}
 		t.AppendRow(table.Row{
 			l.Verdict.Mark() + " " + string(l.Verdict), l.Link.From.Name, l.Link.To.Name, l.Link.Channel.Name, decimals(l.Profile.LengthKm(), 2), azimuth(l.Profile.AzDeg),
-			signed(l.Directions[0].MarginDB, 1), back, percent(l.ChancePct), pathWords(l),
+			marginText(l.Directions[0].MarginDB), back, percent(l.ChancePct), pathWords(l),
 		})
 	}
 	t.right("km", "azimuth", "margin out", "back", "chance")
-	if _, err := fmt.Fprintf(w, "%s\n\n%s\n\n%s\n", r.Title, t.Render(), verdictCount(r.Links)); err != nil {
+	if _, err := fmt.Fprintf(w, "%s\n%s\n\n%s\n\n%s\n", r.Title, aimWords(r), t.Render(), verdictCount(r.Links)); err != nil {
 		return err
 	}
 	if err := writeWarnings(w, r.Links); err != nil {
@@ -42,6 +44,18 @@ func LinksTable(w io.Writer, r *plan.Result) error {
 	return nil
 }
 
+// aimWords says by what the links are judged.
+func aimWords(r *plan.Result) string {
+	aim := fmt.Sprintf("a margin of %g dB", r.Aim.MarginDB)
+	if r.Aim.ChancePct > 0 {
+		aim = fmt.Sprintf("a chance of %g %%", r.Aim.ChancePct)
+	}
+	return fmt.Sprintf("path by %s; aim: %s at %g %% of an average year, where a link states no other", r.Method, aim, r.Aim.AvailabilityPct)
+}
+
+// marginText rounds a margin down, so that none looks better than its verdict.
+func marginText(dB float64) string { return signed(math.Floor(dB*10+1e-9)/10, 1) }
+
 // pathWords says in words how freely a path runs.
 func pathWords(l *link.Result) string {
 	c := l.Clearance
@@ -49,7 +63,7 @@ func pathWords(l *link.Result) string {
 	case c.WorstRatio >= 1:
 		return "clear"
 	case c.WorstRatio >= c.NeededRatio:
-		return fmt.Sprintf("clear, %s F1 at %s km", decimals(c.WorstRatio, 1), decimals(c.AtKm, 1))
+		return fmt.Sprintf("clear, %s F1 at %s km", decimals(math.Floor(c.WorstRatio*10)/10, 1), decimals(c.AtKm, 1))
 	case c.WorstRatio >= 0:
 		return fmt.Sprintf("grazes at %s km", decimals(c.AtKm, 1))
 	}
@@ -61,38 +75,52 @@ func verdictCount(links []*link.Result) string {
 	for _, l := range links {
 		count[l.Verdict]++
 	}
-	return fmt.Sprintf("%s: %s, %d thin, %s. Margins in dB, azimuths from true north, F1 the first Fresnel radius.",
+	return fmt.Sprintf("%s: %s, %d thin, %s. Margins in dB, rounded down; azimuths from true north; F1 the first Fresnel radius.",
 		counted(len(links), "link", "links"), counted(count[link.Closes], "closes", "close"), count[link.Thin], counted(count[link.Fails], "fails", "fail"))
 }
 
-// writeWarnings lists each warning once, with the stations or links it stands for.
+// writeWarnings lists each warning and then each remark once, with the stations or links it
+// stands for.
 func writeWarnings(w io.Writer, links []*link.Result) error {
-	var order []string
-	places := map[string][]string{}
+	var warnings, remarks remarkList
 	for _, l := range links {
-		for _, warning := range l.Warnings {
-			place := warning.At
-			if place == "" {
-				place = l.Link.Title()
-			}
-			if places[warning.Text] == nil {
-				order = append(order, warning.Text)
-			}
-			if !slices.Contains(places[warning.Text], place) {
-				places[warning.Text] = append(places[warning.Text], place)
-			}
+		warnings.add(l.Link.Title(), l.Warnings)
+		remarks.add(l.Link.Title(), l.Remarks)
+	}
+	if len(warnings.texts)+len(remarks.texts) == 0 {
+		return nil
+	}
+	_, err := fmt.Fprintf(w, "\n%s%s", warnings.words("warning"), remarks.words("note"))
+	return err
+}
+
+// A remarkList holds texts in the order they came up, each with its places.
+type remarkList struct {
+	texts  []string
+	places map[string][]string
+}
+
+func (r *remarkList) add(title string, list []link.Warning) {
+	if r.places == nil {
+		r.places = map[string][]string{}
+	}
+	for _, one := range list {
+		place := cmp.Or(one.At, title)
+		if r.places[one.Text] == nil {
+			r.texts = append(r.texts, one.Text)
+		}
+		if !slices.Contains(r.places[one.Text], place) {
+			r.places[one.Text] = append(r.places[one.Text], place)
 		}
 	}
-	for i, text := range order {
-		lead := ""
-		if i == 0 {
-			lead = "\n"
-		}
-		if _, err := fmt.Fprintf(w, "%swarning: %s\n         (%s)\n", lead, text, strings.Join(places[text], ", ")); err != nil {
-			return err
-		}
+}
+
+func (r *remarkList) words(kind string) string {
+	var b strings.Builder
+	for _, text := range r.texts {
+		fmt.Fprintf(&b, "%s: %s\n%s(%s)\n", kind, text, strings.Repeat(" ", len(kind)+2), strings.Join(r.places[text], ", "))
 	}
-	return nil
+	return b.String()
 }
 
 // LinesTable writes the whole budget of every link, line by line, and what small changes do to it.
@@ -105,13 +133,18 @@ func LinesTable(w io.Writer, r *plan.Result) error {
 			t := newTable("line", "dB", "sum", "kind", "source")
 			sum := 0.0
 			for _, line := range b.Lines {
+				if line.Kind == link.NeedLine {
+					t.AppendSeparator()
+					t.AppendRow(table.Row{"received at " + b.To, "", decimals(b.ReceivedDBm, 2), "dBm"})
+					t.AppendSeparator()
+				}
 				sum += line.DB
 				t.AppendRow(table.Row{line.Name, signed(line.DB, 2), decimals(sum, 2), line.Kind, line.Source})
 			}
 			t.right("dB", "sum")
 			t.wrap("source", 72)
 			if _, err := fmt.Fprintf(w, "\n%s → %s at %s MHz: received %s dBm, required %s dBm, margin %s dB\n%s\n",
-				b.From, b.To, decimals(b.FreqHz/1e6, 4), decimals(b.ReceivedDBm, 1), decimals(b.RequiredDBm, 1), signed(b.MarginDB, 1), t.Render()); err != nil {
+				b.From, b.To, decimals(b.FreqHz/1e6, 4), decimals(b.ReceivedDBm, 1), decimals(b.RequiredDBm, 1), marginText(b.MarginDB), t.Render()); err != nil {
 				return err
 			}
 		}

@@ -82,7 +82,7 @@ func madeBudget(from, to *link.Station, freqHz, lossDB, marginDB float64) link.B
 // two frequencies.
 func madeResult() *plan.Result {
 	far := link.Warning{Text: "the path is made up"}
-	return &plan.Result{Title: "Made islets", Notes: []string{"a note on the whole plan"}, Stations: []*link.Station{harbour, reef, hill}, Links: []*link.Result{
+	return &plan.Result{Title: "Made islets", Method: "P.526-15", Aim: link.Aim{AvailabilityPct: 99, MarginDB: 6}, Notes: []string{"a note on the whole plan"}, Stations: []*link.Station{harbour, reef, hill}, Links: []*link.Result{
 		{
 			Link:    &link.Link{Name: "crossing", From: harbour, To: reef, Channel: poll},
 			Profile: madeProfile(harbour.At, reef.At, 10, 0, 0, 0, 0, 5),

@@ -121,13 +121,21 @@ func (d *drawing) ray() {
 	d.f(`<g transform="translate(%d,%d)" fill="%s"><path d="M0 -4h26" stroke="%s" stroke-width="1.8"/><text x="32">ray</text>`, svgLeft, svgHeight-10, inkQuiet, inkRay)
 	d.f(`<path d="M74 -4h26" stroke="%s" stroke-width="1.3" stroke-dasharray="6 3"/><text x="106">0.6 of the first Fresnel radius</text>`, inkZone)
 	d.f(`<path d="M312 -4h26" stroke="%s" stroke-dasharray="2 4"/><text x="344">sea level on the Earth’s bulge</text>`, inkBulge)
-	d.f(`<rect x="552" y="-11" width="14" height="11" fill="%s"/><text x="572">cover</text></g>`+"\n", inkCover)
+	d.f(`<rect x="572" y="-11" width="14" height="11" fill="%s"/><text x="592">cover</text>`, inkCover)
+	d.f(`<path d="M650 -4h26" stroke="%s" stroke-width="4"/><text x="682">sea</text></g>`+"\n", inkSea)
 }
 
-// ends draws the masts.
+// ends draws the masts and writes the antennas' heights above ground.
 func (d *drawing) ends() {
-	for _, i := range []int{0, len(d.RayM) - 1} {
-		x := d.x(d.Profile.DistKm[i])
+	last := len(d.RayM) - 1
+	for _, end := range []struct {
+		i      int
+		aglM   float64
+		anchor string
+		shift  float64
+	}{{0, d.Link.From.AglM, "start", 7}, {last, d.Link.To.AglM, "end", -7}} {
+		i, x := end.i, d.x(d.Profile.DistKm[end.i])
+		d.f(`<text x="%.1f" y="%.1f" text-anchor="%s" fill="%s" paint-order="stroke" stroke="#ffffff" stroke-width="3">%g m</text>`+"\n", x+end.shift, d.y(d.RayM[i])-7, end.anchor, inkText, end.aglM)
 		d.f(`<path d="M%.1f %.1fV%.1f" stroke="%s" stroke-width="2.5"/><circle cx="%.1f" cy="%.1f" r="3.5" fill="%s"/>`+"\n",
 			x, d.y(d.Profile.AslM[i]+d.BulgeM[i]), d.y(d.RayM[i]), inkText, x, d.y(d.RayM[i]), inkText)
 	}

@@ -88,7 +88,7 @@ func (f *file) describe(dataset gdal.Dataset, purpose use) error {
 	in.Driver = driverName(dataset)
 	in.Cols, in.Rows, in.Bands = dataset.RasterXSize(), dataset.RasterYSize(), dataset.RasterCount()
 	in.GeoTransform = dataset.GeoTransform()
-	if in.GeoTransform == [6]float64{0, 1, 0, 0, 0, 1} { // what GDAL hands out where there is none
+	if in.GeoTransform == [6]float64{0, 1, 0, 0, 0, 1} || in.GeoTransform == [6]float64{} { // what GDAL hands out where there is none
 		return errors.New("it does not say where on Earth it lies (no geotransform): georeference it, for instance with gdal_translate -a_ullr -a_srs")
 	}
 	inverse, ok := affine(in.GeoTransform).inverse()

@@ -65,7 +65,7 @@ func temporaryName(path string) (string, error) {
 	if err != nil {
 		return "", err
 	}
-	return f.Name(), f.Close()
+	return f.Name(), errors.Join(f.Chmod(0o644), f.Close())
 }
 
 // stored turns the grid into the numbers of the cell type.
