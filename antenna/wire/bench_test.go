@@ -88,7 +88,7 @@ func BenchmarkYagiCurve(b *testing.B) {
 	for i := range freqsHz {
 		freqsHz[i] = testHz * (0.95 + 0.0025*float64(i))
 	}
-	onMast := installed(antenna.Setting{FreqHz: testHz, MastDiameterM: 0.08, StandoffM: 0.6})
+	onMast := endless(antenna.Setting{FreqHz: testHz, MastDiameterM: 0.08, StandoffM: 0.6})
 	for name, in := range map[string]Installation{"clear": clearOfMasts(), "mast": onMast} {
 		b.Run(name, func(b *testing.B) {
 			b.ReportAllocs()
@@ -104,7 +104,7 @@ func BenchmarkYagiCurve(b *testing.B) {
 // BenchmarkResonanceOnMast cuts a dipole to resonance beside a mast of 114 mm at 151.5 MHz; the
 // sweep is 41 frequencies of it.
 func BenchmarkResonanceOnMast(b *testing.B) {
-	in, err := installed(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.114, StandoffM: 0.5}).checked()
+	in, err := endless(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.114, StandoffM: 0.5}).checked()
 	if err != nil {
 		b.Fatal(err)
 	}

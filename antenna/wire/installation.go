@@ -15,8 +15,8 @@ const (
 	mastBelowReachWl = 0.5  // of the conductor there
 )
 
-// An Installation is how and where an antenna is used: a setting, and what the pole beside it
-// needs to know more.
+// An Installation is how and where an antenna is used: a setting, with its roll and the height of
+// its mast, which count here and not in the setting inside.
 type Installation struct {
 	antenna.Setting
 	// RollDeg is how far the mount rolls the antenna about its facing ([antenna.Mount]). The mast
@@ -29,9 +29,9 @@ type Installation struct {
 	MastAboveM float64
 }
 
-// installed returns the installation of a setting alone: upright, beside a mast that goes on.
+// installed returns the installation that a setting describes.
 func installed(s antenna.Setting) Installation {
-	return Installation{Setting: s, MastAboveM: math.Inf(1)}
+	return Installation{Setting: s, RollDeg: s.RollDeg, MastAboveM: s.MastAboveM}
 }
 
 // checked returns the installation with its defaults filled in, or an error.

@@ -23,8 +23,14 @@ func rodOf(t testing.TB, lengthM, radiusM, at float64) Antenna {
 	return built(t, a, err)
 }
 
+// endless is the installation of a setting whose mast goes on and on above the antenna.
+func endless(s antenna.Setting) Installation {
+	s.MastAboveM = math.Inf(1)
+	return installed(s)
+}
+
 // clearOfMasts is an installation without a mast at the tests' wavelength of 1 m.
-func clearOfMasts() Installation { return installed(antenna.Setting{FreqHz: testHz}) }
+func clearOfMasts() Installation { return endless(antenna.Setting{FreqHz: testHz}) }
 
 func cutM(t testing.TB, a Antenna) float64 {
 	t.Helper()

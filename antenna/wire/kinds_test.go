@@ -47,8 +47,8 @@ func TestKinds(t *testing.T) {
 	built(t, yagi, err)
 	stack, err := Stack(StackSpec{Of: dipole, Count: 3, Spacing: wavelengthsOf(0.8)})
 	built(t, stack, err)
-	onMast := installed(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.114, StandoffM: 0.7})
-	onTop := installed(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.06})
+	onMast := endless(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.114, StandoffM: 0.7})
+	onTop := endless(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.06})
 	for _, tc := range []struct {
 		a           Antenna
 		kind        string
@@ -64,7 +64,7 @@ func TestKinds(t *testing.T) {
 		if tc.a.Kind != tc.kind || tc.a.Directional != tc.directional {
 			t.Errorf("kind %q, directional %v; want %q, %v", tc.a.Kind, tc.a.Directional, tc.kind, tc.directional)
 		}
-		for _, in := range []Installation{installed(antenna.Setting{FreqHz: channelHz}), onMast, onTop} {
+		for _, in := range []Installation{endless(antenna.Setting{FreqHz: channelHz}), onMast, onTop} {
 			r := analysed(t, tc.a, in, 50)
 			if abs(imag(r.ImpedanceOhm)) > 0.02 || abs(r.ResonantHz/channelHz-1) > 1e-4 {
 				t.Errorf("%s: %.3f ohm at the channel, resonant at %.4f MHz", tc.kind, r.ImpedanceOhm, r.ResonantHz/1e6)
@@ -84,7 +84,7 @@ func TestKinds(t *testing.T) {
 			if len(c.wires) != tc.wires {
 				t.Errorf("%s: %d wires, want %d", tc.kind, len(c.wires), tc.wires)
 			}
-			if in.MastDiameterM > 0 && len(r.Notes) == 0 {
+			if in.MastDiameterM > 0 && len(r.Remarks) == 0 {
 				t.Errorf("%s: no note of its mast", tc.kind)
 			}
 		}
@@ -100,8 +100,8 @@ func TestAnalysis(t *testing.T) {
 	a, err := Dipole(spec)
 	built(t, a, err)
 	for _, in := range []Installation{
-		installed(antenna.Setting{FreqHz: channelHz}),
-		installed(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.114, StandoffM: 0.5}),
+		endless(antenna.Setting{FreqHz: channelHz}),
+		endless(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.114, StandoffM: 0.5}),
 	} {
 		r := analysed(t, a, in, 50)
 		near(t, "gain under directivity", r.DirectivityDBi-r.GainDBi, -10*math.Log10(r.Efficiency), 1e-9)
@@ -134,19 +134,19 @@ func TestAnalysis(t *testing.T) {
 // VSWR above 2 at the frequency of interest leads to the band nearby, or to none.
 func TestAnalysisBesideTheBand(t *testing.T) {
 	a := rodOf(t, 0, 0.006, 0.5)
-	r := analysed(t, a, installed(antenna.Setting{FreqHz: 170e6, DesignHz: channelHz}), 50)
+	r := analysed(t, a, endless(antenna.Setting{FreqHz: 170e6, DesignHz: channelHz}), 50)
 	if r.VSWR < 2 || r.BandHz[0] > channelHz || r.BandHz[1] < channelHz {
 		t.Errorf("VSWR %.2f at 170 MHz, band %v Hz", r.VSWR, r.BandHz)
 	}
 	near(t, "resonance", r.ResonantHz, channelHz, 1e-4*channelHz)
-	if r := analysed(t, a, installed(antenna.Setting{FreqHz: channelHz}), 5000); r.BandHz != [2]float64{} || r.BandWidth() != 0 {
+	if r := analysed(t, a, endless(antenna.Setting{FreqHz: channelHz}), 5000); r.BandHz != [2]float64{} || r.BandWidth() != 0 {
 		t.Errorf("band %v Hz in 5000 ohm, want none", r.BandHz)
 	}
-	far := analysed(t, a, installed(antenna.Setting{FreqHz: 430e6, DesignHz: channelHz}), 50)
+	far := analysed(t, a, endless(antenna.Setting{FreqHz: 430e6, DesignHz: channelHz}), 50)
 	if far.ResonantHz < 430e6 || far.ResonantHz > 490e6 {
 		t.Errorf("three half waves resonate at %.1f MHz, want a little above three times the design", far.ResonantHz/1e6)
 	}
-	if _, err := a.Analyse(installed(antenna.Setting{FreqHz: channelHz}), -50); err == nil {
+	if _, err := a.Analyse(endless(antenna.Setting{FreqHz: channelHz}), -50); err == nil {
 		t.Error("a reference of -50 ohm was taken")
 	}
 }
@@ -233,10 +233,10 @@ func TestBadInstallations(t *testing.T) {
 		{"frequency", rod, Installation{}, "frequency 0 Hz"},
 		{"roll", rod, Installation{Setting: antenna.Setting{FreqHz: testHz}, RollDeg: math.NaN()}, "roll NaN deg"},
 		{"mast height", rod, Installation{Setting: antenna.Setting{FreqHz: testHz}, MastAboveM: math.NaN()}, "mast's height"},
-		{"in the mast", rod, installed(antenna.Setting{FreqHz: testHz, MastDiameterM: 0.2, StandoffM: 0.05}), "runs into the mast"},
-		{"mast", rod, installed(antenna.Setting{FreqHz: testHz, MastDiameterM: 5, StandoffM: 4}), "mast diameter 5 m is out of range"},
-		{"too thick", thick, installed(antenna.Setting{FreqHz: testHz}), "too long"},
-		{"stack overlaps", overlapping, installed(antenna.Setting{FreqHz: testHz}), "wires 1 and 2 cross, touch or overlap"},
+		{"in the mast", rod, endless(antenna.Setting{FreqHz: testHz, MastDiameterM: 0.2, StandoffM: 0.05}), "runs into the mast"},
+		{"mast", rod, endless(antenna.Setting{FreqHz: testHz, MastDiameterM: 5, StandoffM: 4}), "mast diameter 5 m is out of range"},
+		{"too thick", thick, endless(antenna.Setting{FreqHz: testHz}), "too long"},
+		{"stack overlaps", overlapping, endless(antenna.Setting{FreqHz: testHz}), "wires 1 and 2 cross, touch or overlap"},
 	} {
 		for _, solve := range []func() error{
 			func() error { _, err := tc.a.SolveInstalled(tc.in); return err },
@@ -282,10 +282,11 @@ func TestWires(t *testing.T) {
 // Many at once get the same answer, to the last bit, and each question is answered once.
 func TestSolutionsAreShared(t *testing.T) {
 	a := rodOf(t, 0, 0.003, 0.5)
-	s := antenna.Setting{FreqHz: testHz, MastDiameterM: 0.05, StandoffM: 0.3}
+	s := antenna.Setting{FreqHz: testHz, MastDiameterM: 0.05, StandoffM: 0.3, MastAboveM: 0.4, RollDeg: 30}
+	in := installed(s)
 	answers := make([]antenna.Solution, 16)
 	parallel(len(answers), func(i int) { answers[i], _ = a.Solve(s) })
-	fresh, err := rodOf(t, 0, 0.003, 0.5).Solve(s)
+	fresh, err := rodOf(t, 0, 0.003, 0.5).SolveInstalled(in)
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -70,25 +70,15 @@ func (m Mast) check(wavelengthM float64) error {
 // place, with their inner nodes as basis functions, wire by wire.
 func (m Mast) mesh(toward vec, wavelengthM float64) *mesh {
 	wires := m.wireCount(wavelengthM)
-	up := m.line().along().unit()
-	out := vec(m.From).to(toward).across(up)
-	if out.length() < 1e-9*wavelengthM { // straight above: any direction serves
-		out = vec{up[2], up[0], up[1]}.across(up)
-		if out.length() < 0.1 {
-			out = vec{1, 0, 0}.across(up)
-		}
-	}
-	out = out.unit()
-	left := up.cross(out)
-	lengthM := m.lengthM()
-	count := int(math.Ceil(lengthM / (mastSegmentWl * wavelengthM)))
+	out := m.sideways(toward)
+	left := m.line().along().unit().cross(out)
+	count := int(math.Ceil(m.lengthM() / (mastSegmentWl * wavelengthM)))
 	around := &mesh{}
 	for w := range wires {
-		r := run{wire: -1, start: m.From, along: up, stepM: lengthM / float64(count), count: count, radiusM: m.radiusM()}
+		r := run{start: m.From, along: m.line().along().unit(), stepM: m.lengthM() / float64(count), count: count, radiusM: m.radiusM() / float64(wires)}
 		if wires > 1 {
 			sin, cos := math.Sincos(2 * math.Pi * (float64(w) - 0.5) / float64(wires))
 			r.start = r.start.plus(out.times(m.radiusM() * cos)).plus(left.times(m.radiusM() * sin))
-			r.radiusM /= float64(wires)
 		}
 		around.runs = append(around.runs, r)
 		for n := 1; n < count; n++ {
@@ -96,6 +86,17 @@ func (m Mast) mesh(toward vec, wavelengthM float64) *mesh {
 		}
 	}
 	return around
+}
+
+// sideways returns the unit vector square to the mast towards a place, or any if it is in line.
+func (m Mast) sideways(place vec) vec {
+	up := m.line().along().unit()
+	for _, to := range []vec{vec(m.From).to(place), {1, 0, 0}, {0, 1, 0}} {
+		if out := to.across(up); out.length() > 1e-6*to.length() {
+			return out.unit()
+		}
+	}
+	panic("wire: a mast without a direction")
 }
 
 // A cage is the impedance matrix of a mast, factored. All its wires being alike and equally spaced

@@ -150,7 +150,7 @@ func TestRolledAntennaOnUprightMast(t *testing.T) {
 	a, err := Yagi(spec)
 	built(t, a, err)
 	for _, rollDeg := range []float64{0, 35, 90} {
-		in := installed(antenna.Setting{FreqHz: testHz, MastDiameterM: 0.06, StandoffM: 0.4})
+		in := endless(antenna.Setting{FreqHz: testHz, MastDiameterM: 0.06, StandoffM: 0.4})
 		in.RollDeg, in.MastAboveM = rollDeg, 0.7
 		got, err := a.SolveInstalled(in)
 		if err != nil {
@@ -183,7 +183,7 @@ func TestRolledAntennaOnUprightMast(t *testing.T) {
 // The extent of the mast, as its rule has it.
 func TestMastOfAnInstallation(t *testing.T) {
 	rod := layout{wires: []Wire{upright(0.5, 0.001)}, boomMiddleM: 0.1}
-	in := installed(antenna.Setting{FreqHz: testHz, DesignHz: testHz, MastDiameterM: 0.05})
+	in := endless(antenna.Setting{FreqHz: testHz, DesignHz: testHz, MastDiameterM: 0.05})
 	for _, tc := range []struct {
 		standoffM, aboveM float64
 		from, to          vec

@@ -237,3 +237,77 @@ func TestTypedPatterns(t *testing.T) {
 		near(t, "width of "+format(tc.lengthM)+" wl", widthDeg, tc.widthDeg, 0.3)
 	}
 }
+
+// Wires as x y z of both ends and radius, as in the reference; the feed is a series gap in the first
+// wire that meets its place. Gains along x, y and z; those left out are low.
+func TestTypedJunctions(t *testing.T) {
+	const low = -99
+	for _, tc := range []struct {
+		name, wires, feed      string
+		r, x, tolR, tolX       float64
+		gainX, gainY, gainZDBi float64
+	}{
+		{"whip on four flat radials", "0 0 0 0 0 0.24 0.002;0 0 0 0.25 0 0 0.002;0 0 0 0 0.25 0 0.002;0 0 0 -0.25 0 0 0.002;0 0 0 0 -0.25 0 0.002", "0 0 0", 20.5423, -10.6708, 0.31, 2, 1.54, 1.54, low},
+		{"whip on three radials", "0 0 0 0 0 0.235 0.001;0 0 0 0.233827 0 -0.135 0.001;0 0 0 -0.116913 0.2025 -0.135 0.001;0 0 0 -0.116913 -0.2025 -0.135 0.001", "0 0 0", 46.5181, 10.0335, 0.7, 2, 1.69, 1.69, low},
+		{"whip on four steep radials", "0 0 0 0 0 0.235 0.001;0 0 0 0.13 0 -0.225167 0.001;0 0 0 0 0.13 -0.225167 0.001;0 0 0 -0.13 0 -0.225167 0.001;0 0 0 0 -0.13 -0.225167 0.001", "0 0 0", 77.7571, 32.7928, 1.2, 2, 2.03, 2.03, low},
+		{"vee of 90 degrees", "0 0 0 0.169706 0 0.169706 0.001;0 0 0 -0.169706 0 0.169706 0.001", "0 0 0", 38.3063, -22.7858, 0.58, 2, -6.81, 1.75, 1.5},
+		{"vee of 120 degrees", "0 0 0 0.207846 0 0.12 0.001;0 0 0 -0.207846 0 0.12 0.001", "0 0 0", 56.803, -5.17894, 0.86, 2, -9.87, 1.95, 1.84},
+		{"top hats", "0 0 -0.05 0 0 0.05 0.001;0 0 0.05 0.05 0 0.05 0.001;0 0 0.05 0 0.05 0.05 0.001;0 0 0.05 -0.05 0 0.05 0.001;0 0 0.05 0 -0.05 0.05 0.001;0 0 -0.05 0.05 0 -0.05 0.001;0 0 -0.05 0 0.05 -0.05 0.001;0 0 -0.05 -0.05 0 -0.05 0.001;0 0 -0.05 0 -0.05 -0.05 0.001", "0 0 0", 6.13312, -253.623, 0.11, 9.1, 1.77, 1.77, low},
+		{"without hats", "0 0 -0.075 0 0 0.075 0.001", "0 0 0", 3.9447, -747.433, 0.19, 23, 1.79, 1.79, low},
+		{"loop of one wave", "-0.125 0 -0.125 0.125 0 -0.125 0.001;0.125 0 -0.125 0.125 0 0.125 0.001;0.125 0 0.125 -0.125 0 0.125 0.001;-0.125 0 0.125 -0.125 0 -0.125 0.001", "0 0 -0.125", 101.517, -141.694, 1.6, 2.7, -15.99, 3.09, -0.3},
+		{"loop of 0.9 wave", "-0.1125 0 -0.1125 0.1125 0 -0.1125 0.001;0.1125 0 -0.1125 0.1125 0 0.1125 0.001;0.1125 0 0.1125 -0.1125 0 0.1125 0.001;-0.1125 0 0.1125 -0.1125 0 -0.1125 0.001", "0 0 -0.1125", 84.5099, -294.878, 1.7, 4.7, -11.43, 2.73, 0.01},
+		{"stepped radius", "0 0 -0.12 0 0 0.12 0.004;0 0 0.12 0 0 0.235 0.002;0 0 -0.12 0 0 -0.235 0.002", "0 0 0", 60.342, -40.8462, 0.91, 2, 2.12, 2.12, low},
+		{"bent ends", "0 0 -0.18 0 0 0.18 0.001;0 0 0.18 0.06 0 0.18 0.001;0 0 -0.18 0.06 0 -0.18 0.001", "0 0 0", 58.8264, -23.0027, 0.89, 2.2, 2.02, 2.02, -19.53},
+		{"J", "0 0 0 0 0 0.73 0.002;0.03 0 0 0.03 0 0.235 0.002;0 0 0 0.03 0 0 0.002", "0.015 0 0", 23.7934, 16.791, 0.36, 2, 2.42, 2.05, -13.46},
+	} {
+		n, r := excited(t, parsedStructure(t, map[string]string{"id": tc.name, "wires": tc.wires, "feed_point": tc.feed}))
+		near(t, tc.name+": R", real(n.TogetherOhm()), tc.r, tc.tolR)
+		near(t, tc.name+": X", imag(n.TogetherOhm()), tc.x, tc.tolX)
+		near(t, tc.name+": power balance", r.Balance(), 1, 5e-4)
+		for i, want := range []float64{tc.gainX, tc.gainY, tc.gainZDBi} {
+			var to vec
+			to[i] = 1
+			switch got := r.gainDBi(to); {
+			case want > -10:
+				near(t, tc.name+": gain along "+"xyz"[i:i+1], got, want, 0.06)
+			case got > -7:
+				t.Errorf("%s: gain along %c = %.2f dBi, want it low", tc.name, "xyz"[i], got)
+			}
+		}
+	}
+}
+
+// Efficiencies of dipoles; the tolerance is 2 % of the loss. Conductivities are those of handbooks.
+func TestTypedLosses(t *testing.T) {
+	for _, tc := range []struct {
+		metal                                              string
+		sPerM, permeability, megahertz, radiusMM, lengthM  float64
+		efficiency, tolerance, resistanceOhm, reactanceOhm float64
+	}{
+		{"copper", 5.8e+07, 1, 30, 0.5, 4.79668, 0.984153, 0.00032, 70.6911, -15.3269},
+		{"zinc coat", 1.69e+07, 1, 30, 0.5, 4.79668, 0.970742, 0.00059, 71.7256, -14.4482},
+		{"pure aluminium", 3.77e+07, 1, 30, 5, 4.74671, 0.998024, 0.0003, 69.9384, -8.95913},
+		{"stainless", 1.39e+06, 1, 50, 1, 2.87801, 0.960723, 0.00079, 73.7202, -4.44166},
+		{"zinc coat", 1.69e+07, 1, 100, 1, 1.42401, 0.991913, 0.0003, 69.7658, -12.4795},
+		{"stainless", 1.39e+06, 1, 300, 1, 0.469675, 0.983691, 0.00033, 70.0081, -10.7476},
+		{"copper", 5.8e+07, 1, 450, 2, 0.306455, 0.998954, 0.0003, 67.068, -14.1},
+		{"steel", 6e+06, 100, 1000, 0.5, 0.140902, 0.920805, 0.0016, 76.9636, -1.02742},
+		{"stainless", 1.39e+06, 1, 2400, 0.4, 0.0562111, 0.985121, 0.0003, 63.2835, -26.3023},
+		{"zinc coat, short", 1.69e+07, 1, 30, 1, 0.999308, 0.933077, 0.0014, 1.96193, -1890.67},
+		{"steel, short", 6e+06, 100, 50, 2, 0.599585, 0.684546, 0.0064, 2.57437, -1436.73},
+		{"copper, short", 5.8e+07, 1, 100, 1, 0.149896, 0.959602, 0.00081, 0.432427, -2414.95},
+		{"thin aluminium, short", 3.77e+07, 1, 40, 0.2, 1.49896, 0.904137, 0.002, 8.83846, -1175.01},
+	} {
+		a, err := Dipole(antenna.DipoleSpec{
+			Length: metresOf(tc.lengthM), FeedAt: 0.5, DiameterM: 2e-3 * tc.radiusMM,
+			Material: antenna.Material{Name: tc.metal, ConductivitySPerM: tc.sPerM, RelativePermeability: tc.permeability},
+		})
+		s, err := built(t, a, err).Solve(antenna.Setting{FreqHz: tc.megahertz * 1e6})
+		if err != nil {
+			t.Fatal(err)
+		}
+		near(t, "efficiency of "+tc.metal, s.Efficiency, tc.efficiency, tc.tolerance)
+		near(t, "R of "+tc.metal, real(s.ImpedanceOhm), tc.resistanceOhm, 0.02*tc.resistanceOhm)
+		near(t, "X of "+tc.metal, imag(s.ImpedanceOhm), tc.reactanceOhm, 1.5+0.01*abs(tc.reactanceOhm))
+	}
+}
