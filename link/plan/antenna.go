@@ -24,6 +24,7 @@ type AntennaQuery struct {
 	SlantDeg                 float64 // from upright
 	Refine                   bool    // solve once more, finer
 	Sweep                    bool    // find the VSWR curve
+	Bare                     bool    // leave a station's mast out
 }
 
 // An AntennaResult is an antenna as installed. The azimuth 0 of its Mount is the facing.
@@ -70,23 +71,28 @@ func (p *Plan) Antenna(q AntennaQuery) (*AntennaResult, error) {
 	setting := antenna.Setting{
 		FreqHz: freqHz, DesignHz: freqHz, MastDiameterM: q.MastDiameterM, StandoffM: q.StandoffM, RollDeg: q.SlantDeg, MastAboveM: math.Inf(1),
 	}
-	ratio := 1.0
-	if b.match.Ratio > 0 {
-		ratio = b.match.Ratio
-	}
-	if b.wires == nil {
-		return r, r.stated(b, setting, ratio)
-	}
-	return r, r.solved(q, b.wires, setting, ratio)
+	return r, r.solve(q, b, setting, lineOhm)
 }
 
 // lineOhm is the line that the antenna command holds a VSWR against.
 const lineOhm = 50
 
-// solved fills in an antenna of wires.
-func (r *AntennaResult) solved(q AntennaQuery, wires *wire.Antenna, setting antenna.Setting, ratio float64) error {
+// solve fills in an antenna in a setting, its VSWR against a line behind its transformer.
+func (r *AntennaResult) solve(q AntennaQuery, b built, setting antenna.Setting, lineOhm float64) error {
+	referenceOhm := lineOhm
+	if b.match.Ratio > 0 {
+		referenceOhm *= b.match.Ratio
+	}
+	if b.wires == nil {
+		return r.stated(b, setting, referenceOhm)
+	}
+	return r.solved(q, b.wires, setting, referenceOhm)
+}
+
+// solved fills in an antenna of wires; its VSWR is against the reference.
+func (r *AntennaResult) solved(q AntennaQuery, wires *wire.Antenna, setting antenna.Setting, referenceOhm float64) error {
 	var err error
-	if r.Analysis, err = wires.Analyse(installation(setting), lineOhm*ratio); err != nil {
+	if r.Analysis, err = wires.Analyse(installation(setting), referenceOhm); err != nil {
 		return err
 	}
 	if q.Refine {
@@ -105,19 +111,19 @@ func (r *AntennaResult) solved(q AntennaQuery, wires *wire.Antenna, setting ante
 	}
 	impedances, err := wires.Sweep(installation(setting), freqs)
 	for i := range impedances {
-		r.Curve = append(r.Curve, VSWRPoint{freqs[i], antenna.VSWR(impedances[i], lineOhm*ratio)})
+		r.Curve = append(r.Curve, VSWRPoint{freqs[i], antenna.VSWR(impedances[i], referenceOhm)})
 	}
 	return err
 }
 
 // stated fills in an antenna of its maker's figures.
-func (r *AntennaResult) stated(b built, setting antenna.Setting, ratio float64) error {
+func (r *AntennaResult) stated(b built, setting antenna.Setting, referenceOhm float64) error {
 	s, err := b.Solve(setting)
 	if err != nil {
 		return err
 	}
 	r.Analysis = wire.Analysis{
-		Solution: s, FreqHz: setting.FreqHz, ReferenceOhm: lineOhm * ratio, VSWR: antenna.VSWR(s.ImpedanceOhm, lineOhm*ratio),
+		Solution: s, FreqHz: setting.FreqHz, ReferenceOhm: referenceOhm, VSWR: antenna.VSWR(s.ImpedanceOhm, referenceOhm),
 		DirectivityDBi: s.Pattern.PeakDBi, GainDBi: s.Pattern.PeakDBi + 10*math.Log10(s.Efficiency),
 	}
 	return nil

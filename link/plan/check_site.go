@@ -61,9 +61,15 @@ func (c *checker) station(path string, s Site, st Station) {
 	}
 }
 
+// The heights above ground that an antenna may have, in metres.
+const (
+	minAglM = 0.1
+	maxAglM = 1000.0
+)
+
 func (c *checker) antennaUse(path string, s Site, a AntennaUse) {
 	known := refers(c, path+".use", a.Use, c.Antennas, "antenna")
-	c.within(path+".above_ground", float64(a.AboveGround), 0.1, 1000, "m")
+	c.within(path+".above_ground", float64(a.AboveGround), minAglM, maxAglM, "m")
 	if known && directional[c.Antennas[a.Use].Kind] && a.Facing == nil {
 		c.wrong(path+".facing", "is missing", fmt.Sprintf(`a %s has a beam; write facing: "123 deg" or "toward SITE"`, c.Antennas[a.Use].Kind))
 	}

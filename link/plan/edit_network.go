@@ -39,7 +39,9 @@ func (p *Plan) designsOf(before *Network) map[string]built {
 	if before == nil {
 		return map[string]built{}
 	}
+	before.designing.Lock()
 	designs := maps.Clone(before.designs)
+	before.designing.Unlock()
 	maps.DeleteFunc(designs, func(name string, _ built) bool { return !p.sameAntenna(before.plan, name) })
 	return designs
 }

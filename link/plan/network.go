@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"sync"
 
 	"fellreach/link"
 	"fellreach/terrain"
@@ -25,6 +26,8 @@ type Network struct {
 	places  []orb.Point // of the plan's sites
 	spec    raster.Spec
 	designs map[string]built // by the antenna's name
+
+	designing sync.Mutex // guards designs once the network is open
 }
 
 // Open opens the plan's rasters and resolves its names. Errors are [Errors] where they have a
