@@ -24,7 +24,7 @@ type PlanAnswer struct {
 
 // A TextBody is a text of the plan.
 type TextBody struct {
-	Text string `json:"text" maxLength:"4194304"`
+	Text string `json:"text" maxLength:"1048576"`
 }
 
 // A Checked text is good if it has no problems.
@@ -36,7 +36,7 @@ type Checked struct {
 // A SaveBody is a text to put into the plan's file.
 type SaveBody struct {
 	Read string `json:"read" doc:"the version that the file held when it was read" maxLength:"64"`
-	Text string `json:"text" maxLength:"4194304"`
+	Text string `json:"text" maxLength:"1048576"`
 }
 
 // Saved tells the file's new version.

@@ -18,7 +18,7 @@ import (
 
 // Limits of the server. Event streams end with their job and know no time limit of their own.
 const (
-	maxPlanBytes   = 4 << 20 // of a plan's text, as the plan package takes it
+	maxPlanBytes   = 1 << 20 // of a plan's text, as the plan package takes it
 	maxBodyBytes   = 2*maxPlanBytes + 64<<10
 	maxHeaderBytes = 64 << 10
 	readTimeout    = 30 * time.Second
