@@ -26,7 +26,8 @@ type PlacesDirection struct {
 	SentDBm, FixedDB float64
 
 	tx, rx  frontEnd
-	outward bool // From transmits
+	outward bool           // From transmits
+	atPlace *antenna.Field // of the antenna at the place, where it is the same in all directions
 }
 
 // A PlacePath is the path to a place: its directions as seen at the link's From and at the place,
@@ -79,6 +80,14 @@ func (p *Places) add(from, to *Station, freqHz float64, outward bool) error {
 	if d.rx, err = to.frontEnd(freqHz, p.link.Channel); err != nil {
 		return err
 	}
+	place := &d.rx
+	if !outward {
+		place = &d.tx
+	}
+	if place.Antenna.Kind == "isotropic" && place.Mount == (antenna.Mount{}) {
+		field := place.field(antenna.Direction{})
+		d.atPlace = &field
+	}
 	fixed := Budget{FreqHz: freqHz}
 	d.SentDBm += d.tx.fixedDB(true)
 	from.surroundingsLine(&fixed, freqHz)
@@ -113,7 +122,15 @@ func (d *PlacesDirection) Antennas(p *PlacePath) (sentDBi, caughtDB, verticalPar
 	if !d.outward {
 		out, in = in, out
 	}
-	sent, caught := d.tx.field(out), d.rx.field(in)
+	var sent, caught antenna.Field
+	switch {
+	case d.atPlace == nil:
+		sent, caught = d.tx.field(out), d.rx.field(in)
+	case d.outward:
+		sent, caught = d.tx.field(out), *d.atPlace
+	default:
+		sent, caught = *d.atPlace, d.rx.field(in)
+	}
 	floor := float64(crossedClearDB)
 	if p.Trans {
 		floor = crossedObstructedDB

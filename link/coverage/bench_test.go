@@ -18,6 +18,7 @@ func BenchmarkSweep(b *testing.B) {
 			if err != nil {
 				b.Fatal(err)
 			}
+			vertical := fixedShare(1)
 			brief := propagation.NewBrief(propagation.P1812, 450e6, 325, propagation.Region{MostKm: 20, LeastLatDeg: 47}, timeRequests[:1])
 			cells := make([]float32, frame.Cols*frame.Rows)
 			b.ReportAllocs()
@@ -25,7 +26,7 @@ func BenchmarkSweep(b *testing.B) {
 				_, err := s.run(context.Background(), func() func(*Cell) {
 					out := make([]propagation.Combined, 1)
 					return func(c *Cell) {
-						brief.Loss(&c.Outline, c, 1, out)
+						brief.Loss(&c.Outline, c, vertical, out)
 						cells[c.Index] = float32(out[0].LossDB(0))
 					}
 				}, nil)

@@ -69,12 +69,12 @@ func TestCellIsALink(t *testing.T) {
 					return
 				}
 				compared++
-				path := c.path()
+				r.cell = c
 				want := linkTo(t, task, s, c.Index)
 				for i := range want.Directions {
 					d, b := &r.places.Directions[i], want.Directions[i]
-					got := r.direction(i, d, c, &path)
-					location := locationLine(t, task, s, c, b.FreqHz, got.verticalPart)
+					got := r.direction(i)
+					location := locationLine(t, task, s, c, b.FreqHz, r.pair.verticalPart)
 					if diff := got.marginDB + got.lossDB - (b.MarginDB - location + b.TransmissionLossDB); !(math.Abs(diff) <= tc.within) {
 						t.Errorf("cell %d, direction %d: the margin is off by %.3g dB; %+v", c.Index, i, diff, got)
 					}
@@ -85,7 +85,7 @@ func TestCellIsALink(t *testing.T) {
 						continue
 					}
 					// 77.21 dB lead from the power of an isotropic antenna, dBm, to its field, dB(uV/m), with MHz: P.1812 (70).
-					field := propagation.FieldStrength(d.FreqHz, d.SentDBm+got.sentDBi, got.lossDB)
+					field := propagation.FieldStrength(d.FreqHz, d.SentDBm+r.pair.sentDBi, got.lossDB)
 					if byHand := radiatedDBm(b) + 20*math.Log10(b.FreqHz/1e6) + 77.21 - b.TransmissionLossDB; !(math.Abs(field-byHand) <= 1e-6) {
 						t.Errorf("cell %d: field %.9f, by hand %.9f dB(uV/m)", c.Index, field, byHand)
 					}

@@ -55,12 +55,13 @@ func newSampling(s *sweep) *sampling {
 }
 
 // loss keeps a cell if it is one of the sample.
-func (s *sampling) loss(c *Cell, b cellBudget) {
-	if scatter := uint32(c.Index) * 2654435761; scatter>>4%s.every != 0 { // Knuth's multiplicative hash
+func (s *sampling) loss(r *reckoner, lossDB float64) {
+	index := r.cell.Index
+	if scatter := uint32(index) * 2654435761; scatter>>4%s.every != 0 { // Knuth's multiplicative hash
 		return
 	}
 	s.mutex.Lock()
-	s.kept = append(s.kept, sampledCell{c.Index, b.lossDB, b.verticalPart})
+	s.kept = append(s.kept, sampledCell{index, lossDB, r.VerticalShare()})
 	s.mutex.Unlock()
 }
 

@@ -29,6 +29,10 @@ var timeRequests = []propagation.Request{{TimePct: 50, Ducting: true}, {TimePct:
 
 const madeN0 = 325
 
+type fixedShare float64
+
+func (s fixedShare) VerticalShare() float64 { return float64(s) }
+
 // sweepAll runs the sweep and keeps every every-th cell.
 func sweepAll(t testing.TB, s *sweep, a asking, every int) map[int]foundCell {
 	t.Helper()
@@ -46,7 +50,7 @@ func sweepAll(t testing.TB, s *sweep, a asking, every int) map[int]foundCell {
 			f := foundCell{outline: c.Outline}
 			for _, b := range briefs {
 				out := make([]propagation.Combined, len(timeRequests))
-				b.Loss(&c.Outline, c, a.share, out)
+				b.Loss(&c.Outline, c, fixedShare(a.share), out)
 				f.losses = append(f.losses, out...)
 			}
 			f.obstacle = c.ObstacleKm()

@@ -15,9 +15,18 @@ type reckoner struct {
 	into    *Map
 	samples *sampling
 
-	briefs []*propagation.Brief // one for each direction; the same where the frequency is
+	briefs []*propagation.Brief // one for each direction
 	losses []propagation.Combined
+
+	cell *Cell // at hand
+	now  *link.PlacesDirection
+	seen bool // path and pair are those of the cell and the direction
+	path link.PlacePath
+	pair antennaPair
 }
+
+// An antennaPair is what both antennas do on a path: see [link.PlacesDirection.Antennas].
+type antennaPair struct{ sentDBi, caughtDB, verticalPart float64 }
 
 // requests are the loss itself and what a fading allowance is made of.
 func requests(p *link.Places, availabilityPct float64) []propagation.Request {
@@ -63,48 +72,64 @@ func mradToDeg(mrad float64) float64 { return mrad / 1000 * 180 / math.Pi }
 
 // visit works out one cell.
 func (r *reckoner) visit(c *Cell) {
-	path := c.path()
+	r.cell, r.seen = c, false
 	margin := math.Inf(1)
 	for i := range r.places.Directions {
-		d := &r.places.Directions[i]
-		b := r.direction(i, d, c, &path)
+		b := r.direction(i)
 		if i == 0 {
-			r.write(r.into.LossDB, c.Index, b.lossDB)
-			r.write(r.into.FieldDBuV, c.Index, propagation.FieldStrength(d.FreqHz, d.SentDBm+b.sentDBi, b.lossDB))
-			r.samples.loss(c, b)
+			r.write(r.into.LossDB, b.lossDB)
+			if r.into.FieldDBuV != nil {
+				d := r.now
+				r.write(r.into.FieldDBuV, propagation.FieldStrength(d.FreqHz, d.SentDBm+r.antennas().sentDBi, b.lossDB))
+			}
+			r.samples.loss(r, b.lossDB)
 			if r.into.MarginDB == nil {
 				return
 			}
 		}
 		margin = min(margin, b.marginDB)
 	}
-	r.write(r.into.MarginDB, c.Index, margin)
+	r.write(r.into.MarginDB, margin)
 }
 
-func (r *reckoner) write(layer []float32, index int, value float64) {
+func (r *reckoner) write(layer []float32, value float64) {
 	if layer != nil {
-		layer[index] = float32(value)
+		layer[r.cell.Index] = float32(value)
 	}
 }
 
-// A cellBudget is what one direction comes to in a cell.
-type cellBudget struct{ sentDBi, verticalPart, lossDB, marginDB float64 }
+// antennas are what both antennas do on the path at hand; they are asked when needed.
+func (r *reckoner) antennas() *antennaPair {
+	if !r.seen {
+		r.path = r.cell.path()
+		r.pair.sentDBi, r.pair.caughtDB, r.pair.verticalPart = r.now.Antennas(&r.path)
+		r.seen = true
+	}
+	return &r.pair
+}
 
-// direction works out one direction of a cell.
-func (r *reckoner) direction(i int, d *link.PlacesDirection, c *Cell, path *link.PlacePath) (b cellBudget) {
-	var caughtDB float64
-	b.sentDBi, caughtDB, b.verticalPart = d.Antennas(path)
-	r.briefs[i].Loss(&c.Outline, c, b.verticalPart, r.losses)
+// VerticalShare implements [propagation.Shares].
+func (r *reckoner) VerticalShare() float64 { return r.antennas().verticalPart }
+
+// A cellBudget is what one direction comes to in a cell.
+type cellBudget struct{ lossDB, marginDB float64 }
+
+// direction works out one direction of the cell at hand.
+func (r *reckoner) direction(i int) (b cellBudget) {
+	c, d := r.cell, &r.places.Directions[i]
+	r.now, r.seen = d, false
+	r.briefs[i].Loss(&c.Outline, c, r, r.losses)
 	b.lossDB = r.losses[0].LossDB(0)
 	if r.into.MarginDB == nil {
 		return b
 	}
+	pair := r.antennas()
 	if len(r.losses) > 1 {
-		path.MedianLossDB, path.BestLossDB = r.losses[1].LossDB(0), r.losses[2].LossDB(0)
-		path.LatDeg = c.LatDeg()
+		r.path.MedianLossDB, r.path.BestLossDB = r.losses[1].LossDB(0), r.losses[2].LossDB(0)
+		r.path.LatDeg = c.LatDeg()
 	}
-	b.marginDB = d.SentDBm + b.sentDBi - b.lossDB + caughtDB + d.FixedDB -
-		r.places.FadeDB(d, path) - r.task.locationDB(d.FreqHz, c.CoverM, r.losses[0])
+	b.marginDB = d.SentDBm + pair.sentDBi - b.lossDB + pair.caughtDB + d.FixedDB -
+		r.places.FadeDB(d, &r.path) - r.task.locationDB(d.FreqHz, c.CoverM, r.losses[0])
 	return b
 }
 

@@ -23,6 +23,10 @@ type Brief struct {
 	leastTime []float64 // for each, a bound from below of ducting's time variability
 }
 
+// Shares answers for the part of a path's power that is vertically polarized, 0 to 1. It is asked
+// only where that counts, which is where the smooth Earth reaches into the path.
+type Shares interface{ VerticalShare() float64 }
+
 // A Region bounds the paths that a [Brief] is asked for: none is longer, and the centre of none is
 // nearer to the equator.
 type Region struct{ MostKm, LeastLatDeg float64 }
@@ -55,21 +59,21 @@ type briefPath struct {
 	*Brief
 	*Outline
 	ground Ground
+	shares Shares
 
 	omega, theta, lbfs, ld50 float64
 	smooth                   surfaceLine // of the diffraction model
-	earth                    SmoothEarth
+	share                    float64     // of vertical polarization, asked for when needed
+	shared                   bool
 	time                     timeParameters // asked for when needed
 	timed                    bool
 	dlt, dlr                 float64 // the horizons, on a line of sight asked for when needed
 }
 
-// Loss evaluates the requests on one path, of whose power the part verticalShare is vertically
-// polarized, into out, one for each request in their order. Nearer than 0.25 km the loss is that
-// of free space.
-func (b *Brief) Loss(o *Outline, g Ground, verticalShare float64, out []Combined) {
-	p := briefPath{Brief: b, Outline: o, ground: g, earth: b.earth, dlt: o.Dlt, dlr: o.Dlr}
-	p.earth.verticalShare = verticalShare
+// Loss evaluates the requests on one path into out, one for each request in their order. Nearer
+// than 0.25 km P.1812 is free space.
+func (b *Brief) Loss(o *Outline, g Ground, shares Shares, out []Combined) {
+	p := briefPath{Brief: b, Outline: o, ground: g, shares: shares, dlt: o.Dlt, dlr: o.Dlr}
 	rise := (o.Hts - o.Hrs) / 1000
 	p.lbfs = b.lbfs1 + 10*math.Log10(o.LengthKm*o.LengthKm+rise*rise)
 	switch {
@@ -133,12 +137,26 @@ func (p *briefPath) diffractionDB(actual Slopes, ap float64) float64 {
 	d := p.LengthKm
 	lbulla := BullingtonDB(actual.Nu(d, p.lambda), d)
 	txM, rxM := p.Hts-p.smooth.tx, p.Hrs-p.smooth.rx
-	ldsph := p.earth.LossDB(SmoothPath{LengthKm: d, TxM: txM, RxM: rxM, RadiusKm: ap, SeaShare: p.omega})
+	smooth := SmoothPath{LengthKm: d, TxM: txM, RxM: rxM, RadiusKm: ap, SeaShare: p.omega}
+	radiusKm, part := p.earth.reach(smooth)
+	if part == 0 {
+		return lbulla
+	}
+	earth := p.earth
+	earth.verticalShare = p.verticalShare()
+	ldsph := part * earth.firstTermDB(smooth, radiusKm)
 	if ldsph == 0 { // whatever Lbulls is
 		return lbulla
 	}
 	lbulls := BullingtonDB(p.ground.LevelSlopes(ap, txM, rxM).Nu(d, p.lambda), d)
 	return DeltaBullingtonDB(lbulla, lbulls, ldsph)
+}
+
+func (p *briefPath) verticalShare() float64 {
+	if !p.shared {
+		p.share, p.shared = p.shares.VerticalShare(), true
+	}
+	return p.share
 }
 
 // minimum evaluates what p below 50 % of the time needs beside the median.
@@ -175,10 +193,9 @@ func (p *briefPath) withDucting(i int, lb0p, lbd, logD float64) float64 {
 	if p.leastDuctingDB(logD)+leastTime >= lbd {
 		return lbd
 	}
-	p.askTime()
 	p.askHorizons()
 	u := duct{
-		f: p.f, d: p.LengthKm, time: p.time, hts: p.Hts, hrs: p.Hrs,
+		f: p.f, d: p.LengthKm, time: timeParameters{omega: p.omega}, hts: p.Hts, hrs: p.Hrs,
 		horizons: horizons{ae: p.Ae, thetaT: p.ThetaT, thetaR: p.ThetaR, dlt: p.dlt, dlr: p.dlr},
 		smooth:   lineOfSums(p.V1, p.V2, p.LengthKm).limited(p.TxGroundM, p.RxGroundM),
 	}
@@ -186,6 +203,8 @@ func (p *briefPath) withDucting(i int, lb0p, lbd, logD float64) float64 {
 	if u.leastDB(leastTime) >= lbd {
 		return lbd
 	}
+	p.askTime()
+	u.time = p.time
 	u.hte, u.hre = u.hts-u.smooth.tx, u.hrs-u.smooth.rx
 	u.hm = p.ground.RoughnessM(u.smooth.tx, u.smooth.rx)
 	return withDuctingDB(lbd, minimumWithDuctingDB(u.lossDB(pct), lb0p), p.LengthKm)

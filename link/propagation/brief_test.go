@@ -7,6 +7,10 @@ import (
 	"pgregory.net/rapid"
 )
 
+type fixedShare float64
+
+func (s fixedShare) VerticalShare() float64 { return float64(s) }
+
 // searched answers for the ground under a path by searching its profile.
 type searched struct{ p *Path }
 
@@ -75,7 +79,7 @@ func TestBriefIsTheFullMethod(t *testing.T) {
 		}
 		o, out := outlineOf(&p), make([]Combined, 2)
 		b := NewBrief(P1812, p.FreqHz, p.N0, Region{MostKm: p.LengthKm(), LeastLatDeg: p.LatDeg}, []Request{{p.TimePct, true}, {p.TimePct, false}})
-		b.Loss(&o, searched{&p}, p.VerticalShare, out)
+		b.Loss(&o, searched{&p}, fixedShare(p.VerticalShare), out)
 		lloc := LocationDB(p.LocationPct, p.LocationSpreadDB)
 		for i, want := range []float64{full.DB, without.DB} {
 			if got := out[i].LossDB(lloc); !(math.Abs(got-want) <= 2e-7) {
@@ -137,7 +141,7 @@ func TestBriefOtherMethods(t *testing.T) {
 				t.Fatal(err)
 			}
 			out := make([]Combined, 1)
-			NewBrief(m, p.FreqHz, p.N0, Region{MostKm: p.LengthKm()}, []Request{{50, true}}).Loss(&o, searched{&p}, p.VerticalShare, out)
+			NewBrief(m, p.FreqHz, p.N0, Region{MostKm: p.LengthKm()}, []Request{{50, true}}).Loss(&o, searched{&p}, fixedShare(p.VerticalShare), out)
 			if got := out[0].LossDB(0); !(math.Abs(got-full.DB) <= 1e-9) {
 				t.Errorf("%s: brief %.12g, full %.12g dB", m.Name, got, full.DB)
 			}

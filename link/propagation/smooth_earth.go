@@ -52,18 +52,28 @@ type SmoothPath struct {
 //
 // Source: Rec. ITU-R P.1812-6, section ~4.3.2, (~22) to (~27).
 func (e SmoothEarth) LossDB(p SmoothPath) float64 {
+	radiusKm, part := e.reach(p)
+	if part == 0 {
+		return 0
+	}
+	return part * e.firstTermDB(p, radiusKm)
+}
+
+// reach returns the radius for which the first term counts on a path and the part of it that does:
+// 0 where the path clears the smooth Earth, 1 beyond the radio horizon. The polarization has no say
+// in it.
+func (e SmoothEarth) reach(p SmoothPath) (radiusKm, part float64) {
 	d, roots := p.LengthKm, math.Sqrt(p.TxM)+math.Sqrt(p.RxM)
 	dlos := math.Sqrt(2*0.001*p.RadiusKm) * roots // (~22)
 	if d >= dlos {
-		return e.firstTermDB(p, p.RadiusKm)
+		return p.RadiusKm, 1
 	}
 	hse, dse1, dse2 := p.leastClearance()
 	hreq := 17.456 * math.Sqrt(dse1*dse2*e.lambda/d) // (~26)
 	if hse > hreq {
-		return 0
+		return 0, 0
 	}
-	aem := 500 * (d / roots) * (d / roots) // (~27)
-	return (1 - hse/hreq) * e.firstTermDB(p, aem)
+	return 500 * (d / roots) * (d / roots), 1 - hse/hreq // aem of (~27)
 }
 
 // leastClearance returns the height of the ray over the smooth Earth where it clears the least part
