@@ -42,8 +42,7 @@ func (s *Server) serveAPI(r chi.Router) error {
 
 // schemaName names a schema by its Go type, without the mark of a type that is there for JSON alone.
 func schemaName(t reflect.Type, hint string) string {
-	name := strings.TrimSuffix(huma.DefaultSchemaNamer(t, hint), "JSON")
-	return strings.ToUpper(name[:1]) + name[1:]
+	return strings.TrimSuffix(huma.DefaultSchemaNamer(t, hint), "JSON")
 }
 
 // describe finishes the description: lists of any length are never null, and everything that goes wrong is a

@@ -23,7 +23,7 @@ type heightsInput struct {
 	FromM    float64  `query:"from_m" required:"true" minimum:"0.1" maximum:"1000" example:"4" doc:"lowest height of the antenna above ground"`
 	ToM      float64  `query:"to_m" required:"true" minimum:"0.1" maximum:"1000" example:"10" doc:"greatest height, included"`
 	StepM    float64  `query:"step_m" required:"true" minimum:"0.1" maximum:"1000" example:"2"`
-	Antennas []string `query:"antennas" required:"true" minItems:"1" maxItems:"30" example:"[\"rod\",\"beam\"]" doc:"by their names in the plan, with commas between"`
+	Antennas []string `query:"antennas" required:"true" minItems:"1" maxItems:"30" example:"rod,beam" doc:"by their names in the plan, with commas between"`
 }
 
 // Heights is a station's height x antenna table.
