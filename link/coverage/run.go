@@ -63,6 +63,7 @@ type runner struct {
 	fingerprint string
 	sites       []Site
 	members     []member
+	changed     bool // some site was mapped in this run
 }
 
 // Run maps all sites into a folder and writes cover.json there. A site that an earlier run finished
@@ -89,7 +90,26 @@ func Run(ctx context.Context, ground *raster.Ground, title string, sites []Site,
 			return nil, err
 		}
 	}
+	if err := r.writePackage(); err != nil {
+		return nil, err
+	}
 	return report, r.folder.writeJSON("cover.json", report)
+}
+
+// writePackage gathers all bands in one GeoPackage.
+func (r *runner) writePackage() error {
+	const name = "layers.gpkg"
+	if !r.Outputs.Bands || !r.changed && r.folder.has([]string{name}) {
+		return nil
+	}
+	var layers []raster.VectorLayer
+	for i := range r.sites {
+		layers = append(layers, raster.VectorLayer{Name: r.slug(i), GeoJSON: r.folder.path(r.name("bands", i, ".geojson"))})
+	}
+	if r.networked() {
+		layers = append(layers, raster.VectorLayer{Name: "network", GeoJSON: r.folder.path("bands-network.geojson")})
+	}
+	return raster.WriteGeoPackage(r.folder.path(name), layers)
 }
 
 // networked says whether the sites are joined.
@@ -155,6 +175,7 @@ func (r *runner) site(ctx context.Context, number int) (SiteReport, error) {
 	if err := r.folder.forget(r.slug(number)); err != nil {
 		return SiteReport{}, err
 	}
+	r.changed = true
 	m, err := Compute(ctx, r.ground, s.Task, r.layers(), func(done, total int) {
 		if r.Progress != nil {
 			r.Progress(s.Name, done, total)
