@@ -11,8 +11,8 @@ import (
 	"github.com/danielgtaylor/huma/v2"
 )
 
-// An antennaInput asks for an antenna: of a station as it hangs there, or by itself.
-type antennaInput struct {
+// An AntennaInput asks for an antenna: of a station as it hangs there, or by itself.
+type AntennaInput struct {
 	Versioned
 	Station      string  `query:"station" maxLength:"500" doc:"the antenna of this station, as installed" example:"Gauge 3"`
 	Antenna      string  `query:"antenna" maxLength:"200" doc:"an antenna by its name in the plan, in place of a station"`
@@ -51,7 +51,7 @@ type VSWRPoint struct {
 }
 
 func (s *Server) registerAntenna(api huma.API) {
-	answer(api, readOperation("readAntenna", "/api/antenna", "An antenna as installed: pattern, impedance, band, cut list"), func(_ context.Context, in *antennaInput) (AntennaAnswer, error) {
+	answer(api, readOperation("readAntenna", "/api/antenna", "An antenna as installed: pattern, impedance, band, cut list"), func(_ context.Context, in *AntennaInput) (AntennaAnswer, error) {
 		found, err := s.antenna(in)
 		if err != nil {
 			return AntennaAnswer{}, err
@@ -67,7 +67,7 @@ func (s *Server) registerAntenna(api huma.API) {
 	})
 }
 
-func (s *Server) antenna(in *antennaInput) (found *plan.AntennaResult, err error) {
+func (s *Server) antenna(in *AntennaInput) (found *plan.AntennaResult, err error) {
 	if (in.Station == "") == (in.Antenna == "") {
 		return nil, fmt.Errorf("name a station or an antenna, one of the two")
 	}

@@ -4,6 +4,193 @@
  */
 
 export interface paths {
+    "/api/antenna": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** An antenna as installed: pattern, impedance, band, cut list */
+        get: operations["readAntenna"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/files/antenna.{format}": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** An antenna as installed as a file */
+        get: operations["downloadAntenna"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/files/links.{format}": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** The links as a file */
+        get: operations["downloadLinks"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/files/pattern.svg": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** A picture of an antenna's pattern */
+        get: operations["downloadPattern"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/files/plan.yaml": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** The plan's text as a file */
+        get: operations["downloadPlan"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/files/section.{format}": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** The ground under a link as a file */
+        get: operations["downloadSection"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/files/vswr.svg": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** A picture of an antenna's VSWR over frequency */
+        get: operations["downloadVSWR"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/heights": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** A station's links over the height of its antenna, for several antennas; mast and feeder grow along */
+        get: operations["readHeights"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/layers/links": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** The links as lines with their verdicts, their stations as points */
+        get: operations["readLinksLayer"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/layers/section": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** The path of a link, its ends and its worst point */
+        get: operations["readSectionLayer"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/layers/sites": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** All sites as points */
+        get: operations["readSitesLayer"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
     "/api/links": {
         parameters: {
             query?: never;
@@ -11,8 +198,42 @@ export interface paths {
             path?: never;
             cookie?: never;
         };
-        /** All links with their budgets, as `links --format json` prints them */
+        /** All links with their budgets, as links --format json prints them */
         get: operations["readLinks"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/measure": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Distance and bearings between two places */
+        get: operations["measure"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/place": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** A place in the three notations, and its ground */
+        get: operations["readPlace"];
         put?: never;
         post?: never;
         delete?: never;
@@ -73,10 +294,62 @@ export interface paths {
         patch?: never;
         trace?: never;
     };
+    "/api/try": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /** The links as they would be after changes, without saving */
+        post: operations["tryEdits"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
 }
 export type webhooks = Record<string, never>;
 export interface components {
     schemas: {
+        AntennaAnswer: {
+            band_vswr2_hz: number[] | null;
+            /** @description the channel's edges; null where only a frequency is asked */
+            channel_hz: number[] | null;
+            /** @description VSWR over frequency against the same reference, lengths fixed */
+            curve?: components["schemas"]["VSWRPoint"][];
+            cut: components["schemas"]["Cut"][];
+            /** Format: double */
+            directivity_dbi: number;
+            /** Format: double */
+            efficiency: number;
+            /** Format: double */
+            frequency_hz: number;
+            /** Format: double */
+            gain_dbi: number;
+            impedance_ohm: components["schemas"]["Ohm"];
+            kind: string;
+            mount: components["schemas"]["MountAnswer"];
+            name: string;
+            notes: string[];
+            pattern: components["schemas"]["Pattern"][];
+            /** Format: double */
+            power_balance: number | null;
+            refined?: components["schemas"]["Refined"];
+            /** Format: double */
+            resonance_shift_hz_per_mm: number | null;
+            /** Format: double */
+            resonant_hz: number | null;
+            /** Format: int64 */
+            segments: number;
+            source: string;
+            toward?: components["schemas"]["Toward"];
+            vswr: components["schemas"]["Vswr"];
+            warnings: string[];
+        };
         AntennaSummary: {
             kind: string;
             name: string;
@@ -103,6 +376,11 @@ export interface components {
             /** Format: double */
             worst_ratio: number;
         };
+        Cut: {
+            /** Format: double */
+            length_m: number;
+            part: string;
+        };
         Direction: {
             /** Format: double */
             arrival_deg: number;
@@ -123,6 +401,33 @@ export interface components {
             to: string;
             /** Format: double */
             transmission_loss_db: number;
+        };
+        EditBody: {
+            /**
+             * @description set a key's value, add an entry to a list, or remove a key or entry
+             * @enum {string}
+             */
+            do: "set" | "add" | "remove";
+            /** @description keys from the top of the plan; in lists an entry's name, or its index from 0 */
+            path: string[];
+            /** @description what is set or added, as the plan would hold it */
+            value?: unknown;
+        };
+        HeightCell: {
+            antenna: string;
+            /** Format: double */
+            height_m: number;
+            /** Format: double */
+            margin_db: number;
+            /** @enum {string} */
+            verdict: "closes" | "thin" | "fails";
+            worst_link: string;
+        };
+        Heights: {
+            /** @description antenna by antenna, heights growing */
+            cells: components["schemas"]["HeightCell"][];
+            /** @description the station */
+            site: string;
         };
         Horizon: {
             /** Format: double */
@@ -159,6 +464,7 @@ export interface components {
             /** Format: double */
             margin_db: number;
             name?: string;
+            notes: string[];
             sensitivity: components["schemas"]["Sensitivity"];
             to: string;
             /** @enum {string} */
@@ -184,6 +490,61 @@ export interface components {
             kind: "pole" | "lattice";
             /** Format: double */
             width_m: number;
+        };
+        Measured: {
+            /**
+             * Format: double
+             * @description from true north, at the first place; 0 where both are the same
+             */
+            azimuth_deg: number;
+            /** Format: double */
+            back_azimuth_deg: number;
+            /** Format: double */
+            distance_km: number;
+        };
+        MountAnswer: {
+            /** Format: double */
+            facing_deg: number;
+            /** Format: double */
+            slant_deg: number;
+            /** Format: double */
+            tilt_deg: number;
+        };
+        Ohm: {
+            /** Format: double */
+            r: number;
+            /** Format: double */
+            x: number;
+        };
+        Pattern: {
+            /** Format: double */
+            azimuth_deg: number;
+            /** Format: double */
+            elevation_deg: number;
+            /** Format: double */
+            gain_h_dbi: number;
+            /** Format: double */
+            gain_v_dbi: number;
+        };
+        PlaceAnswer: {
+            /**
+             * Format: double
+             * @description height of what stands there; null where the cover is not known
+             */
+            cover_m: number | null;
+            /** @example 47.52310 N, 20.11800 W */
+            decimal: string;
+            dms: string;
+            /**
+             * Format: double
+             * @description above sea level; null where there is no height
+             */
+            ground_m: number | null;
+            /** Format: double */
+            lat: number;
+            /** Format: double */
+            lon: number;
+            utm: string;
         };
         PlaceText: {
             /** @example 47.52310 N, 20.11800 W */
@@ -260,6 +621,13 @@ export interface components {
             lon_lat: number[];
             /** Format: int64 */
             rows: number;
+        };
+        Refined: {
+            /** Format: double */
+            directivity_change_db: number;
+            impedance_ohm: components["schemas"]["Ohm"];
+            /** Format: int64 */
+            segments: number;
         };
         SaveBody: {
             /** @description the version that the file held when it was read */
@@ -371,6 +739,42 @@ export interface components {
         TextBody: {
             text: string;
         };
+        Toward: {
+            /** Format: double */
+            azimuth_deg: number;
+            /** Format: double */
+            elevation_deg: number;
+            /** Format: double */
+            gain_dbi: number;
+            /** Format: double */
+            gain_h_dbi: number;
+            /** Format: double */
+            gain_v_dbi: number;
+        };
+        Tried: {
+            links: components["schemas"]["Links"];
+            /** @description names the changed text */
+            version: string;
+        };
+        TryBody: {
+            edits: components["schemas"]["EditBody"][];
+            /** @description compute this link alone, by its name or as A..B: the quick answer while something is dragged. Interference is looked at only where all links are computed */
+            link?: string;
+            /** @description what is changed; the file when left out */
+            version?: string;
+        };
+        VSWRPoint: {
+            /** Format: double */
+            frequency_hz: number;
+            /** Format: double */
+            vswr: number;
+        };
+        Vswr: {
+            /** Format: double */
+            reference_ohm: number;
+            /** Format: double */
+            value: number;
+        };
     };
     responses: never;
     parameters: never;
@@ -380,7 +784,221 @@ export interface components {
 }
 export type $defs = Record<string, never>;
 export interface operations {
-    readLinks: {
+    readAntenna: {
+        parameters: {
+            query?: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+                /** @description the antenna of this station, as installed */
+                station?: string;
+                /** @description an antenna by its name in the plan, in place of a station */
+                antenna?: string;
+                /** @description false leaves the station's mast out, to see what it does */
+                mast?: boolean;
+                /** @description a channel; that of the station's first link, or the plan's only one, when left out */
+                channel?: string;
+                /** @description in place of the channel's */
+                frequency_hz?: number;
+                /** @description diameter of a mast to put an antenna by its name beside */
+                on_mast_m?: number;
+                /** @description between the axes of that mast and the antenna */
+                standoff_m?: number;
+                /** @description from upright, of an antenna by its name */
+                slant_deg?: number;
+                /** @description also find the VSWR over frequency */
+                curve?: boolean;
+                /** @description with toward=true: a direction to give the gain in */
+                azimuth_deg?: number;
+                /** @description with toward=true */
+                elevation_deg?: number;
+                /** @description also give the gain towards azimuth_deg and elevation_deg */
+                toward?: boolean;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["AntennaAnswer"];
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    downloadAntenna: {
+        parameters: {
+            query?: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+                /** @description the antenna of this station, as installed */
+                station?: string;
+                /** @description an antenna by its name in the plan, in place of a station */
+                antenna?: string;
+                /** @description false leaves the station's mast out, to see what it does */
+                mast?: boolean;
+                /** @description a channel; that of the station's first link, or the plan's only one, when left out */
+                channel?: string;
+                /** @description in place of the channel's */
+                frequency_hz?: number;
+                /** @description diameter of a mast to put an antenna by its name beside */
+                on_mast_m?: number;
+                /** @description between the axes of that mast and the antenna */
+                standoff_m?: number;
+                /** @description from upright, of an antenna by its name */
+                slant_deg?: number;
+                /** @description also find the VSWR over frequency */
+                curve?: boolean;
+                /** @description with toward=true: a direction to give the gain in */
+                azimuth_deg?: number;
+                /** @description with toward=true */
+                elevation_deg?: number;
+                /** @description also give the gain towards azimuth_deg and elevation_deg */
+                toward?: boolean;
+            };
+            header?: never;
+            path: {
+                format: "txt" | "json";
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    "Content-Disposition"?: string;
+                    "Content-Type"?: string;
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": string;
+                    "text/plain": string;
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    downloadLinks: {
+        parameters: {
+            query?: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+            };
+            header?: never;
+            path: {
+                format: "txt" | "csv" | "json" | "geojson";
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    "Content-Disposition"?: string;
+                    "Content-Type"?: string;
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/geo+json": string;
+                    "application/json": string;
+                    "text/csv": string;
+                    "text/plain": string;
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    downloadPattern: {
+        parameters: {
+            query?: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+                /** @description the antenna of this station, as installed */
+                station?: string;
+                /** @description an antenna by its name in the plan, in place of a station */
+                antenna?: string;
+                /** @description false leaves the station's mast out, to see what it does */
+                mast?: boolean;
+                /** @description a channel; that of the station's first link, or the plan's only one, when left out */
+                channel?: string;
+                /** @description in place of the channel's */
+                frequency_hz?: number;
+                /** @description diameter of a mast to put an antenna by its name beside */
+                on_mast_m?: number;
+                /** @description between the axes of that mast and the antenna */
+                standoff_m?: number;
+                /** @description from upright, of an antenna by its name */
+                slant_deg?: number;
+                /** @description also find the VSWR over frequency */
+                curve?: boolean;
+                /** @description with toward=true: a direction to give the gain in */
+                azimuth_deg?: number;
+                /** @description with toward=true */
+                elevation_deg?: number;
+                /** @description also give the gain towards azimuth_deg and elevation_deg */
+                toward?: boolean;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    "Content-Disposition"?: string;
+                    "Content-Type"?: string;
+                    [name: string]: unknown;
+                };
+                content: {
+                    "image/svg+xml": string;
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    downloadPlan: {
         parameters: {
             query?: {
                 /** @description version of the plan; that of the file when left out */
@@ -395,10 +1013,360 @@ export interface operations {
             /** @description OK */
             200: {
                 headers: {
+                    "Content-Disposition"?: string;
+                    "Content-Type"?: string;
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/yaml": string;
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    downloadSection: {
+        parameters: {
+            query: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+                /** @description a link's name, or two ends as A..B */
+                link: string;
+            };
+            header?: never;
+            path: {
+                format: "txt" | "csv" | "json" | "geojson" | "svg";
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    "Content-Disposition"?: string;
+                    "Content-Type"?: string;
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/geo+json": string;
+                    "application/json": string;
+                    "image/svg+xml": string;
+                    "text/csv": string;
+                    "text/plain": string;
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    downloadVSWR: {
+        parameters: {
+            query?: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+                /** @description the antenna of this station, as installed */
+                station?: string;
+                /** @description an antenna by its name in the plan, in place of a station */
+                antenna?: string;
+                /** @description false leaves the station's mast out, to see what it does */
+                mast?: boolean;
+                /** @description a channel; that of the station's first link, or the plan's only one, when left out */
+                channel?: string;
+                /** @description in place of the channel's */
+                frequency_hz?: number;
+                /** @description diameter of a mast to put an antenna by its name beside */
+                on_mast_m?: number;
+                /** @description between the axes of that mast and the antenna */
+                standoff_m?: number;
+                /** @description from upright, of an antenna by its name */
+                slant_deg?: number;
+                /** @description also find the VSWR over frequency */
+                curve?: boolean;
+                /** @description with toward=true: a direction to give the gain in */
+                azimuth_deg?: number;
+                /** @description with toward=true */
+                elevation_deg?: number;
+                /** @description also give the gain towards azimuth_deg and elevation_deg */
+                toward?: boolean;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    "Content-Disposition"?: string;
+                    "Content-Type"?: string;
+                    [name: string]: unknown;
+                };
+                content: {
+                    "image/svg+xml": string;
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    readHeights: {
+        parameters: {
+            query: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+                station: string;
+                /** @description lowest height of the antenna above ground */
+                from_m: number;
+                /** @description greatest height, included */
+                to_m: number;
+                step_m: number;
+                /** @description by their names in the plan, with commas between */
+                antennas: string[] | null;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["Heights"];
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    readLinksLayer: {
+        parameters: {
+            query?: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    "Content-Disposition"?: string;
+                    "Content-Type"?: string;
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/geo+json": string;
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    readSectionLayer: {
+        parameters: {
+            query: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+                /** @description a link's name, or two ends as A..B */
+                link: string;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    "Content-Disposition"?: string;
+                    "Content-Type"?: string;
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/geo+json": string;
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    readSitesLayer: {
+        parameters: {
+            query?: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    "Content-Disposition"?: string;
+                    "Content-Type"?: string;
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/geo+json": string;
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    readLinks: {
+        parameters: {
+            query?: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+                /** @description only this link, by its name or as A..B; interference is then not looked at */
+                link?: string;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
                     [name: string]: unknown;
                 };
                 content: {
                     "application/json": components["schemas"]["Links"];
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    measure: {
+        parameters: {
+            query: {
+                from_lon: number;
+                from_lat: number;
+                to_lon: number;
+                to_lat: number;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["Measured"];
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    readPlace: {
+        parameters: {
+            query?: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+                lon?: number;
+                lat?: number;
+                /** @description the place in one of the notations of a plan, in place of lon and lat */
+                at?: string;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["PlaceAnswer"];
                 };
             };
             /** @description Error */
@@ -542,6 +1510,65 @@ export interface operations {
                 };
                 content: {
                     "application/json": components["schemas"]["Section"];
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    tryEdits: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                /**
+                 * @example {
+                 *       "edits": [
+                 *         {
+                 *           "do": "set",
+                 *           "path": [
+                 *             "sites",
+                 *             "West head",
+                 *             "at"
+                 *           ],
+                 *           "value": "47.50100 N, 20.21800 W"
+                 *         },
+                 *         {
+                 *           "do": "set",
+                 *           "path": [
+                 *             "sites",
+                 *             "West head",
+                 *             "antenna",
+                 *             "above_ground"
+                 *           ],
+                 *           "value": "6 m"
+                 *         }
+                 *       ],
+                 *       "link": "West head..Ormvik/coast"
+                 *     }
+                 */
+                "application/json": components["schemas"]["TryBody"];
+            };
+        };
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["Tried"];
                 };
             };
             /** @description Error */
