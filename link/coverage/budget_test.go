@@ -53,15 +53,17 @@ func TestCellIsALink(t *testing.T) {
 		name                    string
 		availability, locations float64
 		fade                    *link.Allowance
+		backHz                  float64
 		within                  float64 // of the margin with the loss taken out of it
 	}{
-		{"median", 50, 50, nil, 1e-9},
-		{"stated fade", 99, 50, &link.Allowance{LossDB: 7}, 1e-9},
-		{"fading and locations", 99.5, 90, nil, 1e-6},
+		{"median", 50, 50, nil, 451.1e6, 1e-9},
+		{"stated fade", 99, 50, &link.Allowance{LossDB: 7}, 455.2e6, 1e-9},
+		{"fading and locations", 99.5, 90, nil, 451.1e6, 1e-6},
 	} {
 		t.Run(tc.name, func(t *testing.T) {
 			task := madeTask(t)
 			task.Link.Aim.AvailabilityPct, task.LocationsPct, task.Link.Fade = tc.availability, tc.locations, tc.fade
+			task.Link.Channel.BackHz = tc.backHz
 			disc, frame := made{cellM: 30, reach: 420, height: rough, class: mixed}.lay(t)
 			compared := 0
 			forCells(t, task, disc, frame, func(s *sweep, r *reckoner, c *Cell) {

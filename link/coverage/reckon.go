@@ -18,11 +18,13 @@ type reckoner struct {
 	briefs []*propagation.Brief // one for each direction
 	losses []propagation.Combined
 
-	cell *Cell // at hand
-	now  *link.PlacesDirection
-	seen bool // path and pair are those of the cell and the direction
+	cell *Cell                 // at hand
+	now  *link.PlacesDirection // whose path was worked out last
+	seen bool                  // path and pair are those of the cell and the direction
 	path link.PlacePath
 	pair antennaPair
+	// budget is that of the direction now.
+	budget cellBudget
 }
 
 // An antennaPair is what both antennas do on a path: see [link.PlacesDirection.Antennas].
@@ -111,13 +113,27 @@ func (r *reckoner) antennas() *antennaPair {
 // VerticalShare implements [propagation.Shares].
 func (r *reckoner) VerticalShare() float64 { return r.antennas().verticalPart }
 
-// A cellBudget is what one direction comes to in a cell.
-type cellBudget struct{ lossDB, marginDB float64 }
+// A cellBudget is what one direction comes to in a cell. PathDB is what its margin owes to the path:
+// antennas, loss, fading and locations.
+type cellBudget struct{ lossDB, pathDB, marginDB float64 }
 
-// direction works out one direction of the cell at hand.
+// direction works out one direction of the cell at hand. On one frequency the path is the same both
+// ways.
 func (r *reckoner) direction(i int) (b cellBudget) {
-	c, d := r.cell, &r.places.Directions[i]
-	r.now, r.seen = d, false
+	d := &r.places.Directions[i]
+	if i > 0 && d.FreqHz == r.now.FreqHz {
+		b = r.budget
+	} else {
+		r.now, r.seen = d, false
+		b = r.overPath(i)
+		r.budget = b
+	}
+	b.marginDB = d.SentDBm + d.FixedDB + b.pathDB
+	return b
+}
+
+func (r *reckoner) overPath(i int) (b cellBudget) {
+	c, d := r.cell, r.now
 	r.briefs[i].Loss(&c.Outline, c, r, r.losses)
 	b.lossDB = r.losses[0].LossDB(0)
 	if r.into.MarginDB == nil {
@@ -128,8 +144,7 @@ func (r *reckoner) direction(i int) (b cellBudget) {
 		r.path.MedianLossDB, r.path.BestLossDB = r.losses[1].LossDB(0), r.losses[2].LossDB(0)
 		r.path.LatDeg = c.LatDeg()
 	}
-	b.marginDB = d.SentDBm + pair.sentDBi - b.lossDB + pair.caughtDB + d.FixedDB -
-		r.places.FadeDB(d, &r.path) - r.task.locationDB(d.FreqHz, c.CoverM, r.losses[0])
+	b.pathDB = pair.sentDBi + pair.caughtDB - b.lossDB - r.places.FadeDB(d, &r.path) - r.task.locationDB(d.FreqHz, c.CoverM, r.losses[0])
 	return b
 }
 
