@@ -82,8 +82,11 @@ func (s *Server) antenna(in *AntennaInput) (found *plan.AntennaResult, err error
 	if in.Station == "" {
 		found, err = v.plan.Antenna(q)
 	} else {
-		q.Bare = !in.Mast
-		found, err = v.network.InstalledAntenna(in.Station, q)
+		var network *plan.Network
+		if network, err = v.alone(); err == nil {
+			q.Bare = !in.Mast
+			found, err = network.InstalledAntenna(in.Station, q)
+		}
 	}
 	if err == nil && in.Toward {
 		found.Toward = &antenna.Direction{AzDeg: in.AzimuthDeg, ElDeg: in.ElevationDeg}

@@ -51,7 +51,11 @@ func (s *Server) readHeights(ctx context.Context, in *heightsInput) (Heights, er
 		return Heights{}, err
 	}
 	defer s.shelf.release(v)
-	station := v.network.Stations[in.Station]
+	network, err := v.alone()
+	if err != nil {
+		return Heights{}, err
+	}
+	station := network.Stations[in.Station]
 	if station == nil {
 		return Heights{}, fmt.Errorf("there is no station %.60q", in.Station)
 	}
@@ -69,7 +73,7 @@ func (s *Server) readHeights(ctx context.Context, in *heightsInput) (Heights, er
 	for i := range out.Cells {
 		work.Go(func() (err error) {
 			if err = inner.Err(); err == nil {
-				out.Cells[i], err = heightCell(v.network, station, in.Antennas[i/rows], in.FromM+float64(i%rows)*in.StepM)
+				out.Cells[i], err = heightCell(network, station, in.Antennas[i/rows], in.FromM+float64(i%rows)*in.StepM)
 			}
 			return err
 		})

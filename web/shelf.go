@@ -27,6 +27,8 @@ type shelf struct {
 	held  []*version // the one asked last at the end
 	file  *version   // the last good one of the file
 	files []string   // that the plan on disk names
+
+	antennas generation
 }
 
 // openShelf reads the plan for the first time; it must be good.
@@ -132,11 +134,12 @@ func (s *shelf) open(text []byte, before *version) (*version, error) {
 	if before == nil {
 		v.network, err = p.Open()
 	} else {
-		v.network, err = p.OpenAfter(before.network)
+		v.network, err = p.OpenAfter(before.network, s.antennas.last())
 	}
 	if err != nil {
 		return nil, err
 	}
+	s.antennas.add(v.network)
 	if before != nil && v.network.SharesGround(before.network) {
 		v.ground = before.ground
 	} else {

@@ -49,3 +49,35 @@ type ground struct {
 	network *plan.Network // one that holds it open
 	users   int           // versions; guarded by the shelf
 }
+
+// maxGeneration is how many versions share what their antennas have solved: one setting of an antenna
+// beside a wide mast takes about a megabyte.
+const maxGeneration = 64
+
+// A generation is the versions that share solved antennas, so that those are not kept for good.
+type generation struct {
+	mutex  sync.Mutex
+	member *plan.Network // any of them; nil where the next begins a new generation
+	count  int
+}
+
+// last returns the network whose antennas the next version may share, nil for none.
+func (g *generation) last() *plan.Network {
+	g.mutex.Lock()
+	defer g.mutex.Unlock()
+	if g.count >= maxGeneration {
+		g.member, g.count = nil, 0
+	}
+	return g.member
+}
+
+func (g *generation) add(n *plan.Network) {
+	g.mutex.Lock()
+	defer g.mutex.Unlock()
+	g.member = n
+	g.count++
+}
+
+// alone returns the version's network anew, so that what is solved for one question is forgotten with
+// the answer. The version must be in use.
+func (v *version) alone() (*plan.Network, error) { return v.plan.OpenAfter(v.network, nil) }

@@ -11,9 +11,12 @@ import (
 )
 
 // OpenAfter opens the plan as [Plan.Open] does, on the ground of a network opened before where both
-// ask for the same ([Network.SharesGround] tells), and with the antennas solved there that both
-// describe alike. The network before must still be open.
-func (p *Plan) OpenAfter(before *Network) (*Network, error) { return p.open(before) }
+// ask for the same ([Network.SharesGround] tells), and with the antennas of a network that both
+// describe alike: what is solved for one is then remembered by both, for as long as either lives. The
+// network before must still be open; antennas may be nil.
+func (p *Plan) OpenAfter(before, antennas *Network) (*Network, error) {
+	return p.open(before, p.designsOf(antennas))
+}
 
 // SharesGround tells whether two networks stand on one ground: then only one of them is closed.
 func (n *Network) SharesGround(other *Network) bool { return other != nil && n.Ground == other.Ground }
@@ -33,16 +36,16 @@ func (n *Network) openGround(before *Network) (err error) {
 	return err
 }
 
-// designsOf returns the antennas of a network before that the plan describes alike. What they have
+// designsOf returns the antennas of a network that the plan describes alike. What they have
 // solved is remembered in them.
-func (p *Plan) designsOf(before *Network) map[string]built {
-	if before == nil {
+func (p *Plan) designsOf(n *Network) map[string]built {
+	if n == nil {
 		return map[string]built{}
 	}
-	before.designing.Lock()
-	designs := maps.Clone(before.designs)
-	before.designing.Unlock()
-	maps.DeleteFunc(designs, func(name string, _ built) bool { return !p.sameAntenna(before.plan, name) })
+	n.designing.Lock()
+	designs := maps.Clone(n.designs)
+	n.designing.Unlock()
+	maps.DeleteFunc(designs, func(name string, _ built) bool { return !p.sameAntenna(n.plan, name) })
 	return designs
 }
 

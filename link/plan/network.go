@@ -32,17 +32,18 @@ type Network struct {
 
 // Open opens the plan's rasters and resolves its names. Errors are [Errors] where they have a
 // place in the plan. The caller closes the network.
-func (p *Plan) Open() (*Network, error) { return p.open(nil) }
+func (p *Plan) Open() (*Network, error) { return p.open(nil, map[string]built{}) }
 
-// open resolves the plan, on what a network opened before has in common with it.
-func (p *Plan) open(before *Network) (*Network, error) {
+// open resolves the plan, on the ground of a network opened before if it can, and with antennas that
+// have been made ready.
+func (p *Plan) open(before *Network, designs map[string]built) (*Network, error) {
 	n := &Network{
 		Title:      p.Title,
 		Stations:   map[string]*link.Station{},
 		Conditions: p.conditions(),
 		plan:       p,
 		spec:       p.groundSpec(),
-		designs:    p.designsOf(before),
+		designs:    designs,
 	}
 	c := &checker{Plan: p}
 	n.locate(c)
