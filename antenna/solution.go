@@ -1,6 +1,9 @@
 package antenna
 
-import "errors"
+import (
+	"errors"
+	"math"
+)
 
 // A Design is an antenna as a plan describes it, ready to be solved at a frequency.
 // Every kind (a dipole, a reference pattern, a maker's table) is a function that makes one.
@@ -47,6 +50,8 @@ func (s Setting) Checked() (Setting, error) {
 		within("design frequency", s.DesignHz, lowestHz, highestHz, "Hz"),
 		within("mast diameter", s.MastDiameterM, 0, 10, "m"),
 		within("standoff", s.StandoffM, 0, 1000, "m"),
+		within("roll", s.RollDeg, -360, 360, "deg"),
+		within("mast's height above the antenna", s.MastAboveM, math.Inf(-1), math.Inf(1), "m"),
 	)
 }
 

@@ -46,15 +46,15 @@ func (a Analysis) BandWidth() float64 {
 // Analyse returns what is to be known of the antenna in an installation. The VSWR is against a
 // reference in ohm, above zero: that of the line, times the ratio of a transformer if there is one
 // (Z/ratio against a line is Z against ratio times the line).
-func (a Antenna) Analyse(in Installation, referenceOhm float64) (Analysis, error) {
+func (a Antenna) Analyse(in antenna.Setting, referenceOhm float64) (Analysis, error) {
 	if !(referenceOhm > 0) || math.IsInf(referenceOhm, 1) {
 		return Analysis{}, fmt.Errorf("reference impedance %g ohm is not allowed: it must be above 0 and finite", referenceOhm)
 	}
-	in, err := in.checked()
+	in, err := in.Checked()
 	if err != nil {
 		return Analysis{}, err
 	}
-	s, err := a.solveInstalled(in)
+	s, err := a.solve(in)
 	if err != nil {
 		return Analysis{}, err
 	}
@@ -82,8 +82,8 @@ func (a Antenna) Analyse(in Installation, referenceOhm float64) (Analysis, error
 
 // Sweep returns the impedance in ohm at several frequencies in Hz of the antenna cut for the
 // installation's design frequency: what a VSWR curve is drawn from.
-func (a Antenna) Sweep(in Installation, freqsHz []float64) ([]complex128, error) {
-	in, err := in.checked()
+func (a Antenna) Sweep(in antenna.Setting, freqsHz []float64) ([]complex128, error) {
+	in, err := in.Checked()
 	if err != nil {
 		return nil, err
 	}

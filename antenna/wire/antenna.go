@@ -12,18 +12,21 @@ import (
 type Antenna struct {
 	antenna.Design
 	blueprint blueprint
-	cuts      *memo[Installation, cut]
-	solved    *memo[Installation, solved]
+	cuts      *memo[antenna.Setting, cut]
+	solved    *memo[antenna.Setting, solved]
 }
 
 func newAntenna(kind string, directional bool, b blueprint) Antenna {
 	a := Antenna{
 		Design:    antenna.Design{Kind: kind, Directional: directional},
 		blueprint: b,
-		cuts:      &memo[Installation, cut]{},
-		solved:    &memo[Installation, solved]{},
+		cuts:      &memo[antenna.Setting, cut]{},
+		solved:    &memo[antenna.Setting, solved]{},
 	}
-	a.Solve = func(s antenna.Setting) (antenna.Solution, error) { return a.SolveInstalled(installed(s)) }
+	a.Solve = func(s antenna.Setting) (antenna.Solution, error) {
+		answer, err := a.solve(s)
+		return answer.Solution, err
+	}
 	return a
 }
 
@@ -34,17 +37,12 @@ type solved struct {
 	balance  float64
 }
 
-// SolveInstalled solves the antenna in an installation.
+// solve solves the antenna in a setting.
 //
 // The solution's pattern is the directivity of the antenna with the mast, both components with
 // their phase, in the frame of the antenna before the mount's roll.
-func (a Antenna) SolveInstalled(in Installation) (antenna.Solution, error) {
-	s, err := a.solveInstalled(in)
-	return s.Solution, err
-}
-
-func (a Antenna) solveInstalled(in Installation) (solved, error) {
-	in, err := in.checked()
+func (a Antenna) solve(in antenna.Setting) (solved, error) {
+	in, err := in.Checked()
 	if err != nil {
 		return solved{}, err
 	}
@@ -62,12 +60,12 @@ func (a Antenna) solveInstalled(in Installation) (solved, error) {
 }
 
 // radiate drives a network as one antenna.
-func (c cut) radiate(in Installation, n *Network) (solved, error) {
+func (c cut) radiate(in antenna.Setting, n *Network) (solved, error) {
 	r, err := n.Excite(together(n))
 	if err != nil {
 		return solved{}, err
 	}
-	remarks := in.notes(c.structure.Mast)
+	remarks := mastRemarks(in, c.structure.Mast)
 	if ports := len(c.feeds); ports > 1 {
 		remarks = append(remarks, fmt.Sprintf("%d feeds driven in phase with equal voltages: a harness of equal lines of a multiple of a half wave", ports))
 	}

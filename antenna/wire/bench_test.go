@@ -69,7 +69,7 @@ func BenchmarkDipole(b *testing.B) {
 	b.ReportAllocs()
 	for b.Loop() {
 		a := rodOf(b, 0.47, 0.003, 0.5)
-		if _, err := a.SolveInstalled(clearOfMasts()); err != nil {
+		if _, err := a.Solve(clearOfMasts()); err != nil {
 			b.Fatal(err)
 		}
 	}
@@ -89,7 +89,7 @@ func BenchmarkYagiCurve(b *testing.B) {
 		freqsHz[i] = testHz * (0.95 + 0.0025*float64(i))
 	}
 	onMast := endless(antenna.Setting{FreqHz: testHz, MastDiameterM: 0.08, StandoffM: 0.6})
-	for name, in := range map[string]Installation{"clear": clearOfMasts(), "mast": onMast} {
+	for name, in := range map[string]antenna.Setting{"clear": clearOfMasts(), "mast": onMast} {
 		b.Run(name, func(b *testing.B) {
 			b.ReportAllocs()
 			for b.Loop() {
@@ -104,7 +104,7 @@ func BenchmarkYagiCurve(b *testing.B) {
 // BenchmarkResonanceOnMast cuts a dipole to resonance beside a mast of 114 mm at 151.5 MHz; the
 // sweep is 41 frequencies of it.
 func BenchmarkResonanceOnMast(b *testing.B) {
-	in, err := endless(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.114, StandoffM: 0.5}).checked()
+	in, err := endless(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.114, StandoffM: 0.5}).Checked()
 	if err != nil {
 		b.Fatal(err)
 	}

@@ -4,6 +4,8 @@ import (
 	"errors"
 	"fmt"
 	"slices"
+
+	"fellreach/antenna"
 )
 
 // A cut is an antenna with its lengths, for an installation but for its frequency.
@@ -39,10 +41,10 @@ const (
 // cut cuts the antenna for an installation, which has been checked. Its wires are divided by the
 // rule for a length near the resonance, or the length given, and stay so whatever is done with
 // them: else the length found and what follows from it would jump with the number of segments.
-func (a Antenna) cut(in Installation) (cut, error) {
+func (a Antenna) cut(in antenna.Setting) (cut, error) {
 	in.FreqHz = in.DesignHz
 	return a.cuts.get(in, func() (cut, error) {
-		wavelengthM := in.wavelengthM()
+		wavelengthM := designWavelengthM(in)
 		mainM := metres(a.blueprint.main, wavelengthM)
 		if a.blueprint.resonant() {
 			mainM = guessedResonantWl * wavelengthM
@@ -64,9 +66,9 @@ func (a Antenna) cut(in Installation) (cut, error) {
 
 // lay lays the antenna out with a length of its main part and numbers of segments of its wires, or
 // for nil those of its blueprint, and puts it on its mast.
-func (a Antenna) lay(in Installation, mainM float64, segments []int) cut {
-	c := cut{layout: a.blueprint.lay(in.wavelengthM(), mainM), mainM: mainM}
-	c.structure = Structure{Wires: c.wires, Feeds: c.feeds, Mast: in.mast(c.layout)}
+func (a Antenna) lay(in antenna.Setting, mainM float64, segments []int) cut {
+	c := cut{layout: a.blueprint.lay(designWavelengthM(in), mainM), mainM: mainM}
+	c.structure = Structure{Wires: c.wires, Feeds: c.feeds, Mast: mastOf(in, c.layout)}
 	if segments != nil {
 		c.structure = c.structure.divided(segments)
 	}
@@ -93,8 +95,8 @@ func (s Structure) divided(segments []int) Structure {
 
 // resonantM returns the length of the main part at which the antenna has no reactance at the
 // design frequency, rising with the length.
-func (a Antenna) resonantM(in Installation, segments []int) (float64, error) {
-	wavelengthM := in.wavelengthM()
+func (a Antenna) resonantM(in antenna.Setting, segments []int) (float64, error) {
+	wavelengthM := designWavelengthM(in)
 	var last *Network
 	reactance := func(wl float64) (float64, error) {
 		n, err := a.lay(in, wl*wavelengthM, segments).structure.solveAfter(last, in.DesignHz)

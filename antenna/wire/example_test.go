@@ -38,7 +38,7 @@ func ExampleAntenna_Analyse() {
 		fmt.Println(err)
 		return
 	}
-	a, err := loop.Analyse(wire.Installation{Setting: antenna.Setting{FreqHz: 151.5e6}}, 4*50)
+	a, err := loop.Analyse(antenna.Setting{FreqHz: 151.5e6}, 4*50)
 	if err != nil {
 		fmt.Println(err)
 		return

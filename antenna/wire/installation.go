@@ -1,7 +1,6 @@
 package wire
 
 import (
-	"errors"
 	"fmt"
 	"math"
 
@@ -15,41 +14,10 @@ const (
 	mastBelowReachWl = 0.5  // of the conductor there
 )
 
-// An Installation is how and where an antenna is used: a setting, with its roll and the height of
-// its mast, which count here and not in the setting inside.
-type Installation struct {
-	antenna.Setting
-	// RollDeg is how far the mount rolls the antenna about its facing ([antenna.Mount]). The mast
-	// stands upright all the same, so in the antenna's frame, in which wires and pattern are
-	// given, it leans the other way.
-	RollDeg float64
-	// MastAboveM is how far a mast beside the antenna goes on above its origin (the feed of a
-	// dipole, the centre of a stack), in metres: positive infinity if it goes on and on, negative
-	// if the antenna stands higher. It says nothing where there is no standoff.
-	MastAboveM float64
-}
+// designWavelengthM is the wavelength that lengths are cut for.
+func designWavelengthM(in antenna.Setting) float64 { return antenna.WavelengthM(in.DesignHz) }
 
-// installed returns the installation that a setting describes.
-func installed(s antenna.Setting) Installation {
-	return Installation{Setting: s, RollDeg: s.RollDeg, MastAboveM: s.MastAboveM}
-}
-
-// checked returns the installation with its defaults filled in, or an error.
-func (in Installation) checked() (Installation, error) {
-	setting, err := in.Setting.Checked()
-	in.Setting = setting
-	if !(math.Abs(in.RollDeg) <= 360) {
-		err = errors.Join(err, fmt.Errorf("roll %g deg is out of range: -360 to 360 is allowed", in.RollDeg))
-	}
-	if math.IsNaN(in.MastAboveM) {
-		err = errors.Join(err, errors.New("the mast's height above the antenna is not a number"))
-	}
-	return in, err
-}
-
-func (in Installation) wavelengthM() float64 { return antenna.WavelengthM(in.DesignHz) }
-
-// mast returns the conductor to be solved with a layout: none, the pole beside the antenna, or
+// mastOf returns the conductor to be solved with a layout: none, the pole beside the antenna, or
 // that below it. All its measures are of the design frequency, so that it stays the same over a
 // sweep.
 //
@@ -58,11 +26,11 @@ func (in Installation) wavelengthM() float64 { return antenna.WavelengthM(in.Des
 // resonates as a whole and puts up to 0.3 dB of its own into the pattern, three times as much as
 // one of 4 or 5. Below an antenna on top it begins a quarter wave under the lowest metal and is
 // half a wave long.
-func (in Installation) mast(l layout) Mast {
+func mastOf(in antenna.Setting, l layout) Mast {
 	if in.MastDiameterM == 0 {
 		return Mast{}
 	}
-	wavelengthM := in.wavelengthM()
+	wavelengthM := designWavelengthM(in)
 	sin, cos := math.Sincos(in.RollDeg * math.Pi / 180)
 	up := vec{0, sin, cos} // as the rolled antenna sees it
 	lowest, highest := l.extent(up)
@@ -83,12 +51,12 @@ func (in Installation) mast(l layout) Mast {
 	return Mast{From: foot.plus(up.times(bottom)), To: foot.plus(up.times(top)), DiameterM: in.MastDiameterM}
 }
 
-// notes says how the mast was taken.
-func (in Installation) notes(m Mast) []string {
+// mastRemarks says how the mast was taken.
+func mastRemarks(in antenna.Setting, m Mast) []string {
 	if !m.exists() {
 		return nil
 	}
-	wavelengthM := in.wavelengthM()
+	wavelengthM := designWavelengthM(in)
 	if in.StandoffM == 0 {
 		return []string{fmt.Sprintf("on top: solved as standing clear on an insulating stub, the mast's conductor beginning %g wl below the lowest metal, %g wl of it included", mastBelowWl, mastBelowReachWl)}
 	}

@@ -10,7 +10,7 @@ import (
 
 // drawnInstallation returns a dipole, Yagi, folded dipole or stack with a resonant part, free, on top
 // of a mast or beside one.
-func drawnInstallation(t *rapid.T) (Antenna, Installation) {
+func drawnInstallation(t *rapid.T) (Antenna, antenna.Setting) {
 	number := func(lo, hi float64, what string) float64 { return rapid.Float64Range(lo, hi).Draw(t, what) }
 	diameterM := number(1e-4, 0.012, "diameter")
 	metal := antenna.Materials()[rapid.IntRange(0, 5).Draw(t, "metal")]
@@ -47,7 +47,7 @@ func drawnInstallation(t *rapid.T) (Antenna, Installation) {
 func TestInstalledAntennas(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		a, in := drawnInstallation(t)
-		s, err := a.solveInstalled(in)
+		s, err := a.solve(in)
 		if err != nil {
 			t.Skip(err)
 		}
@@ -60,7 +60,7 @@ func TestInstalledAntennas(t *testing.T) {
 		if mean := s.Pattern.MeanGain(); abs(mean-1) > 2e-3 {
 			t.Errorf("mean directivity %.5f", mean)
 		}
-		checked, _ := in.checked()
+		checked, _ := in.Checked()
 		c, err := a.cut(checked)
 		if err != nil {
 			t.Fatal(err)
@@ -79,7 +79,7 @@ func TestInstalledAntennas(t *testing.T) {
 func TestInstalledSymmetry(t *testing.T) {
 	a, err := Yagi(testYagi())
 	built(t, a, err)
-	s, err := a.SolveInstalled(endless(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.114, StandoffM: 0.9}))
+	s, err := a.Solve(endless(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.114, StandoffM: 0.9}))
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -104,7 +104,7 @@ func TestInstalledSymmetry(t *testing.T) {
 func TestPushOfAMast(t *testing.T) {
 	a := rodOf(t, 0, 0.003, 0.5)
 	gain := func(diameterM, standoffM, azDeg float64) float64 {
-		s, err := a.SolveInstalled(endless(antenna.Setting{FreqHz: testHz, MastDiameterM: diameterM, StandoffM: standoffM}))
+		s, err := a.Solve(endless(antenna.Setting{FreqHz: testHz, MastDiameterM: diameterM, StandoffM: standoffM}))
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -119,7 +119,7 @@ func TestPushOfAMast(t *testing.T) {
 	near(t, "far from a mast", gain(0.06, 40, 0), 2.13, 0.25)
 	near(t, "on top", gain(0.06, 0, 0), 2.13, 0.3)
 	free := cutM(t, a)
-	in, _ := endless(antenna.Setting{FreqHz: testHz, MastDiameterM: 0.06}).checked()
+	in, _ := endless(antenna.Setting{FreqHz: testHz, MastDiameterM: 0.06}).Checked()
 	c, err := a.cut(in)
 	if err != nil {
 		t.Fatal(err)

@@ -24,17 +24,17 @@ func rodOf(t testing.TB, lengthM, radiusM, at float64) Antenna {
 }
 
 // endless is the installation of a setting whose mast goes on and on above the antenna.
-func endless(s antenna.Setting) Installation {
+func endless(s antenna.Setting) antenna.Setting {
 	s.MastAboveM = math.Inf(1)
-	return installed(s)
+	return s
 }
 
 // clearOfMasts is an installation without a mast at the tests' wavelength of 1 m.
-func clearOfMasts() Installation { return endless(antenna.Setting{FreqHz: testHz}) }
+func clearOfMasts() antenna.Setting { return endless(antenna.Setting{FreqHz: testHz}) }
 
 func cutM(t testing.TB, a Antenna) float64 {
 	t.Helper()
-	in, err := clearOfMasts().checked()
+	in, err := clearOfMasts().Checked()
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -51,7 +51,7 @@ func TestReferenceResonances(t *testing.T) {
 		a := rodOf(t, 0, number(t, row, "radius_wl"), 0.5)
 		c.check(row, "resonant length", cutM(t, a), number(t, row, "resonant_length_wl"), number(t, row, "tol_length_wl"))
 		if row["R_ohm"] != "" {
-			s, err := a.SolveInstalled(clearOfMasts())
+			s, err := a.Solve(clearOfMasts())
 			if err != nil {
 				t.Fatal(err)
 			}
@@ -87,7 +87,7 @@ func TestReferenceBands(t *testing.T) {
 // VSWR in it.
 func bandOf(t *testing.T, a Antenna, referenceOhm, limit float64) (low, high, least float64) {
 	t.Helper()
-	in, err := clearOfMasts().checked()
+	in, err := clearOfMasts().Checked()
 	if err != nil {
 		t.Fatal(err)
 	}

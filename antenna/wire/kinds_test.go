@@ -27,7 +27,7 @@ func testFolded() FoldedDipoleSpec {
 
 const channelHz = 151.5e6
 
-func analysed(t testing.TB, a Antenna, in Installation, referenceOhm float64) Analysis {
+func analysed(t testing.TB, a Antenna, in antenna.Setting, referenceOhm float64) Analysis {
 	t.Helper()
 	r, err := a.Analyse(in, referenceOhm)
 	if err != nil {
@@ -64,8 +64,8 @@ func TestKinds(t *testing.T) {
 		if tc.a.Kind != tc.kind || tc.a.Directional != tc.directional {
 			t.Errorf("kind %q, directional %v; want %q, %v", tc.a.Kind, tc.a.Directional, tc.kind, tc.directional)
 		}
-		for _, in := range []Installation{endless(antenna.Setting{FreqHz: channelHz}), onMast, onTop} {
-			s, err := tc.a.SolveInstalled(in)
+		for _, in := range []antenna.Setting{endless(antenna.Setting{FreqHz: channelHz}), onMast, onTop} {
+			s, err := tc.a.Solve(in)
 			if err != nil {
 				t.Fatal(err)
 			}
@@ -75,7 +75,7 @@ func TestKinds(t *testing.T) {
 			if in.MastDiameterM > 0 && len(s.Remarks) == 0 {
 				t.Errorf("%s: no remark on its mast", tc.kind)
 			}
-			checked, _ := in.checked()
+			checked, _ := in.Checked()
 			c, err := tc.a.cut(checked)
 			if err != nil {
 				t.Fatal(err)
@@ -101,7 +101,7 @@ func TestAnalysis(t *testing.T) {
 	spec := antenna.DipoleSpec{FeedAt: 0.5, DiameterM: 0.012, Material: antenna.Materials()[3]}
 	a, err := Dipole(spec)
 	built(t, a, err)
-	for _, in := range []Installation{
+	for _, in := range []antenna.Setting{
 		endless(antenna.Setting{FreqHz: channelHz}),
 		endless(antenna.Setting{FreqHz: channelHz, MastDiameterM: 0.114, StandoffM: 0.5}),
 	} {
@@ -229,19 +229,19 @@ func TestBadInstallations(t *testing.T) {
 	for _, tc := range []struct {
 		name string
 		a    Antenna
-		in   Installation
+		in   antenna.Setting
 		says string
 	}{
-		{"frequency", rod, Installation{}, "frequency 0 Hz"},
-		{"roll", rod, Installation{Setting: antenna.Setting{FreqHz: testHz}, RollDeg: math.NaN()}, "roll NaN deg"},
-		{"mast height", rod, Installation{Setting: antenna.Setting{FreqHz: testHz}, MastAboveM: math.NaN()}, "mast's height"},
+		{"frequency", rod, antenna.Setting{}, "frequency 0 Hz"},
+		{"roll", rod, antenna.Setting{FreqHz: testHz, RollDeg: math.NaN()}, "roll NaN deg"},
+		{"mast height", rod, antenna.Setting{FreqHz: testHz, MastAboveM: math.NaN()}, "mast's height"},
 		{"in the mast", rod, endless(antenna.Setting{FreqHz: testHz, MastDiameterM: 0.2, StandoffM: 0.05}), "runs into the mast"},
 		{"mast", rod, endless(antenna.Setting{FreqHz: testHz, MastDiameterM: 5, StandoffM: 4}), "mast diameter 5 m is out of range"},
 		{"too thick", thick, endless(antenna.Setting{FreqHz: testHz}), "too long"},
 		{"stack overlaps", overlapping, endless(antenna.Setting{FreqHz: testHz}), "wires 1 and 2 cross, touch or overlap"},
 	} {
 		for _, solve := range []func() error{
-			func() error { _, err := tc.a.SolveInstalled(tc.in); return err },
+			func() error { _, err := tc.a.Solve(tc.in); return err },
 			func() error { _, err := tc.a.Analyse(tc.in, 50); return err },
 			func() error { _, err := tc.a.Refine(tc.in); return err },
 		} {
@@ -250,7 +250,7 @@ func TestBadInstallations(t *testing.T) {
 			}
 		}
 	}
-	if _, err := rod.Sweep(Installation{}, []float64{testHz}); err == nil {
+	if _, err := rod.Sweep(antenna.Setting{}, []float64{testHz}); err == nil {
 		t.Error("a sweep without a frequency was made")
 	}
 }
@@ -285,10 +285,10 @@ func TestWires(t *testing.T) {
 func TestSolutionsAreShared(t *testing.T) {
 	a := rodOf(t, 0, 0.003, 0.5)
 	s := antenna.Setting{FreqHz: testHz, MastDiameterM: 0.05, StandoffM: 0.3, MastAboveM: 0.4, RollDeg: 30}
-	in := installed(s)
+	in := s
 	answers := make([]antenna.Solution, 16)
 	parallel(len(answers), func(i int) { answers[i], _ = a.Solve(s) })
-	fresh, err := rodOf(t, 0, 0.003, 0.5).SolveInstalled(in)
+	fresh, err := rodOf(t, 0, 0.003, 0.5).Solve(in)
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -152,11 +152,11 @@ func TestRolledAntennaOnUprightMast(t *testing.T) {
 	for _, rollDeg := range []float64{0, 35, 90} {
 		in := endless(antenna.Setting{FreqHz: testHz, MastDiameterM: 0.06, StandoffM: 0.4})
 		in.RollDeg, in.MastAboveM = rollDeg, 0.7
-		got, err := a.SolveInstalled(in)
+		got, err := a.Solve(in)
 		if err != nil {
 			t.Fatal(err)
 		}
-		in, _ = in.checked()
+		in, _ = in.Checked()
 		c, err := a.cut(in)
 		if err != nil {
 			t.Fatal(err)
@@ -165,7 +165,7 @@ func TestRolledAntennaOnUprightMast(t *testing.T) {
 		site := Structure{Wires: c.structure.Wires, Feeds: c.structure.Feeds}.turned(vec{1, 0, 0}, rollDeg*math.Pi/180, vec{})
 		upright := in
 		upright.RollDeg = 0
-		site.Mast = upright.mast(layout{wires: site.Wires})
+		site.Mast = mastOf(upright, layout{wires: site.Wires})
 		n, r := excited(t, site)
 		if cmplx.Abs(n.TogetherOhm()-got.ImpedanceOhm) > 1e-6*cmplx.Abs(got.ImpedanceOhm) {
 			t.Errorf("rolled by %g: %.5f ohm, at the site %.5f", rollDeg, got.ImpedanceOhm, n.TogetherOhm())
@@ -195,7 +195,7 @@ func TestMastOfAnInstallation(t *testing.T) {
 		{0.3, 2.3, vec{-0.3, 0, -2.7}, vec{-0.3, 0, 2.3}},
 	} {
 		in.StandoffM, in.MastAboveM = tc.standoffM, tc.aboveM
-		m := in.mast(rod)
+		m := mastOf(in, rod)
 		whole := m.lengthM() * 1.0000001
 		if tc.standoffM > 0 && whole-math.Floor(whole) > 1e-5 {
 			t.Errorf("%+v: mast of %g wl, want whole wavelengths", tc, m.lengthM())
@@ -204,7 +204,7 @@ func TestMastOfAnInstallation(t *testing.T) {
 			t.Errorf("%+v: mast from %v to %v", tc, m.From, m.To)
 		}
 	}
-	if in.MastDiameterM = 0; in.mast(rod).exists() {
+	if in.MastDiameterM = 0; mastOf(in, rod).exists() {
 		t.Error("a mast without a diameter")
 	}
 }

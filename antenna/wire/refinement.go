@@ -1,5 +1,7 @@
 package wire
 
+import "fellreach/antenna"
+
 // A Refinement is what becomes of an antenna when each wire has twice the segments, or as many as
 // its thickness allows: none more, and no change, if Segments is that of the solution.
 type Refinement struct {
@@ -12,12 +14,12 @@ type Refinement struct {
 // Refine checks how far the solution in an installation has converged, by solving it once more on
 // twice the segments. The change is the measure of what the division leaves open; on thick rods
 // it has no limit, since a gap in a tube has none.
-func (a Antenna) Refine(in Installation) (Refinement, error) {
-	in, err := in.checked()
+func (a Antenna) Refine(in antenna.Setting) (Refinement, error) {
+	in, err := in.Checked()
 	if err != nil {
 		return Refinement{}, err
 	}
-	coarse, err := a.solveInstalled(in)
+	coarse, err := a.solve(in)
 	if err != nil {
 		return Refinement{}, err
 	}
@@ -46,7 +48,7 @@ func (a Antenna) Refine(in Installation) (Refinement, error) {
 }
 
 // finer returns the structure with twice the segments on each wire whose thickness allows more.
-func (s Structure) finer(in Installation) (Structure, error) {
+func (s Structure) finer(in antenna.Setting) (Structure, error) {
 	p, err := s.prepare(in.FreqHz, in.DesignHz)
 	if err != nil {
 		return Structure{}, err

@@ -13,7 +13,7 @@ const bandVSWR = 2
 // A sweeper solves one cut antenna at many frequencies.
 type sweeper struct {
 	a            Antenna
-	in           Installation
+	in           antenna.Setting
 	cut          cut
 	referenceOhm float64
 	limit        float64 // of the VSWR, for the band

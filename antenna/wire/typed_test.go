@@ -55,7 +55,7 @@ func TestTypedResonances(t *testing.T) {
 		{0.008, 0.464514, 74.9286, 0.0016, 1.8},
 	} {
 		a := rodOf(t, 0, tc.radiusM, 0.5)
-		s, err := a.SolveInstalled(clearOfMasts())
+		s, err := a.Solve(clearOfMasts())
 		if err != nil {
 			t.Fatal(err)
 		}

@@ -92,11 +92,11 @@ func (r *AntennaResult) solve(q AntennaQuery, b built, setting antenna.Setting, 
 // solved fills in an antenna of wires; its VSWR is against the reference.
 func (r *AntennaResult) solved(q AntennaQuery, wires *wire.Antenna, setting antenna.Setting, referenceOhm float64) error {
 	var err error
-	if r.Analysis, err = wires.Analyse(installation(setting), referenceOhm); err != nil {
+	if r.Analysis, err = wires.Analyse(setting, referenceOhm); err != nil {
 		return err
 	}
 	if q.Refine {
-		refined, err := wires.Refine(installation(setting))
+		refined, err := wires.Refine(setting)
 		if err != nil {
 			return err
 		}
@@ -109,7 +109,7 @@ func (r *AntennaResult) solved(q AntennaQuery, wires *wire.Antenna, setting ante
 	for i := range freqs {
 		freqs[i] = setting.FreqHz * (1 + sweepReach*(2*float64(i)/(sweepPoints-1)-1))
 	}
-	impedances, err := wires.Sweep(installation(setting), freqs)
+	impedances, err := wires.Sweep(setting, freqs)
 	for i := range impedances {
 		r.Curve = append(r.Curve, VSWRPoint{freqs[i], antenna.VSWR(impedances[i], referenceOhm)})
 	}

@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"io"
 	"os"
-	"sync"
 
 	"fellreach/antenna"
 	"fellreach/antenna/wire"
@@ -43,7 +42,6 @@ func (p *Plan) built(name string) (built, error) {
 		var w wire.Antenna
 		if w, err = p.wires(name); err == nil {
 			b.Design, b.wires = w.Design, &w
-			b.Solve = func(s antenna.Setting) (antenna.Solution, error) { return w.SolveInstalled(installation(s)) }
 			b.match, b.harnessDB = p.match(name)
 		}
 	}
@@ -51,12 +49,7 @@ func (p *Plan) built(name string) (built, error) {
 		return built{}, err
 	}
 	b.Name, b.Kind = name, p.Antennas[name].Kind
-	b.Solve = remembered(b.Solve)
 	return b, nil
-}
-
-func installation(s antenna.Setting) wire.Installation {
-	return wire.Installation{Setting: s, RollDeg: s.RollDeg, MastAboveM: s.MastAboveM}
 }
 
 // wires makes an antenna of wires.
@@ -184,21 +177,4 @@ func (p *Plan) withFiles(use func(...io.Reader) error, paths ...string) error {
 		return fmt.Errorf("%s: %w", orList(paths), err)
 	}
 	return nil
-}
-
-// remembered returns a solver that solves each setting once: many links share an antenna and a
-// channel.
-func remembered(solve func(antenna.Setting) (antenna.Solution, error)) func(antenna.Setting) (antenna.Solution, error) {
-	type answer struct {
-		once     sync.Once
-		solution antenna.Solution
-		err      error
-	}
-	var known sync.Map
-	return func(s antenna.Setting) (antenna.Solution, error) {
-		entry, _ := known.LoadOrStore(s, &answer{})
-		a := entry.(*answer)
-		a.once.Do(func() { a.solution, a.err = solve(s) })
-		return a.solution, a.err
-	}
 }
