@@ -4,23 +4,27 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"os"
+	"path/filepath"
 	"sync"
 	"text/tabwriter"
 
 	"fellreach/link/coverage"
 	"fellreach/link/plan"
+	"fellreach/link/report"
 
 	"github.com/spf13/cobra"
 )
 
 // A coverFlags is what `cover` is told besides the plan.
 type coverFlags struct {
-	site, dir, compress, quality string
-	only                         []string
+	site, dir, compress, quality, along string
+	only                                []string
+	step                                plan.Length
 }
 
 func newCover(t *terminal) *cobra.Command {
-	var f coverFlags
+	f := coverFlags{step: 100}
 	cmd := &cobra.Command{
 		Use:   "cover PLAN -o DIR",
 		Short: "Map the coverage of the plan's sites, cell by cell",
@@ -35,6 +39,9 @@ func newCover(t *terminal) *cobra.Command {
 				return err
 			}
 			defer network.Close()
+			if f.along != "" {
+				return f.ride(cmd, t, network)
+			}
 			return f.run(cmd, t, network, options)
 		},
 	}
@@ -44,6 +51,8 @@ func newCover(t *terminal) *cobra.Command {
 	flags.StringSliceVar(&f.only, "only", nil, "compute and write only these: loss, margin, field, bands, network, picture")
 	flags.StringVar(&f.compress, "compress", "fast", "fast, or small for smaller files")
 	flags.StringVar(&f.quality, "quality", "normal", "normal, or fine: twice the radials, 8 points of each profile on the cell's own bearing")
+	flags.StringVar(&f.along, "along", "", "follow a track (GeoJSON or GPX) instead of mapping: margin by distance")
+	flags.Var(&quantityFlag{&f.step, "100 m"}, "step", "distance of two stops on the track")
 	_ = cmd.RegisterFlagCompletionFunc("compress", cobra.FixedCompletions([]string{"fast", "small"}, cobra.ShellCompDirectiveNoFileComp))
 	_ = cmd.RegisterFlagCompletionFunc("quality", cobra.FixedCompletions([]string{"normal", "fine"}, cobra.ShellCompDirectiveNoFileComp))
 	return cmd
@@ -154,4 +163,41 @@ func (b *radialBars) finish() {
 		b.done()
 	}
 	b.step, b.done = nil, nil
+}
+
+// ride follows a track: a table of margins, points and a picture go into the folder.
+func (f *coverFlags) ride(cmd *cobra.Command, t *terminal, network *plan.Network) error {
+	sites, err := network.CoverageSites(f.site)
+	if err != nil {
+		return err
+	}
+	data, err := os.ReadFile(f.along)
+	if err != nil {
+		return err
+	}
+	track, err := coverage.ParseTrack(data)
+	if err != nil {
+		return fmt.Errorf("%s: %w", f.along, err)
+	}
+	stops, err := track.Stops(float64(f.step))
+	if err != nil {
+		return err
+	}
+	step, done := t.progress(len(stops)*len(sites), "stops")
+	ride, err := coverage.Along(cmd.Context(), network.Ground, sites, stops, step)
+	done()
+	if err != nil {
+		return err
+	}
+	if err := os.MkdirAll(f.dir, 0o755); err != nil {
+		return err
+	}
+	for name, write := range map[string]func(io.Writer, *coverage.Ride) error{"along.csv": report.RideCSV, "along.geojson": report.RideGeoJSON, "along.svg": report.RideSVG} {
+		file := output{file: filepath.Join(f.dir, name)}
+		if err := file.write(t, func(w io.Writer) error { return write(w, ride) }); err != nil {
+			return err
+		}
+	}
+	fmt.Fprintf(t.out, "%s\nwritten to %s\n", report.RideSummary(ride), f.dir)
+	return nil
 }

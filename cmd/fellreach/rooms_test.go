@@ -20,7 +20,7 @@ var rooms = map[string][]string{
 	"link":             {"antenna", "terrain", "link/propagation", "link/noise"},
 	"link/coverage":    {"antenna", "terrain", "terrain/raster", "link", "link/propagation", "link/noise"},
 	"link/plan":        {"link/coverage", "antenna", "antenna/wire", "terrain", "terrain/raster", "link", "link/propagation", "link/noise"},
-	"link/report":      {"antenna", "antenna/wire", "terrain", "terrain/raster", "link", "link/propagation", "link/plan"},
+	"link/report":      {"link/coverage", "antenna", "antenna/wire", "terrain", "terrain/raster", "link", "link/propagation", "link/plan"},
 	"web":              nil, // everything
 	"cmd/fellreach":    nil, // everything
 }
