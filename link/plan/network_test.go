@@ -8,7 +8,6 @@ import (
 	"strings"
 	"testing"
 
-	"fellreach/antenna"
 	"fellreach/link"
 )
 
@@ -191,23 +190,4 @@ func TestPathsFollowThePlan(t *testing.T) {
 		t.Fatal(err)
 	}
 	n.Close()
-}
-
-// An antenna is solved once for a setting, however many stations and directions ask for it.
-func TestAntennaSolvedOnce(t *testing.T) {
-	count := 0
-	solve := remembered(func(s antenna.Setting) (antenna.Solution, error) {
-		count++
-		return antenna.Solution{Efficiency: s.FreqHz}, nil
-	})
-	for range 3 {
-		for _, hz := range []float64{1e8, 2e8} {
-			if got, err := solve(antenna.Setting{FreqHz: hz}); err != nil || got.Efficiency != hz {
-				t.Errorf("%g Hz gave %g, %v", hz, got.Efficiency, err)
-			}
-		}
-	}
-	if count != 2 {
-		t.Errorf("solved %d times", count)
-	}
 }
