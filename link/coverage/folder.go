@@ -25,7 +25,7 @@ const stateDir = ".cover"
 // openFolder makes the folder if it is not there and makes sure that it can be written.
 func openFolder(dir string, small bool) (folder, error) {
 	f := folder{dir, small}
-	if err := os.MkdirAll(filepath.Join(dir, stateDir), 0o755); err != nil {
+	if err := os.MkdirAll(dir, 0o755); err != nil {
 		return f, err
 	}
 	probe, err := os.CreateTemp(dir, ".probe*")
@@ -94,6 +94,9 @@ func (f folder) done(slug, digest string, names []string) (SiteReport, bool) {
 }
 
 func (f folder) setDone(slug, digest string, report SiteReport) error {
+	if err := os.MkdirAll(f.path(stateDir), 0o755); err != nil {
+		return err
+	}
 	return f.writeJSON(filepath.Join(stateDir, slug+".json"), siteState{digest, report})
 }
 
