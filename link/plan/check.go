@@ -13,6 +13,12 @@ const (
 	maxFreqHz = 6e9
 )
 
+// The steps that a profile may have, in metres: beyond a kilometre, hills are missed.
+const (
+	minStepM = 1.0
+	maxStepM = 1000.0
+)
+
 // A checker holds a plan against what its form cannot say: references, alternatives, ranges.
 type checker struct {
 	*Plan
@@ -22,6 +28,9 @@ type checker struct {
 func (p *Plan) check() Errors {
 	c := &checker{Plan: p}
 	c.aim("aim", p.Aim)
+	if step := p.Ground.Step; step != nil {
+		c.within("ground.step", float64(*step), minStepM, maxStepM, "m")
+	}
 	for name, ch := range sorted(p.Channels) {
 		c.channel("channels."+name, ch)
 	}

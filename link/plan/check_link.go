@@ -43,7 +43,9 @@ func (c *checker) link(path string, l Link) {
 	for i, via := range l.Via {
 		c.end(fmt.Sprintf("%s.via[%d]", path, i), via)
 	}
-	c.aim(path+".aim", l.Aim)
+	if _, own := c.where[path+".aim"]; own {
+		c.aim(path+".aim", l.Aim)
+	}
 	if l.Fade == nil && *l.Aim.Availability > 50 && !methods[c.Method].fades {
 		c.wrong(path+".fade", fmt.Sprintf("is missing: method %s does not compute the fading that %g %% availability asks for", c.Method, float64(*l.Aim.Availability)),
 			`state it, as in fade: "10 dB", or set aim: {availability: "50 %"}`)

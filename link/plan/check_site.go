@@ -30,6 +30,9 @@ func (c *checker) site(path string, s Site) {
 	if s.GroundLevel != nil {
 		c.within(path+".ground_level", float64(*s.GroundLevel), -500, 9000, "m")
 	}
+	if s.Mast != nil {
+		c.mast(path+".mast", s.Mast)
+	}
 	if len(s.Stations) > 0 {
 		if s.Radio != "" || s.Antenna != nil || s.Feeder != nil || s.Inserts != nil {
 			c.wrong(path, "has stations and a radio, antenna, feeder or inserts beside them", "move them into the stations")
@@ -43,6 +46,19 @@ func (c *checker) site(path string, s Site) {
 		return
 	}
 	c.station(path, s, s.Station)
+}
+
+// maxMastWidthM is more than any mast measures that antennas hang beside.
+const maxMastWidthM = 10.0
+
+func (c *checker) mast(path string, m *Mast) {
+	heightM, widthM := mastSize(m)
+	c.within(path+".height", heightM, minAglM, maxAglM, "m")
+	width := ".diameter"
+	if m.Kind == "lattice" {
+		width = ".width"
+	}
+	c.within(path+width, widthM, 0, maxMastWidthM, "m")
 }
 
 func (c *checker) station(path string, s Site, st Station) {
@@ -133,6 +149,8 @@ func (c *checker) insert(path string, in Insert) {
 	switch {
 	case (in.Loss == nil) == (in.Gain == nil):
 		c.wrong(path, "needs a loss or a gain", "")
+	case in.Gain != nil && *in.Gain == 0:
+		c.wrong(path, "is a preamplifier without gain", "a loss is written as loss")
 	case in.Gain != nil && in.NoiseFigure == nil:
 		c.wrong(path, "is a preamplifier without a noise_figure", "")
 	case in.Gain != nil && !in.ReceiveOnly:

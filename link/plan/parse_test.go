@@ -76,6 +76,26 @@ func TestDefaults(t *testing.T) {
 	}
 }
 
+// A mast of no stated kind is a pole, for the parser and for the schema.
+func TestMastWithoutKind(t *testing.T) {
+	text := strings.Replace(bare, "radio: r, antenna", `mast: {height: "5 m", diameter: "60 mm"}, radio: r, antenna`, 1)
+	p, err := Parse("x.yaml", []byte(text))
+	if err != nil {
+		t.Fatal(err)
+	}
+	if pole, ok := p.Sites[0].Mast.Spec.(*Pole); !ok || p.Sites[0].Mast.Kind != "pole" || *pole.Diameter != 0.06 {
+		t.Errorf("the mast is read as %+v", p.Sites[0].Mast)
+	}
+	if err := compiledSchema(t).Validate(decoded(t, text)); err != nil {
+		t.Errorf("the schema refuses it: %v", err)
+	}
+	for _, wrong := range []string{`width: "0.4 m"`, `kind: tripod`} {
+		if _, err := Parse("x.yaml", []byte(strings.Replace(text, `diameter: "60 mm"`, wrong, 1))); err == nil {
+			t.Errorf("a mast with %s is read", wrong)
+		}
+	}
+}
+
 // bare is about the least that a plan can be.
 const bare = `format: 1
 ground: {elevation: {files: [dem.tif]}}
@@ -136,6 +156,10 @@ var badPlans = []badPlan{
 	{"link twice", `links: [`, `links: [{from: A, to: B, fade: "3 dB"}, `, "stands twice", false},
 	{"no fade", `, fade: "10 dB"}]`, "}]\nmethod: p526", "links[0].fade: is missing: method p526 does not compute the fading", false},
 	{"availability too high", "links:", `aim: {availability: "99.99 %"}` + "\nlinks:", "it lies from 50 to 99.9 %", false},
+	{"absurd step", `files: [dem.tif]}`, `files: [dem.tif]}, step: "50 km"`, "ground.step: 50000 m is out of range", false},
+	{"absurd mast", `radio: r, antenna: {use: a, above_ground: "5 m"}}` + "\n  - {name: B", `radio: r, mast: {height: "18 km"}, antenna: {use: a, above_ground: "5 m"}}` + "\n  - {name: B", "sites[0].mast.height: 18000 m is out of range", false},
+	{"absurd mast width", `radio: r, antenna: {use: a, above_ground: "5 m"}}` + "\n  - {name: B", `radio: r, mast: {kind: lattice, height: "5 m", width: "40 m"}, antenna: {use: a, above_ground: "5 m"}}` + "\n  - {name: B", "sites[0].mast.width: 40 m is out of range", false},
+	{"amplifier without gain", `radio: r, antenna: {use: a, above_ground: "5 m"}}` + "\n  - {name: B", `radio: r, inserts: [{name: amp, gain: "0 dB", noise_figure: "2 dB", receive_only: true}], antenna: {use: a, above_ground: "5 m"}}` + "\n  - {name: B", "sites[0].inserts[0]: is a preamplifier without gain", false},
 	{"absurd height", `above_ground: "5 m"}}` + "\n  - {name: B", `above_ground: "30 km"}}` + "\n  - {name: B", "30000 m is out of range", false},
 	{"no power", `power: "5 W", `, ``, `transmits on this link, but radio "r" has no power`, false},
 	{"place", `at: "47.5 N, 20.1 W"`, `at: "97.5 N, 20.1 W"`, "sites[0].at: ", false},
@@ -196,6 +220,15 @@ func TestAllProblemsAtOnce(t *testing.T) {
 		if all[i].Line < all[i-1].Line {
 			t.Errorf("problem %d stands before problem %d", i, i-1)
 		}
+	}
+}
+
+// An aim that the links inherit is reported where it stands, not with every link.
+func TestInheritedAimReportedOnce(t *testing.T) {
+	_, err := Parse("bare.yaml", []byte(strings.Replace(bare, "links:", "aim: {chance: \"100 %\"}\nlinks:", 1)))
+	var all Errors
+	if !errors.As(err, &all) || len(all) != 1 || all[0].Field != "aim.chance" {
+		t.Errorf("got %v, want one error at aim.chance", err)
 	}
 }
 

@@ -7,15 +7,15 @@ type antennaKinds struct{}
 
 func (antennaKinds) kinds() []kind {
 	return []kind{
-		{"dipole", &Dipole{}},
-		{"folded-dipole", &FoldedDipole{}},
-		{"yagi", &Yagi{}},
-		{"stack", &Stack{}},
-		{"wires", &Wires{}},
-		{"table", &PatternTable{}},
-		{"cuts", &PatternCuts{}},
-		{"omni", &Omni{}},
-		{"datasheet", &Datasheet{}},
+		{name: "dipole", spec: &Dipole{}},
+		{name: "folded-dipole", spec: &FoldedDipole{}},
+		{name: "yagi", spec: &Yagi{}},
+		{name: "stack", spec: &Stack{}},
+		{name: "wires", spec: &Wires{}},
+		{name: "table", spec: &PatternTable{}},
+		{name: "cuts", spec: &PatternCuts{}},
+		{name: "omni", spec: &Omni{}},
+		{name: "datasheet", spec: &Datasheet{}},
 	}
 }
 

@@ -9,8 +9,7 @@ import (
 	"github.com/invopop/jsonschema"
 )
 
-// OneOf is a group of keys whose `kind` says which others it may have. The first kind of K is
-// the default where the kind may be left out.
+// OneOf is a group of keys whose `kind` says which others it may have.
 type OneOf[K kindSet] struct {
 	Kind string
 	Spec any // a pointer to the struct of the kind
@@ -18,10 +17,12 @@ type OneOf[K kindSet] struct {
 
 type kindSet interface{ kinds() []kind }
 
-// A kind is one choice of a OneOf: its name and the shape of its keys.
+// A kind is one choice of a OneOf: its name and the shape of its keys. The one that is usual is
+// meant where the plan writes no kind.
 type kind struct {
-	name string
-	spec any
+	name  string
+	spec  any
+	usual bool
 }
 
 func (o *OneOf[K]) decode(d *decoder, n ast.Node, path string) {
@@ -35,23 +36,24 @@ func (o *OneOf[K]) decode(d *decoder, n ast.Node, path string) {
 	for i := range kinds {
 		names[i] = kinds[i].name
 	}
-	i := slices.IndexFunc(entries, func(e entry) bool { return e.name == "kind" })
-	if i < 0 {
+	j := slices.IndexFunc(kinds, func(k kind) bool { return k.usual })
+	if i := slices.IndexFunc(entries, func(e entry) bool { return e.name == "kind" }); i >= 0 {
+		name, ok := d.text(entries[i].node, path+".kind", nil)
+		if !ok {
+			return
+		}
+		if j = slices.Index(names, name); j < 0 {
+			d.report(at(entries[i].node), path+".kind", fmt.Sprintf("%.40q is not a kind here", name), "write "+orList(names))
+			return
+		}
+		entries = slices.Delete(entries, i, i+1)
+	} else if j < 0 {
 		d.report(at(n), path+".kind", "is missing", "write kind: "+orList(names))
 		return
 	}
-	name, ok := d.text(entries[i].node, path+".kind", nil)
-	if !ok {
-		return
-	}
-	j := slices.Index(names, name)
-	if j < 0 {
-		d.report(at(entries[i].node), path+".kind", fmt.Sprintf("%.40q is not a kind here", name), "write "+orList(names))
-		return
-	}
 	spec := reflect.New(reflect.TypeOf(kinds[j].spec).Elem())
-	d.fields(slices.Delete(entries, i, i+1), at(n), spec.Elem(), path)
-	*o = OneOf[K]{name, spec.Interface()}
+	d.fields(entries, at(n), spec.Elem(), path)
+	*o = OneOf[K]{kinds[j].name, spec.Interface()}
 }
 
 // JSONSchema lists the kinds with their keys.
@@ -61,7 +63,9 @@ func (OneOf[K]) JSONSchema() *jsonschema.Schema {
 	for _, kind := range k.kinds() {
 		one := reflected(kind.spec)
 		one.Properties.Set("kind", &jsonschema.Schema{Const: kind.name})
-		one.Required = append([]string{"kind"}, one.Required...)
+		if !kind.usual {
+			one.Required = append([]string{"kind"}, one.Required...)
+		}
 		all.OneOf = append(all.OneOf, one)
 	}
 	return all

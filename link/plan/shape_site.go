@@ -54,12 +54,14 @@ type Insert struct {
 	Where       string `json:"where,omitempty" jsonschema:"enum=radio,enum=mast" jsonschema_description:"which end of the feeder; radio when left out"`
 }
 
-// A Mast is a pole or a lattice tower.
+// A Mast is a pole, also where its kind is left out, or a lattice tower.
 type Mast = OneOf[mastKinds]
 
 type mastKinds struct{}
 
-func (mastKinds) kinds() []kind { return []kind{{"pole", &Pole{}}, {"lattice", &Lattice{}}} }
+func (mastKinds) kinds() []kind {
+	return []kind{{"pole", &Pole{}, true}, {"lattice", &Lattice{}, false}}
+}
 
 // Pole is a round mast.
 type Pole struct {
@@ -79,7 +81,7 @@ type Surroundings = OneOf[surroundingKinds]
 type surroundingKinds struct{}
 
 func (surroundingKinds) kinds() []kind {
-	return []kind{{"woodland", &Woodland{}}, {"built", &Built{}}}
+	return []kind{{name: "woodland", spec: &Woodland{}}, {name: "built", spec: &Built{}}}
 }
 
 // Woodland is trees around a terminal, by Rec. ITU-R P.833.
