@@ -8,6 +8,7 @@ import (
 	"slices"
 
 	"fellreach/link"
+	"fellreach/link/propagation"
 	"fellreach/terrain/raster"
 )
 
@@ -27,7 +28,7 @@ func (n *Network) addInterference(ctx context.Context, r *Result) error {
 			}
 			b := &l.Directions[i]
 			if loud := search.loud(b, l.Link.Channel); len(loud) > 0 {
-				l.Warnings = append(l.Warnings, link.Warning{At: b.To, Text: interferenceText(b, loud, n.Stations[b.To].Radio.Needs.CaptureDB)})
+				l.Warnings = append(l.Warnings, link.Warning{At: b.To, Text: n.interferenceText(b, loud)})
 			}
 		}
 	}
@@ -75,11 +76,18 @@ type heard struct {
 	dBm  float64
 }
 
-func interferenceText(b *link.Budget, loud []heard, captureDB float64) string {
+func (n *Network) interferenceText(b *link.Budget, loud []heard) string {
 	worst := slices.MaxFunc(loud, func(a, b heard) int { return cmp.Compare(a.dBm, b.dBm) })
-	text := fmt.Sprintf("on %g MHz hears %s at %.0f dBm for %d %% of the time, and %s at %.0f dBm: %.1f dB between them where it needs %g dB",
-		b.FreqHz/1e6, worst.name, worst.dBm, link.UnwantedTimePct, b.From, b.ReceivedDBm, b.ReceivedDBm-worst.dBm, captureDB)
-	if others := len(loud) - 1; others > 0 {
+	often := fmt.Sprintf("for %d %% of the time", link.UnwantedTimePct)
+	if n.Conditions.Method.Name != propagation.P1812.Name {
+		often = "in the median (the method knows no other time)"
+	}
+	text := fmt.Sprintf("on %g MHz hears %s at %.0f dBm %s, and %s at %.0f dBm: %.1f dB between them where it needs %g dB",
+		b.FreqHz/1e6, worst.name, worst.dBm, often, b.From, b.ReceivedDBm, b.ReceivedDBm-worst.dBm, n.Stations[b.To].Radio.Needs.CaptureDB)
+	switch others := len(loud) - 1; {
+	case others == 1:
+		text += "; another disturbs it too"
+	case others > 1:
 		text += fmt.Sprintf("; %d others disturb it too", others)
 	}
 	return text

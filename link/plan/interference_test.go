@@ -95,6 +95,14 @@ func TestInterference(t *testing.T) {
 	}
 }
 
+// P.526 has no time percentage: the warning does not claim one.
+func TestInterferenceOfMedian(t *testing.T) {
+	found := disturbed(t, strings.Replace(twoNets("one", "one"), "format: 1", "format: 1\nmethod: p526", 1))
+	if len(found) == 0 || strings.Contains(found[0], "% of the time") || !strings.Contains(found[0], "in the median") {
+		t.Errorf("got %q", found)
+	}
+}
+
 // Stations that talk with the same base take turns: none disturbs another's link to it.
 func TestOneNetTakesTurns(t *testing.T) {
 	text := strings.Replace(twoNets("one", "one"), "{from: C, to: D,", "{from: C, to: B,", 1)
@@ -103,16 +111,35 @@ func TestOneNetTakesTurns(t *testing.T) {
 	}
 }
 
-// Frequencies of different stations at one site are told apart by their own links.
+// A site stands for its stations where one link alone can be meant.
+func TestSectionOfSites(t *testing.T) {
+	stations := strings.NewReplacer(
+		`5260000, radio: r, antenna: {use: a, above_ground: "20 m"}}`+"\n  - {name: B", `5260000, stations: {low: {radio: r, antenna: {use: a, above_ground: "10 m"}}, high: {radio: r, antenna: {use: a, above_ground: "20 m"}}}}`+"\n  - {name: B",
+		"{from: A,", "{from: A/high,", "links:", "links:\n  - {from: A/low, to: C, channel: far}\n  - {from: A/high, to: C, channel: near}")
+	n := flatNetwork(t, stations.Replace(twoNets("one", "one")))
+	if l, err := n.Named("B..A"); err != nil || l.Title() != "A/high to B (one)" {
+		t.Errorf("B..A names %v (%v)", l, err)
+	}
+	for named, want := range map[string]string{"A..C": "2 links run between A and C", "A..D": "no link runs from site to site", "A..A/low": "one site"} {
+		if _, err := n.Named(named); err == nil || !strings.Contains(err.Error(), want) {
+			t.Errorf("%q gave %v, want %q", named, err, want)
+		}
+	}
+}
+
+// Links are found by name or by ends; ends without a link make a path of its own.
 func TestSectionNames(t *testing.T) {
-	n := flatNetwork(t, strings.Replace(twoNets("one", "one"), "{from: C, to: D, channel: one}", "{from: C, to: D, channel: one, name: east pair}", 1))
-	for named, want := range map[string]string{"A..B": "A to B (one)", "B..A": "A to B (one)", "east pair": "east pair", "D..C": "east pair"} {
+	named := strings.NewReplacer("{from: C, to: D, channel: one}", "{from: C, to: D, channel: one, name: east pair}", "links:", `  - {name: E, at: UTM 27N 490000 5264000, radio: r, antenna: {use: a, above_ground: "20 m"}}
+  - {name: F, at: UTM 27N 493000 5264000, radio: r, antenna: {use: a, above_ground: "20 m"}}
+links:`)
+	n := flatNetwork(t, named.Replace(twoNets("one", "one")))
+	for named, want := range map[string]string{"A..B": "A to B (one)", "B..A": "A to B (one)", "east pair": "east pair", "D..C": "east pair", "A .. C": "A to C (one)"} {
 		l, err := n.Named(named)
 		if err != nil || l.Title() != want {
 			t.Errorf("%q names %v (%v), want %s", named, l, err, want)
 		}
 	}
-	for named, want := range map[string]string{"A..X": "does not name two stations", "north": "there is no link", "A..C": "the plan has several channels", "A..A": "one site"} {
+	for named, want := range map[string]string{"A..X": "does not name two stations", "north": "there is no link", "": "there is no link", "A..A": "one site", "E..F": "have no links, and the plan has several channels"} {
 		if _, err := n.Named(named); err == nil || !strings.Contains(err.Error(), want) {
 			t.Errorf("%q gave %v, want %q", named, err, want)
 		}
