@@ -50,7 +50,8 @@ func run(ctx context.Context, args []string, stdout, stderr io.Writer) int {
 	fmt.Fprintf(stderr, "fellreach: error: %v\n", plain(ctx, err))
 	var usage *usageError
 	var inPlan plan.Errors
-	if errors.As(err, &usage) || errors.As(err, &inPlan) {
+	var refused *plan.Refusal
+	if errors.As(err, &usage) || errors.As(err, &inPlan) || errors.As(err, &refused) {
 		return exitUsage
 	}
 	return exitOther

@@ -30,7 +30,7 @@ func newSection(t *terminal) *cobra.Command {
 			defer network.Close()
 			l, err := network.Named(named)
 			if err != nil {
-				return &usageError{err.Error()}
+				return err
 			}
 			s, err := network.Section(l)
 			if err != nil {

@@ -1,7 +1,6 @@
 package plan
 
 import (
-	"errors"
 	"fmt"
 	"maps"
 	"math"
@@ -51,13 +50,13 @@ const (
 // Antenna answers a query. The plan needs no sites and no ground for it (see [LoadAntennas]).
 func (p *Plan) Antenna(q AntennaQuery) (*AntennaResult, error) {
 	if _, ok := p.Antennas[q.Name]; !ok {
-		return nil, &hinted{fmt.Sprintf("there is no antenna %q", q.Name), known(slices.Sorted(maps.Keys(p.Antennas)), "antenna")}
+		return nil, &Refusal{fmt.Sprintf("there is no antenna %q", q.Name), known(slices.Sorted(maps.Keys(p.Antennas)), "antenna")}
 	}
 	if q.StandoffM > 0 && q.MastDiameterM == 0 {
-		return nil, errors.New("a standoff needs the diameter of its mast")
+		return nil, &Refusal{"a standoff needs the diameter of its mast", "give both"}
 	}
 	if q.MastDiameterM > 0 && q.StandoffM <= q.MastDiameterM/2 {
-		return nil, fmt.Errorf("a standoff of %g m lies inside a mast of %g m: it is from axis to axis", q.StandoffM, q.MastDiameterM)
+		return nil, &Refusal{fmt.Sprintf("a standoff of %g m lies inside a mast of %g m", q.StandoffM, q.MastDiameterM), "it is from axis to axis"}
 	}
 	b, err := p.built(q.Name)
 	if err != nil {
@@ -149,11 +148,11 @@ func (p *Plan) frequencyOf(q AntennaQuery, r *AntennaResult) (float64, error) {
 	ch, ok := p.Channels[name]
 	switch {
 	case q.Channel != "" && !ok:
-		return 0, &hinted{fmt.Sprintf("there is no channel %q", q.Channel), known(slices.Sorted(maps.Keys(p.Channels)), "channel")}
+		return 0, &Refusal{fmt.Sprintf("there is no channel %q", q.Channel), known(slices.Sorted(maps.Keys(p.Channels)), "channel")}
 	case q.FreqHz > 0:
 		return q.FreqHz, nil
 	case !ok:
-		return 0, &hinted{"the plan has several channels", "name one, or a frequency; " + known(slices.Sorted(maps.Keys(p.Channels)), "channel")}
+		return 0, &Refusal{"the plan has several channels", "name one, or a frequency; " + known(slices.Sorted(maps.Keys(p.Channels)), "channel")}
 	}
 	c := ch.resolve(name)
 	low, high := min(c.OutHz, c.BackHz), max(c.OutHz, c.BackHz)

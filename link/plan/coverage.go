@@ -26,13 +26,13 @@ func (n *Network) CoverageSites(site string) ([]coverage.Site, error) {
 	case len(sites) > 0:
 		return sites, nil
 	case len(n.plan.Coverage) == 0:
-		return nil, &hinted{"the plan asks for no coverage", `add coverage: [{site: ..., range: "25 km", mobile: {radio: ..., antenna_height: "1.5 m"}}]`}
+		return nil, &Refusal{"the plan asks for no coverage", `add coverage: [{site: ..., range: "25 km", mobile: {radio: ..., antenna_height: "1.5 m"}}]`}
 	}
 	var names []string
 	for _, v := range n.plan.Coverage {
 		names = append(names, v.Site)
 	}
-	return nil, &hinted{fmt.Sprintf("the plan asks for no coverage of %q", site), known(names, "site")}
+	return nil, &Refusal{fmt.Sprintf("the plan asks for no coverage of %q", site), known(names, "site")}
 }
 
 func (n *Network) coverageSite(c *checker, path string, v Coverage) coverage.Site {

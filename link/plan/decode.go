@@ -44,8 +44,8 @@ func (d *decoder) report(p position, path string, problem, hint string) {
 }
 
 func (d *decoder) reject(n ast.Node, path string, err error) {
-	if h, ok := err.(*hinted); ok {
-		d.report(at(n), path, h.problem, h.hint)
+	if h, ok := err.(*Refusal); ok {
+		d.report(at(n), path, h.Problem, h.Hint)
 		return
 	}
 	d.report(at(n), path, err.Error(), "")

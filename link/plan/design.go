@@ -76,7 +76,7 @@ func (p *Plan) wires(name string) (wire.Antenna, error) {
 	case *Wires:
 		return spec.wires()
 	}
-	return wire.Antenna{}, &hinted{fmt.Sprintf("%q is described by its maker's figures", name), "only antennas of wires can be stacked: dipole, folded-dipole, yagi or wires"}
+	return wire.Antenna{}, &Refusal{fmt.Sprintf("%q is described by its maker's figures", name), "only antennas of wires can be stacked: dipole, folded-dipole, yagi or wires"}
 }
 
 func (spec *Dipole) wires() (wire.Antenna, error) {

@@ -17,7 +17,7 @@ import (
 func (n *Network) InstalledAntenna(station string, q AntennaQuery) (*AntennaResult, error) {
 	s := n.Stations[station]
 	if s == nil {
-		return nil, &hinted{fmt.Sprintf("there is no station %.60q", station), n.stationNames()}
+		return nil, &Refusal{fmt.Sprintf("there is no station %.60q", station), n.stationNames()}
 	}
 	b, err := n.design(s.Antenna.Name)
 	if err != nil {
@@ -101,5 +101,5 @@ func (p *Plan) station(s *link.Station) Station {
 }
 
 func (n *Network) noAntenna(name string) error {
-	return &hinted{fmt.Sprintf("there is no antenna %.60q", name), known(slices.Sorted(maps.Keys(n.plan.Antennas)), "antenna")}
+	return &Refusal{fmt.Sprintf("there is no antenna %.60q", name), known(slices.Sorted(maps.Keys(n.plan.Antennas)), "antenna")}
 }

@@ -111,9 +111,9 @@ func (c *checker) at(path string, err error) error {
 
 // refuse reports an error from below at a place of the plan.
 func (c *checker) refuse(path string, err error) {
-	var h *hinted
+	var h *Refusal
 	if errors.As(err, &h) {
-		c.wrong(path, h.problem, h.hint)
+		c.wrong(path, h.Problem, h.Hint)
 		return
 	}
 	c.wrong(path, err.Error(), "")

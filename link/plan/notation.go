@@ -65,7 +65,7 @@ func (n *notation) parse(text string) (float64, string, error) {
 			if v := u.value(x); !math.IsInf(v, 0) && math.Abs(v) < 1e15 {
 				return v, name, nil
 			}
-			return 0, "", &hinted{fmt.Sprintf("%.40q is too large or too small a number", text), "write " + n.describe()}
+			return 0, "", &Refusal{fmt.Sprintf("%.40q is too large or too small a number", text), "write " + n.describe()}
 		}
 	}
 	return 0, "", n.refuse(text)
@@ -79,21 +79,21 @@ func (n *notation) refuse(text string) error {
 	m := anyQuantity.FindStringSubmatch(strings.TrimSpace(text))
 	switch {
 	case m == nil:
-		return &hinted{fmt.Sprintf("%.40q is not a number with a unit", text), hint}
+		return &Refusal{fmt.Sprintf("%.40q is not a number with a unit", text), hint}
 	case strings.Contains(m[1], ","):
-		return &hinted{fmt.Sprintf("%.40q is not a number with a unit", text), fmt.Sprintf("write decimals with a dot, %.40q", strings.Replace(text, ",", ".", 1))}
+		return &Refusal{fmt.Sprintf("%.40q is not a number with a unit", text), fmt.Sprintf("write decimals with a dot, %.40q", strings.Replace(text, ",", ".", 1))}
 	case m[2] == "":
-		return &hinted{fmt.Sprintf("%.40q lacks its unit", text), hint}
+		return &Refusal{fmt.Sprintf("%.40q lacks its unit", text), hint}
 	}
 	for _, name := range n.unitNames() {
 		if name == m[2] {
-			return &hinted{fmt.Sprintf("%.40q is not %s", text, strings.TrimSuffix(n.what, ",")), hint}
+			return &Refusal{fmt.Sprintf("%.40q is not %s", text, strings.TrimSuffix(n.what, ",")), hint}
 		}
 		if strings.EqualFold(name, m[2]) {
-			return &hinted{fmt.Sprintf("%.40q: the unit is written %s", text, name), hint}
+			return &Refusal{fmt.Sprintf("%.40q: the unit is written %s", text, name), hint}
 		}
 	}
-	return &hinted{fmt.Sprintf("%.40q: the unit %.10q does not fit here", text, m[2]), hint}
+	return &Refusal{fmt.Sprintf("%.40q: the unit %.10q does not fit here", text, m[2]), hint}
 }
 
 func (n *notation) unitNames() []string {
@@ -115,10 +115,11 @@ func (n *notation) schema() *jsonschema.Schema {
 	return &jsonschema.Schema{Type: "string", Pattern: n.pattern.String(), Description: n.describe()}
 }
 
-// hinted is a problem with advice, before its place in the file is known.
-type hinted struct{ problem, hint string }
+// A Refusal is a value or a question that cannot be taken, with advice: before its place in a plan
+// is known, or where it was asked outside of one.
+type Refusal struct{ Problem, Hint string }
 
-func (h *hinted) Error() string { return h.problem + " (" + h.hint + ")" }
+func (r *Refusal) Error() string { return r.Problem + " (" + r.Hint + ")" }
 
 // orList joins names as a person would: "a, b or c".
 func orList(names []string) string {

@@ -29,11 +29,11 @@ func (n *Network) Named(named string) (*link.Link, error) {
 	}
 	a, b, ok := strings.Cut(named, "..")
 	if !ok {
-		return nil, &hinted{fmt.Sprintf("there is no link %q", named), `name a link of the plan, or two ends as "A..B"`}
+		return nil, &Refusal{fmt.Sprintf("there is no link %q", named), `name a link of the plan, or two ends as "A..B"`}
 	}
 	from, to := n.called(strings.TrimSpace(a)), n.called(strings.TrimSpace(b))
 	if len(from) == 0 || len(to) == 0 {
-		return nil, &hinted{fmt.Sprintf("%q does not name two stations", named), n.stationNames()}
+		return nil, &Refusal{fmt.Sprintf("%q does not name two stations", named), n.stationNames()}
 	}
 	if from[0].Order == to[0].Order {
 		return nil, errors.New("both ends stand at one site")
@@ -45,13 +45,13 @@ func (n *Network) Named(named string) (*link.Link, error) {
 	case len(found) == 0 && len(from) == 1 && len(to) == 1:
 		return n.ownPath(from[0], to[0])
 	case len(found) == 0:
-		return nil, &hinted{fmt.Sprintf("no link runs from site to site in %q", named), "name two stations; " + n.stationNames()}
+		return nil, &Refusal{fmt.Sprintf("no link runs from site to site in %q", named), "name two stations; " + n.stationNames()}
 	}
 	var names []string
 	for _, l := range found {
 		names = append(names, l.Title())
 	}
-	return nil, &hinted{fmt.Sprintf("%d links run between %s", len(found), strings.TrimSpace(a)+" and "+strings.TrimSpace(b)), "give the links names in the plan and ask for one of " + strings.Join(names, "; ")}
+	return nil, &Refusal{fmt.Sprintf("%d links run between %s", len(found), strings.TrimSpace(a)+" and "+strings.TrimSpace(b)), "give the links names in the plan and ask for one of " + strings.Join(names, "; ")}
 }
 
 // called lists the stations of a name: one, or all of a site.
@@ -88,7 +88,7 @@ func (n *Network) ownPath(from, to *link.Station) (*link.Link, error) {
 		}
 	}
 	if len(n.plan.Channels) > 1 {
-		return nil, &hinted{fmt.Sprintf("%s and %s have no links, and the plan has several channels", from.Name, to.Name), "add the link to the plan with its channel"}
+		return nil, &Refusal{fmt.Sprintf("%s and %s have no links, and the plan has several channels", from.Name, to.Name), "add the link to the plan with its channel"}
 	}
 	for name, ch := range n.plan.Channels {
 		l.Channel = ch.resolve(name)

@@ -42,7 +42,7 @@ func (p *Polarization) Set(text string) error {
 	}
 	var slant Angle
 	if slant.Set(text) != nil {
-		return &hinted{fmt.Sprintf("%.40q is no polarization", text), `write vertical, horizontal, or a slant from upright such as "45 deg"`}
+		return &Refusal{fmt.Sprintf("%.40q is no polarization", text), `write vertical, horizontal, or a slant from upright such as "45 deg"`}
 	}
 	*p = Polarization{SlantDeg: float64(slant)}
 	return nil
@@ -67,7 +67,7 @@ func (f *Facing) Set(text string) error {
 	}
 	var bearing Angle
 	if bearing.Set(text) != nil {
-		return &hinted{fmt.Sprintf("%.40q is no facing", text), `write a bearing from true north such as "123 deg", or "toward SITE"`}
+		return &Refusal{fmt.Sprintf("%.40q is no facing", text), `write a bearing from true north such as "123 deg", or "toward SITE"`}
 	}
 	*f = Facing{BearingDeg: float64(bearing)}
 	return nil
