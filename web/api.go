@@ -27,6 +27,7 @@ func (s *Server) serveAPI(r chi.Router) error {
 	s.registerSection(api)
 	s.registerAntenna(api)
 	s.registerHeights(api)
+	s.registerGround(api)
 	s.registerLayers(api)
 	s.registerPlace(api)
 	s.registerFiles(api)

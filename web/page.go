@@ -45,7 +45,7 @@ func (s *Server) servePage(w http.ResponseWriter, r *http.Request) {
 		if strings.HasPrefix(name, "assets/") {
 			w.Header().Set("Cache-Control", "max-age=31536000, immutable")
 		}
-		http.ServeContent(w, r, name, time.Time{}, content)
+		http.ServeContent(w, r, "", time.Time{}, content)
 		return
 	}
 	if _, err := fs.Stat(s.page, "index.html"); errors.Is(err, fs.ErrNotExist) && name == "index.html" {

@@ -68,6 +68,19 @@ func (s *shelf) find(id string) *version {
 	return v
 }
 
+// takeGround returns a version that stands on a ground, as take does.
+func (s *shelf) takeGround(id string) (*version, error) {
+	s.mutex.Lock()
+	defer s.mutex.Unlock()
+	for _, v := range s.held {
+		if v.ground.id == id {
+			v.users++
+			return v, nil
+		}
+	}
+	return nil, problem(http.StatusNotFound, fmt.Sprintf("ground %.40q is not held (any longer): ask /api/ground for the address of its tiles", id))
+}
+
 // current returns the version in the file now, reading it anew where it has changed. A file that is
 // broken is an error; the last good version stays on the shelf.
 func (s *shelf) current() (*version, error) {
@@ -143,7 +156,7 @@ func (s *shelf) open(text []byte, before *version) (*version, error) {
 	if before != nil && v.network.SharesGround(before.network) {
 		v.ground = before.ground
 	} else {
-		v.ground = &ground{network: v.network}
+		v.ground = newGround(v.network)
 	}
 	return v, nil
 }

@@ -44,15 +44,9 @@ func (v *version) links(ctx context.Context) (*plan.Result, error) {
 	return result, err
 }
 
-// A ground is the open rasters that some versions stand on; the last of them closes it.
-type ground struct {
-	network *plan.Network // one that holds it open
-	users   int           // versions; guarded by the shelf
-}
-
 // maxGeneration is how many versions share what their antennas have solved: one setting of an antenna
 // beside a wide mast takes about a megabyte.
-const maxGeneration = 64
+const maxGeneration = 24
 
 // A generation is the versions that share solved antennas, so that those are not kept for good.
 type generation struct {

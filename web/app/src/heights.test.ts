@@ -1,0 +1,25 @@
+import { expect, test } from 'vitest';
+import { byHeight, rangeAround, shadeOf } from './heights';
+
+test('the planned height is among those weighed, and none is below half a metre', () => {
+  for (const planned of [0.5, 1, 1.5, 2, 4, 6, 7.3, 10, 16, 18, 45, 100]) {
+    const { fromM, toM, stepM } = rangeAround(planned);
+    const steps = (planned - fromM) / stepM;
+    expect(Math.abs(steps - Math.round(steps)), `${planned}`).toBeLessThan(1e-9);
+    expect(fromM).toBeGreaterThanOrEqual(0.5);
+    expect(toM).toBeGreaterThan(planned);
+  }
+});
+
+test('cells go into rows by height', () => {
+  const cell = (height_m: number, antenna: string) => ({ height_m, antenna, margin_db: 0, verdict: 'thin' as const, worst_link: '' });
+  const rows = byHeight([cell(4, 'rod'), cell(2, 'rod'), cell(2, 'pair'), cell(4, 'pair')]);
+  expect(rows.map((r) => [r.heightM, r.cells.map((c) => c.antenna)])).toEqual([
+    [2, ['rod', 'pair']],
+    [4, ['rod', 'pair']],
+  ]);
+});
+
+test('shades grow with the margin and stay within the nine', () => {
+  expect([-40, -6, -0.1, 0, 2.9, 3, 18, 90].map(shadeOf)).toEqual([0, 0, 1, 2, 2, 3, 8, 8]);
+});

@@ -1,0 +1,72 @@
+import './style.css';
+import { render } from 'lit';
+import { createChanges } from './changes';
+import { desk } from './desk';
+import { readHash, writeHash } from './hash';
+import { type MapPart, page } from './page';
+import { changed, initialState } from './state';
+import { createStore } from './store';
+import { applyTheme, rememberedTheme } from './theme';
+import { words } from './words';
+
+const store = createStore({ ...initialState(readHash(location.hash)), theme: rememberedTheme() });
+const changes = createChanges(store);
+let map: MapPart | undefined;
+
+const bar = {
+  undo: () => void changes.undo(),
+  redo: () => void changes.redo(),
+  save: () => void changes.save(),
+  theme: (theme: ReturnType<typeof rememberedTheme>) => store.set({ theme }),
+};
+
+let drawing = false;
+function draw() {
+  if (drawing) return;
+  drawing = true;
+  requestAnimationFrame(() => {
+    drawing = false;
+    render(page(store, changes, bar, () => map), document.body);
+    measure();
+  });
+}
+
+// The section's box is measured where it appears; its chart is drawn to the pixel.
+const boxes = new ResizeObserver(() => measure());
+function measure() {
+  const box = document.getElementById('section-box');
+  if (!box) return;
+  boxes.observe(box);
+  const { clientWidth: sectionWidth, clientHeight: sectionHeight } = box;
+  const s = store.get();
+  if (sectionWidth !== s.sectionWidth || sectionHeight !== s.sectionHeight) store.set({ sectionWidth, sectionHeight });
+}
+
+desk(store);
+store.watch((now, before) => {
+  draw();
+  if (now.theme !== before.theme) applyTheme(now.theme);
+  if (now.plan.value !== before.plan.value) document.title = `${now.plan.value?.title ?? ''} – ${words.product}`;
+  const hash = writeHash({ ...now.view, ...(now.link ? { link: now.link } : {}) });
+  if (hash !== location.hash) history.replaceState(null, '', hash || location.pathname);
+});
+
+window.addEventListener('hashchange', () => {
+  const { link } = readHash(location.hash);
+  if (link && link !== store.get().link) store.set({ link });
+});
+window.addEventListener('focus', () => void changes.look());
+window.addEventListener('beforeunload', (e) => {
+  if (changed(store.get())) e.preventDefault();
+});
+window.addEventListener('keydown', (e) => {
+  if (!(e.ctrlKey || e.metaKey) || e.target instanceof HTMLInputElement) return;
+  const run = { z: e.shiftKey ? bar.redo : bar.undo, Z: bar.redo, y: bar.redo, s: bar.save }[e.key];
+  if (!run) return;
+  e.preventDefault();
+  run();
+});
+
+applyTheme(store.get().theme);
+draw();
+void changes.read();
