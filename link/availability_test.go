@@ -170,6 +170,43 @@ func TestCanopyWarnings(t *testing.T) {
 	}
 }
 
+// A section is drawn from where its path is seen: among roofs of 12 m an antenna at 5 m sees it from
+// 12 m, and the clearance found is the one that the picture shows.
+func TestSectionOverRoofs(t *testing.T) {
+	a, b := plainStation("A", 0, isotropic(t, 0, 1)), plainStation("B", 1, isotropic(t, 0, 1))
+	a.AglM, a.Surroundings = 5, Surroundings{BuiltM: 12, StreetM: 20}
+	s, err := Trace(&Link{From: a, To: b, Channel: poll}, hill(level(10), 8), conditions(propagation.P1812))
+	if err != nil {
+		t.Fatal(err)
+	}
+	if s.FromAglM != 12 || s.ToAglM != b.AglM || s.RayM[0] != s.Profile.AslM[0]+12 {
+		t.Errorf("seen from %g and %g m above ground, the ray from %g m over it", s.FromAglM, s.ToAglM, s.RayM[0]-s.Profile.AslM[0])
+	}
+	worst := math.Inf(1)
+	for i := 1; i < len(s.RayM)-1; i++ {
+		worst = min(worst, (s.RayM[i]-s.Profile.AslM[i]-s.Profile.CoverM[i]-s.BulgeM[i])/s.Fresnel1M[i])
+	}
+	if math.Abs(worst-s.Clearance.WorstRatio) > 1e-9 {
+		t.Errorf("worst clearance %.6f of F1, the picture shows %.6f", s.Clearance.WorstRatio, worst)
+	}
+}
+
+// An antenna beside a mast of no stated width is told so: its pattern is that without the mast.
+func TestMastOfNoWidthWarns(t *testing.T) {
+	a, b := plainStation("A", 0, isotropic(t, 0, 1)), plainStation("B", 1, isotropic(t, 0, 1))
+	a.StandoffM = 0.5
+	r := mustCompute(t, &Link{From: a, To: b, Channel: poll, Aim: Aim{AvailabilityPct: 50}}, level(10), propagation.P1812)
+	told := 0
+	for _, w := range r.Warnings {
+		if w.At == "A" && strings.Contains(w.Text, "the mast's effect is not computed") {
+			told++
+		}
+	}
+	if told != 1 {
+		t.Errorf("told %d times in %v", told, r.Warnings)
+	}
+}
+
 // The sensitivity is what computing the changed link again gives.
 func TestSensitivity(t *testing.T) {
 	a, b := plainStation("A", 0, isotropic(t, 0, 1)), plainStation("B", 1, isotropic(t, 0, 1))

@@ -131,6 +131,9 @@ func impedance(z complex128) string {
 
 func (f *frontEnd) warnings(toward antenna.Direction) []string {
 	list := slices.Concat(f.solution.Notes, f.line.Notes)
+	if f.StandoffM > 0 && f.MastDiameterM == 0 {
+		list = append(list, "stands off a mast whose diameter or width is not stated: the mast's effect is not computed")
+	}
 	// A vertical beam narrower than 2 degrees is none of this program's antennas.
 	if off := math.Abs(toward.ElDeg - f.Mount.TiltDeg); off > 1 {
 		if width := f.Mount.VerticalWidthDeg(f.solution.Pattern); off > width/2 {

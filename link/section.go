@@ -10,6 +10,9 @@ import (
 type Section struct {
 	Link    *Link
 	Profile terrain.Profile // cover nearer than the ends' clearing left out
+	// FromAglM and ToAglM are the heights above ground from which the path is seen: the antennas', or
+	// the roofs' where buildings around an end are higher.
+	FromAglM, ToAglM float64
 	// RayM is the straight line between the antennas, BulgeM the rise of the Earth over the chord
 	// at the median effective radius, Fresnel1M the radius of the first Fresnel zone, for each
 	// point of the profile.
@@ -39,7 +42,7 @@ func Trace(l *Link, p terrain.Profile, c Conditions) (*Section, error) {
 	if err != nil {
 		return nil, err
 	}
-	s := &Section{Link: l, FreqHz: path.FreqHz, RadiusKm: found.Terms.Ae}
+	s := &Section{Link: l, FromAglM: l.From.pathAglM(), ToAglM: l.To.pathAglM(), FreqHz: path.FreqHz, RadiusKm: found.Terms.Ae}
 	s.Profile, s.Clearance, err = w.seenFromFrom()
 	if err != nil {
 		return nil, err
@@ -48,15 +51,15 @@ func Trace(l *Link, p terrain.Profile, c Conditions) (*Section, error) {
 	if w.first != l.From {
 		s.Horizon = Horizon{found.TransHorizon, found.RxElDeg, found.TxElDeg, found.Terms.Dlr, found.Terms.Dlt}
 	}
-	s.draw(l.From.AglM, l.To.AglM)
+	s.draw()
 	return s, nil
 }
 
 // draw fills in the lines of the picture.
-func (s *Section) draw(fromAglM, toAglM float64) {
+func (s *Section) draw() {
 	n, d := len(s.Profile.DistKm), s.Profile.LengthKm()
 	s.RayM, s.BulgeM, s.Fresnel1M = make([]float64, n), make([]float64, n), make([]float64, n)
-	from, to := s.Profile.AslM[0]+fromAglM, s.Profile.AslM[n-1]+toAglM
+	from, to := s.Profile.AslM[0]+s.FromAglM, s.Profile.AslM[n-1]+s.ToAglM
 	lambdaM := propagation.WavelengthM(s.FreqHz)
 	for i, di := range s.Profile.DistKm {
 		s.RayM[i] = (from*(d-di) + to*di) / d

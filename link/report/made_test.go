@@ -115,9 +115,9 @@ func madeResult() *plan.Result {
 // madeSection is a path over land, woodland and sea with a hill in its way.
 func madeSection() *link.Section {
 	s := &link.Section{
-		Link:    &link.Link{From: harbour, To: reef, Channel: poll},
-		Profile: madeProfile(harbour.At, reef.At, 40, 52, 90, 31, 0, 0, 0, 2, 5),
-		FreqHz:  151.5e6, RadiusKm: 8931,
+		Link:     &link.Link{From: harbour, To: reef, Channel: poll},
+		Profile:  madeProfile(harbour.At, reef.At, 40, 52, 90, 31, 0, 0, 0, 2, 5),
+		FromAglM: harbour.AglM, ToAglM: reef.AglM, FreqHz: 151.5e6, RadiusKm: 8931,
 		RayM:      []float64{52, 47, 42, 37, 32, 26, 21, 16, 11},
 		BulgeM:    []float64{0, 1, 2, 2.5, 3, 2.5, 2, 1, 0},
 		Fresnel1M: []float64{0, 73, 97, 108, 112, 108, 97, 73, 0},

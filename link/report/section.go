@@ -140,12 +140,21 @@ func SectionTable(w io.Writer, s *link.Section) error {
 	return err
 }
 
+// roofWords says where the path is seen from the roofs around an end rather than from its antenna.
+func roofWords(s *link.Station, pathAglM float64) string {
+	if pathAglM == s.AglM {
+		return ""
+	}
+	return fmt.Sprintf("%s: the path is seen from the roofs around it, %s m above ground\n", s.Name, decimals(pathAglM, 1))
+}
+
 // SectionSummary says in a few lines how a path lies.
 func SectionSummary(s *link.Section) string {
 	p, last := s.Profile, len(s.Profile.DistKm)-1
 	text := fmt.Sprintf("%s → %s: %s km at %s°, back %s°, %s MHz\n", s.Link.From.Name, s.Link.To.Name, decimals(p.LengthKm(), 2), azimuth(p.AzDeg), azimuth(p.BackAzDeg), decimals(s.FreqHz/1e6, 3))
 	text += fmt.Sprintf("antennas at %s m and %s m above sea level, %s m and %s m above ground\n",
 		decimals(p.AslM[0]+s.Link.From.AglM, 1), decimals(p.AslM[last]+s.Link.To.AglM, 1), decimals(s.Link.From.AglM, 1), decimals(s.Link.To.AglM, 1))
+	text += roofWords(s.Link.From, s.FromAglM) + roofWords(s.Link.To, s.ToAglM)
 	text += fmt.Sprintf("worst clearance %s of the first Fresnel radius at %s km (0.6 is wanted)\n", signed(s.Clearance.WorstRatio, 2), decimals(s.Clearance.AtKm, 2))
 	if s.Horizon.TransHorizon {
 		text += fmt.Sprintf("beyond the horizon: the path leaves at %s° over %s km, arrives at %s° over %s km", signed(s.Horizon.DepartureDeg, 2), decimals(s.Horizon.FromHorizonKm, 2), signed(s.Horizon.ArrivalDeg, 2), decimals(s.Horizon.ToHorizonKm, 2))

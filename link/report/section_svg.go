@@ -133,7 +133,7 @@ func (d *drawing) ends() {
 		aglM   float64
 		anchor string
 		shift  float64
-	}{{0, d.Link.From.AglM, "start", 7}, {last, d.Link.To.AglM, "end", -7}} {
+	}{{0, d.FromAglM, "start", 7}, {last, d.ToAglM, "end", -7}} {
 		i, x := end.i, d.x(d.Profile.DistKm[end.i])
 		d.f(`<text x="%.1f" y="%.1f" text-anchor="%s" fill="%s" paint-order="stroke" stroke="#ffffff" stroke-width="3">%g m</text>`+"\n", x+end.shift, d.y(d.RayM[i])-7, end.anchor, inkText, end.aglM)
 		d.f(`<path d="M%.1f %.1fV%.1f" stroke="%s" stroke-width="2.5"/><circle cx="%.1f" cy="%.1f" r="3.5" fill="%s"/>`+"\n",

@@ -93,7 +93,8 @@ func TestSVGNames(t *testing.T) {
 // A path of two points has no worst point among them to mark.
 func TestSVGOfShortPath(t *testing.T) {
 	s := &link.Section{
-		Link: madeSection().Link, Profile: madeProfile(harbour.At, harbour.At.Bound().Pad(0.0001).Max, 10, 10), FreqHz: 151.5e6, RadiusKm: 8931,
+		Link: madeSection().Link, Profile: madeProfile(harbour.At, harbour.At.Bound().Pad(0.0001).Max, 10, 10),
+		FromAglM: harbour.AglM, ToAglM: reef.AglM, FreqHz: 151.5e6, RadiusKm: 8931,
 		RayM: []float64{22, 16}, BulgeM: []float64{0, 0}, Fresnel1M: []float64{0, 0},
 	}
 	s.Clearance.Index, s.Clearance.WorstRatio = -1, 3
@@ -131,4 +132,16 @@ func tabled(t *testing.T, s *link.Section) string {
 		t.Fatal(err)
 	}
 	return text.String()
+}
+
+// Where roofs around an end hide its antenna, the table says from where the path is seen.
+func TestSectionOverRoofs(t *testing.T) {
+	s := madeSection()
+	if text := tabled(t, s); strings.Contains(text, "roofs") {
+		t.Errorf("roofs where there are none:\n%s", text)
+	}
+	s.FromAglM += 9
+	if want, text := s.Link.From.Name+": the path is seen from the roofs around it, ", tabled(t, s); !strings.Contains(text, want) {
+		t.Errorf("%q is not in:\n%s", want, text)
+	}
 }
