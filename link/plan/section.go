@@ -1,7 +1,6 @@
 package plan
 
 import (
-	"errors"
 	"fmt"
 	"slices"
 	"strings"
@@ -36,7 +35,7 @@ func (n *Network) Named(named string) (*link.Link, error) {
 		return nil, &Refusal{fmt.Sprintf("%q does not name two stations", named), n.stationNames()}
 	}
 	if from[0].Order == to[0].Order {
-		return nil, errors.New("both ends stand at one site")
+		return nil, &Refusal{"both ends stand at one site", "name two sites"}
 	}
 	found := n.between(from, to)
 	switch {
