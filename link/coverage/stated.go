@@ -19,8 +19,7 @@ func (s *sweep) statedProfile(index int) (p terrain.Profile, latDeg float64, ok 
 	n := interiorPoints(distM, s.stepM)
 	p = terrain.Profile{DistKm: make([]float64, n+2), AslM: make([]float64, n+2), CoverM: make([]float64, n+2), Zone: make([]terrain.Zone, n+2)}
 	w := newWalk(s)
-	radial := math.Round(math.Atan2(east, north)*float64(s.radials)/(2*math.Pi) + float64(s.radials))
-	w.start(int(radial) % s.radials)
+	w.start(s.radialOf(east, north))
 	copy(p.AslM[:n+1], w.aslM)
 	copy(p.CoverM[:n+1], w.coverM)
 	copy(p.Zone[:n+1], w.zones)

@@ -157,12 +157,12 @@ func TestDiscIsTheGround(t *testing.T) {
 		Classes: map[int]terrain.Class{0: {}, 1: {HeightM: 12}, 2: {Zone: terrain.Sea}},
 	})
 	site := utm(t, 444500, 5263000)
-	d, err := g.Disc(site, 8000)
+	d, err := g.Disc(site, 4500)
 	if err != nil {
 		t.Fatal(err)
 	}
 	for i := range 3000 {
-		az, distM := float64(i)*61.3, 8000*math.Sqrt(float64(i)/3000)
+		az, distM := float64(i)*61.3, 4500*math.Sqrt(float64(i)/3000)
 		sin, cos := math.Sincos(az * math.Pi / 180)
 		at := Direct(site, az, distM)
 		want, err := g.HeightAslM(at)
