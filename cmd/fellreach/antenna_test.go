@@ -216,8 +216,8 @@ func TestAntennaMistakes(t *testing.T) {
 		{[]string{"rod", "--toward", "north"}, exitUsage, "is not AZ,EL in degrees"},
 		{[]string{"rod", "--frequency", "151.5"}, exitUsage, "lacks its unit"},
 		{[]string{"stick", "--vswr", filepath.Join(t.TempDir(), "x.svg")}, exitOther, "has no VSWR curve"},
-		{[]string{"crossed"}, exitOther, "wire"},
-		{[]string{"open"}, exitOther, "open end"},
+		{[]string{"crossed"}, exitUsage, "wire"},
+		{[]string{"open"}, exitUsage, "open end"},
 	} {
 		got := fellreach(append([]string{"antenna", path}, tc.args...)...)
 		if got.status != tc.status || !strings.Contains(got.err, tc.want) || got.out != "" {
