@@ -46,7 +46,7 @@ func newAntenna(t *terminal) *cobra.Command {
 			}
 			a, err := p.Antenna(v.query(args[1]))
 			if err != nil {
-				return err
+				return &usageError{err.Error()}
 			}
 			a.Toward = toward
 			return v.write(t, &out, a)

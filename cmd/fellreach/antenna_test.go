@@ -212,6 +212,8 @@ func TestAntennaMistakes(t *testing.T) {
 		{[]string{"nobody"}, exitUsage, `there is no antenna "nobody"`},
 		{[]string{"rod", "--channel", "x"}, exitUsage, `there is no channel "x"`},
 		{[]string{"rod", "--standoff", "0.5 m"}, exitUsage, "a standoff needs the diameter of its mast"},
+		{[]string{"rod", "--on-mast", "114 mm"}, exitUsage, "a mast needs the antenna's standoff"},
+		{[]string{"rod", "--frequency", "10 GHz"}, exitUsage, "10000 MHz is out of range"},
 		{[]string{"rod", "--on-mast", "114 mm", "--standoff", "50 mm"}, exitUsage, "lies inside a mast"},
 		{[]string{"rod", "--toward", "north"}, exitUsage, "is not AZ,EL in degrees"},
 		{[]string{"rod", "--frequency", "151.5"}, exitUsage, "lacks its unit"},

@@ -55,6 +55,9 @@ func (p *Plan) Antenna(q AntennaQuery) (*AntennaResult, error) {
 	if q.StandoffM > 0 && q.MastDiameterM == 0 {
 		return nil, &Refusal{"a standoff needs the diameter of its mast", "give both"}
 	}
+	if q.MastDiameterM > 0 && q.StandoffM == 0 {
+		return nil, &Refusal{"a mast needs the antenna's standoff from its axis", "give both"}
+	}
 	if q.MastDiameterM > 0 && q.StandoffM <= q.MastDiameterM/2 {
 		return nil, &Refusal{fmt.Sprintf("a standoff of %g m lies inside a mast of %g m", q.StandoffM, q.MastDiameterM), "it is from axis to axis"}
 	}
@@ -149,6 +152,8 @@ func (p *Plan) frequencyOf(q AntennaQuery, r *AntennaResult) (float64, error) {
 	switch {
 	case q.Channel != "" && !ok:
 		return 0, &Refusal{fmt.Sprintf("there is no channel %q", q.Channel), known(slices.Sorted(maps.Keys(p.Channels)), "channel")}
+	case q.FreqHz > 0 && (q.FreqHz < minFreqHz || q.FreqHz > maxFreqHz):
+		return 0, &Refusal{fmt.Sprintf("%g MHz is out of range", q.FreqHz/1e6), "it lies from 30 MHz to 6 GHz"}
 	case q.FreqHz > 0:
 		return q.FreqHz, nil
 	case !ok:
