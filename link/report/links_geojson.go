@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"io"
 	"math"
+	"slices"
 
 	"fellreach/link"
 	"fellreach/link/plan"
@@ -48,21 +49,21 @@ const linePoints = 33
 // antimeridian, as RFC 7946 section 3.1.9 asks.
 func geodesicLine(points []orb.Point) orb.Geometry {
 	n := min(linePoints, len(points))
-	lines := orb.MultiLineString{{}}
+	lines, before := orb.MultiLineString{{}}, rounded(points[0])
 	for i := range n {
 		p := rounded(points[i*(len(points)-1)/(n-1)])
-		last := &lines[len(lines)-1]
-		if len(*last) > 0 {
-			before := (*last)[len(*last)-1]
-			if math.Abs(p.Lon()-before.Lon()) > 180 {
-				here, there := crossing(before, p)
-				*last = append(*last, here)
-				lines = append(lines, orb.LineString{there})
-				last = &lines[len(lines)-1]
-			}
+		if math.Abs(p.Lon()-before.Lon()) > 180 {
+			here, there := crossing(before, p)
+			lines[len(lines)-1] = append(lines[len(lines)-1], here)
+			lines = append(lines, orb.LineString{there})
 		}
-		*last = append(*last, p)
+		lines[len(lines)-1] = append(lines[len(lines)-1], p)
+		before = p
 	}
+	for i := range lines { // a point on the antimeridian stands where the line is cut
+		lines[i] = slices.Compact(lines[i])
+	}
+	lines = slices.DeleteFunc(lines, func(l orb.LineString) bool { return len(l) < 2 })
 	if len(lines) == 1 {
 		return lines[0]
 	}

@@ -74,3 +74,22 @@ func TestGeodesicLines(t *testing.T) {
 		}
 	})
 }
+
+// Where a point of a line lies on the antimeridian, no position stands twice in a row and no part
+// has fewer than two positions (RFC 7946 section 3.1.4).
+func TestLinePointOnAntimeridian(t *testing.T) {
+	for _, tc := range []struct {
+		name   string
+		points []orb.Point
+		want   orb.Geometry
+	}{
+		{"in the middle, written as 180", []orb.Point{{179.9, 1}, {180, 1}, {-179.9, 1}}, orb.MultiLineString{{{179.9, 1}, {180, 1}}, {{-180, 1}, {-179.9, 1}}}},
+		{"in the middle, written as -180", []orb.Point{{179.9, 1}, {-180, 1}, {-179.9, 1}}, orb.MultiLineString{{{179.9, 1}, {180, 1}}, {{-180, 1}, {-179.9, 1}}}},
+		{"at the end", []orb.Point{{179.9, 1}, {-180, 1}}, orb.LineString{{179.9, 1}, {180, 1}}},
+		{"at the beginning", []orb.Point{{180, 1}, {-179.9, 1}}, orb.LineString{{-180, 1}, {-179.9, 1}}},
+	} {
+		if got := geodesicLine(tc.points); !orb.Equal(got, tc.want) {
+			t.Errorf("%s: got %v, want %v", tc.name, got, tc.want)
+		}
+	}
+}
