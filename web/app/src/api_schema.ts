@@ -123,6 +123,23 @@ export interface paths {
         patch?: never;
         trace?: never;
     };
+    "/api/ground": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** The ground as map tiles */
+        get: operations["readGround"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
     "/api/heights": {
         parameters: {
             query?: never;
@@ -412,6 +429,42 @@ export interface components {
             path: string[];
             /** @description what is set or added, as the plan would hold it */
             value?: unknown;
+        };
+        GroundAnswer: {
+            /**
+             * @description what lies outside the rasters
+             * @enum {string}
+             */
+            beyond: "void" | "sea";
+            /** Format: double */
+            east: number;
+            /** @description the same without holes, for a view in three dimensions: the least height where there is none */
+            filled: string;
+            /** Format: double */
+            max_m: number;
+            /**
+             * Format: int64
+             * @description the zoom at which pixels are about as large as cells; greater ones show no more
+             */
+            max_zoom: number;
+            /**
+             * Format: double
+             * @description least height, as far as a coarse look tells
+             */
+            min_m: number;
+            /** Format: int64 */
+            min_zoom: number;
+            /** Format: double */
+            north: number;
+            /** Format: double */
+            south: number;
+            /** @description address of the elevation tiles: PNG, height = red*256 + green + blue/256 - 32768 m, black where there is none */
+            tiles: string;
+            /**
+             * Format: double
+             * @description bounds of the rasters
+             */
+            west: number;
         };
         HeightCell: {
             antenna: string;
@@ -1119,6 +1172,38 @@ export interface operations {
                 };
                 content: {
                     "image/svg+xml": string;
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    readGround: {
+        parameters: {
+            query?: {
+                /** @description version of the plan; that of the file when left out */
+                version?: string;
+            };
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["GroundAnswer"];
                 };
             };
             /** @description Error */

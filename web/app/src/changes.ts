@@ -73,7 +73,11 @@ export function createChanges(store: Store<State>): Changes {
     try {
       const tried = await taken(server.POST('/api/try', { body: { version: base, edits, ...(link ? { link } : {}) } }));
       if (!now().dragging || kept().version !== base) return;
-      store.set({ version: tried.version, links: answered(joined(now().links.value, tried.links)), trouble: undefined });
+      store.set({
+        version: tried.version,
+        links: answered(joined(now().links.value, tried.links)),
+        trouble: undefined,
+      });
     } catch (error) {
       if (now().dragging) caught(error);
     }

@@ -11,7 +11,10 @@ for (let elevation_deg = -90; elevation_deg <= 90; elevation_deg += 30) {
 }
 
 test('two equal powers make 3.01 dB more', () => {
-  expect(total({ azimuth_deg: 0, elevation_deg: 0, gain_v_dbi: 2, gain_h_dbi: 2 })).toBeCloseTo(2 + 10 * Math.log10(2), 9);
+  expect(total({ azimuth_deg: 0, elevation_deg: 0, gain_v_dbi: 2, gain_h_dbi: 2 })).toBeCloseTo(
+    2 + 10 * Math.log10(2),
+    9,
+  );
 });
 
 test('the azimuth cut goes round once at the nearest elevation', () => {

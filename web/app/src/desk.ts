@@ -45,7 +45,11 @@ export function desk(store: Store<State>): void {
     const { fromM, toM, stepM } = rangeAround(aboveM);
     const query = { version, station, from_m: fromM, to_m: toM, step_m: stepM, antennas };
     return taken(
-      server.GET('/api/heights', { params: { query }, querySerializer: { array: { style: 'form', explode: false } }, signal }),
+      server.GET('/api/heights', {
+        params: { query },
+        querySerializer: { array: { style: 'form', explode: false } },
+        signal,
+      }),
     );
   });
 
@@ -68,7 +72,13 @@ export function desk(store: Store<State>): void {
     if (!found || end === undefined || now.plan.value?.version !== version) return;
     const seen = shown(now) !== shown(before);
     if (seen || now.withMast !== before.withMast) antenna(version, end, now.withMast);
-    if (seen) heights(version, end, found.station.above_ground_m, now.plan.value.antennas.map((a) => a.name));
+    if (seen)
+      heights(
+        version,
+        end,
+        found.station.above_ground_m,
+        now.plan.value.antennas.map((a) => a.name),
+      );
   });
 }
 

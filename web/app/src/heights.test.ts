@@ -12,7 +12,13 @@ test('the planned height is among those weighed, and none is below half a metre'
 });
 
 test('cells go into rows by height', () => {
-  const cell = (height_m: number, antenna: string) => ({ height_m, antenna, margin_db: 0, verdict: 'thin' as const, worst_link: '' });
+  const cell = (height_m: number, antenna: string) => ({
+    height_m,
+    antenna,
+    margin_db: 0,
+    verdict: 'thin' as const,
+    worst_link: '',
+  });
   const rows = byHeight([cell(4, 'rod'), cell(2, 'rod'), cell(2, 'pair'), cell(4, 'pair')]);
   expect(rows.map((r) => [r.heightM, r.cells.map((c) => c.antenna)])).toEqual([
     [2, ['rod', 'pair']],

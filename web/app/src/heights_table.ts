@@ -40,7 +40,13 @@ export function heightsTable(p: HeightsProps, attempt: (c: Cell) => void) {
 
 function cell(c: Cell, p: HeightsProps, attempt: (c: Cell) => void) {
   const planned = c.antenna === p.planned.antenna && Math.abs(c.height_m - p.planned.aboveM) < 1e-6;
-  const label = words.tryCell(metres(c.height_m), c.antenna, margin(c.margin_db), words.verdict[c.verdict], c.worst_link);
+  const label = words.tryCell(
+    metres(c.height_m),
+    c.antenna,
+    margin(c.margin_db),
+    words.verdict[c.verdict],
+    c.worst_link,
+  );
   return html`<td>
     <button class="shade s${shadeOf(c.margin_db)}" aria-pressed=${planned} aria-label=${label} title=${label} @click=${() => attempt(c)}>
       ${mark(c.verdict)} ${margin(c.margin_db)}

@@ -75,7 +75,7 @@ function directions(link: Link, way: 0 | 1, on: LedgerEvents) {
   return html`<div class="choice" role="group" aria-label=${words.directions}>
     ${link.directions.map(
       (d, i) => html`<button aria-pressed=${i === way} @click=${() => on.turn(i as 0 | 1)}>
-        ${words.way(d.from, d.to)} <span class="quiet">${margin(d.margin_db)}</span>
+        <span class="unseen">${d.from}</span>${words.wayTo(d.to)} <span class="quiet">${margin(d.margin_db)}</span>
       </button>`,
     )}
   </div>`;

@@ -26,7 +26,10 @@ function draw() {
   drawing = true;
   requestAnimationFrame(() => {
     drawing = false;
-    render(page(store, changes, bar, () => map), document.body);
+    render(
+      page(store, changes, bar, () => map),
+      document.body,
+    );
     measure();
   });
 }

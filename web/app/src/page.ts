@@ -1,6 +1,7 @@
 import { html, nothing } from 'lit';
 import { addForms } from './add_forms';
 import { antennaPanel, endChoice } from './antenna_panel';
+import type { Link, Plan, Site } from './api';
 import { type BarEvents, bar } from './bar';
 import type { Changes } from './changes';
 import { addLink, addSite, changeAntenna, placeSite, raiseAntenna, removeLink } from './edits';
@@ -9,13 +10,12 @@ import { heightsTable } from './heights_table';
 import { ledgerTable, notes, whatGives } from './ledger_table';
 import { linksTable } from './links_table';
 import { detail, trouble } from './notices';
-import { entered, type Mast, readOut, sectionChart } from './section_chart';
 import { nearest } from './profile';
+import { entered, type Mast, readOut, sectionChart } from './section_chart';
 import { sitesList } from './sites_list';
 import { chosenLink, linkId, type State, stationOf } from './state';
 import type { Store } from './store';
 import { words } from './words';
-import type { Link, Plan, Site } from './api';
 
 /** What the page asks of the map; there is none without WebGL. */
 export interface MapPart {
@@ -39,7 +39,7 @@ export function page(store: Store<State>, changes: Changes, events: BarEvents, m
       </section>
       <section class="strip" aria-labelledby="section-title">
         <h2 id="section-title" class="unseen">${words.section}</h2>
-        ${strip(store, changes, link)}
+        ${strip(store, changes)}
       </section>
       <div class="side" id="side" tabindex="-1">
         ${fileTrouble(s)}
@@ -122,8 +122,7 @@ function sites(store: Store<State>, changes: Changes, plan: Plan, map: () => Map
     <h2 id="sites-title">${words.sites}</h2>
     ${sitesList(plan, new Set(), {
       place: (site, written) => void changes.attempt(placeSite(site, written), words.movedSite(site.name)),
-      height: (site, st, m) =>
-        void changes.attempt(raiseAntenna(site, st, m), words.heightSet(st.name, metres(m))),
+      height: (site, st, m) => void changes.attempt(raiseAntenna(site, st, m), words.heightSet(st.name, metres(m))),
       antenna: (st, name) => {
         const l = plan.links.find((x) => x.from === st.name || x.to === st.name);
         const other = l && stationOf(plan, l.from === st.name ? l.to : l.from)?.site.name;
@@ -148,11 +147,12 @@ function sites(store: Store<State>, changes: Changes, plan: Plan, map: () => Map
   </section>`;
 }
 
-function strip(store: Store<State>, changes: Changes, link: Link | undefined) {
+function strip(store: Store<State>, changes: Changes) {
   const s = store.get();
   const section = s.section.value;
   if (s.section.problem) return trouble(s.section.problem);
-  if (!section) return html`<div class="ghost fill">${s.section.waiting ? words.sectionWaiting : words.noLinkChosen}</div>`;
+  if (!section)
+    return html`<div class="ghost fill">${s.section.waiting ? words.sectionWaiting : words.noLinkChosen}</div>`;
   const at = s.cursorKm === undefined ? undefined : section.points[nearest(section.points, s.cursorKm)];
   const masts = [section.from, section.to].map((name, end): Mast => {
     const p = end === 0 ? section.points[0]! : section.points.at(-1)!;

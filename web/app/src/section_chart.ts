@@ -114,7 +114,16 @@ function cursorMove(e: KeyboardEvent, stepKm: number, lengthKm: number) {
   return undefined;
 }
 
-function axes(x: Scale, y: Scale, step: number, least: number, most: number, km: number, width: number, height: number) {
+function axes(
+  x: Scale,
+  y: Scale,
+  step: number,
+  least: number,
+  most: number,
+  km: number,
+  width: number,
+  height: number,
+) {
   const kmStep = stepFor(km, Math.max(2, width / 130));
   const lastKm = x(km) - 26;
   return svg`

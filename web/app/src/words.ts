@@ -27,7 +27,7 @@ export const en = {
   mhz: (x: string) => `${x} MHz`,
   deg: (x: string) => `${x}°`,
   ends: (from: string, to: string) => `${from} – ${to}`,
-  way: (from: string, to: string) => `${from} → ${to}`,
+  wayTo: (to: string) => ` → ${to}`,
 
   // The bar.
   undo: 'Undo',
