@@ -2,7 +2,7 @@ package web
 
 import (
 	"context"
-	"fmt"
+	"errors"
 
 	"fellreach/antenna"
 	"fellreach/link/plan"
@@ -69,7 +69,10 @@ func (s *Server) registerAntenna(api huma.API) {
 
 func (s *Server) antenna(in *AntennaInput) (found *plan.AntennaResult, err error) {
 	if (in.Station == "") == (in.Antenna == "") {
-		return nil, fmt.Errorf("name a station or an antenna, one of the two")
+		return nil, errors.New("name a station or an antenna, one of the two")
+	}
+	if err := finite(in); err != nil {
+		return nil, err
 	}
 	v, err := s.shelf.take(in.Version)
 	if err != nil {

@@ -3,6 +3,8 @@ package web
 import (
 	"context"
 	"encoding/json"
+	"fmt"
+	"math"
 	"net/http"
 	"reflect"
 	"strings"
@@ -96,12 +98,27 @@ func sendOperation(id, method, path, summary string, example any) huma.Operation
 // answer registers an operation whose errors come from below.
 func answer[I, O any](api huma.API, op huma.Operation, handle func(context.Context, *I) (O, error)) {
 	huma.Register(api, op, func(ctx context.Context, in *I) (*answered[O], error) {
+		err := finite(in)
+		if err != nil {
+			return nil, err
+		}
 		out, err := handle(ctx, in)
 		if err != nil {
 			return nil, asProblem(err)
 		}
 		return &answered[O]{out}, nil
 	})
+}
+
+// finite refuses numbers of a query that are none: limits let NaN through.
+func finite(in any) error {
+	v := reflect.ValueOf(in).Elem()
+	for i := range v.NumField() {
+		if f := v.Field(i); f.Kind() == reflect.Float64 && (math.IsNaN(f.Float()) || math.IsInf(f.Float(), 0)) {
+			return problem(http.StatusUnprocessableEntity, fmt.Sprintf("%s is %g, which is no number to compute with", v.Type().Field(i).Tag.Get("query"), f.Float()))
+		}
+	}
+	return nil
 }
 
 // A Versioned request may name the version of the plan that it asks.
