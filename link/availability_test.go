@@ -191,6 +191,26 @@ func TestSectionOverRoofs(t *testing.T) {
 	}
 }
 
+// The free-space line says whose free space it is. P.525 for 10 km at 150 MHz: 20 log(4 pi d f/c) is
+// 95.970 dB; P.1812's 92.4 + 20 log f + 20 log d is 95.922 dB.
+func TestFreeSpaceNamesItsSource(t *testing.T) {
+	for _, tc := range []struct {
+		method propagation.Model
+		dB     float64
+		source string
+	}{{propagation.P526, -95.970, "P.525 at 150 MHz"}, {propagation.FreeSpace, -95.970, "P.525 at 150 MHz"}, {propagation.P1812, -95.922, "Lbfs of P.1812-8 at 150 MHz"}} {
+		a, b := plainStation("A", 0, isotropic(t, 0, 1)), plainStation("B", 1, isotropic(t, 0, 1))
+		ch := Channel{Name: "c", OutHz: 150e6, BackHz: 150e6, BandwidthHz: 12.5e3}
+		r := mustCompute(t, &Link{From: a, To: b, Channel: ch, Aim: Aim{AvailabilityPct: 50}}, level(10), tc.method)
+		for _, l := range r.Directions[0].Lines {
+			if l.Name == "free space, 10.00 km" && (math.Abs(l.DB-tc.dB) > 1e-3 || !strings.HasPrefix(l.Source, tc.source)) {
+				t.Errorf("%s: %.4f dB from %q, want %.4f from %q", tc.method.Name, l.DB, l.Source, tc.dB, tc.source)
+			}
+		}
+		line(t, r.Directions[0], "free space, 10.00 km")
+	}
+}
+
 // An antenna beside a mast of no stated width is told so: its pattern is that without the mast.
 func TestMastOfNoWidthWarns(t *testing.T) {
 	a, b := plainStation("A", 0, isotropic(t, 0, 1)), plainStation("B", 1, isotropic(t, 0, 1))

@@ -58,13 +58,22 @@ func (w *way) pathLines(b *Budget, from, to *Station, freqHz, verticalShare floa
 	m := w.conditions.Method
 	b.TransmissionLossDB = loss.DB
 	from.surroundingsLine(b, freqHz)
-	b.add(LossLine, fmt.Sprintf("free space, %.2f km", w.profile.LengthKm()), -loss.Terms.Lbfs, fmt.Sprintf("P.525 at %g MHz", freqHz/1e6))
+	b.add(LossLine, fmt.Sprintf("free space, %.2f km", w.profile.LengthKm()), -loss.Terms.Lbfs, freeSpaceSource(m, freqHz))
 	if m.Name != propagation.FreeSpace.Name {
 		b.add(LossLine, "terrain and air", -(loss.DB - loss.Terms.Lbfs), w.pathSource(loss))
 	}
 	to.surroundingsLine(b, freqHz)
 	b.warn("", loss.Notes...)
 	return nil
+}
+
+// freeSpaceSource says whose free space a method counts from: P.1812 has its own, of 92.4 dB at 1 km
+// and 1 GHz where P.525 has 92.45.
+func freeSpaceSource(m propagation.Model, freqHz float64) string {
+	if m.Name == propagation.P1812.Name {
+		return fmt.Sprintf("Lbfs of %s at %g MHz, 0.05 dB under P.525", m.Edition, freqHz/1e6)
+	}
+	return fmt.Sprintf("P.525 at %g MHz", freqHz/1e6)
 }
 
 // pathSource says what the loss beyond free space comes from.

@@ -93,7 +93,7 @@ func (f *frontEnd) feederLines(add func(Kind, string, float64, string)) {
 		fmt.Sprintf("VSWR %.2f at the radio, %.2f at the antenna (%s)", f.line.RadioVSWR, f.line.AntennaVSWR, impedance(f.solution.ImpedanceOhm)))
 	connectorsDB := float64(f.Run.ConnectorCount) * f.Run.ConnectorLossDB
 	if f.Run.LengthM > 0 {
-		add(LossLine, fmt.Sprintf("feeder %s, %g m", f.Run.Feeder.Name, f.Run.LengthM), connectorsDB-f.line.MatchedLossDB, f.RunSource+", between its points by the square root of frequency")
+		add(LossLine, fmt.Sprintf("feeder %s, %g m", f.Run.Feeder.Name, f.Run.LengthM), connectorsDB-f.line.MatchedLossDB, f.RunSource+", by the square root of frequency")
 	}
 	if f.Run.ConnectorCount > 0 {
 		add(LossLine, fmt.Sprintf("connectors, %d of %g dB", f.Run.ConnectorCount, f.Run.ConnectorLossDB), -connectorsDB, f.ConnectorSource)
