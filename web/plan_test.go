@@ -63,8 +63,9 @@ func TestCheckPlan(t *testing.T) {
 	if got := check(demoText(t)); len(got.Problems) != 0 || got.Version != get[PlanAnswer](t, s, "/api/plan").Version {
 		t.Errorf("the demo: %+v", got)
 	}
+	before, _, _ := strings.Cut(demoText(t), `power: "500 mW"`)
 	got := check(strings.Replace(demoText(t), `power: "500 mW"`, `power: "500"`, 1))
-	if len(got.Problems) != 1 || got.Problems[0].Field != "radios.logger.power" || got.Problems[0].Line != 31 || got.Problems[0].Hint == "" {
+	if len(got.Problems) != 1 || got.Problems[0].Field != "radios.logger.power" || got.Problems[0].Line != 1+strings.Count(before, "\n") || got.Problems[0].Hint == "" {
 		t.Errorf("a power without its unit: %+v", got.Problems)
 	}
 	got = check(strings.Replace(demoText(t), "47.58295 N", "67.58295 N", 1) + "# and more\n")

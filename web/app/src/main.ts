@@ -3,7 +3,8 @@ import { render } from 'lit';
 import { createChanges } from './changes';
 import { desk } from './desk';
 import { readHash, writeHash } from './hash';
-import { type MapPart, page } from './page';
+import type { MapPart } from './map';
+import { page } from './page';
 import { changed, initialState } from './state';
 import { createStore } from './store';
 import { applyTheme, rememberedTheme } from './theme';
@@ -70,6 +71,21 @@ window.addEventListener('keydown', (e) => {
   run();
 });
 
+// The tables stand before the map does, and without it.
+async function drawMap() {
+  const into = document.getElementById('map');
+  if (!into) return;
+  try {
+    const { createMap } = await import('./map');
+    map = await createMap(into, store, changes);
+    store.set({ map: 'ready' });
+  } catch (error) {
+    if (!(error instanceof Error)) throw error;
+    store.set({ map: 'none' });
+  }
+}
+
 applyTheme(store.get().theme);
 draw();
-void changes.read();
+await changes.read();
+requestAnimationFrame(() => void drawMap());

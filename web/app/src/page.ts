@@ -1,7 +1,7 @@
 import { html, nothing } from 'lit';
 import { addForms } from './add_forms';
 import { antennaPanel, endChoice } from './antenna_panel';
-import type { Link, Plan, Site } from './api';
+import type { Link, Plan } from './api';
 import { type BarEvents, bar } from './bar';
 import type { Changes } from './changes';
 import { addLink, addSite, changeAntenna, placeSite, raiseAntenna, removeLink } from './edits';
@@ -9,6 +9,8 @@ import { metres } from './format';
 import { heightsTable } from './heights_table';
 import { ledgerTable, notes, whatGives } from './ledger_table';
 import { linksTable } from './links_table';
+import type { MapPart } from './map';
+import { mapTools } from './map_tools';
 import { detail, trouble } from './notices';
 import { nearest } from './profile';
 import { entered, type Mast, readOut, sectionChart } from './section_chart';
@@ -16,12 +18,6 @@ import { sitesList } from './sites_list';
 import { chosenLink, linkId, type State, stationOf } from './state';
 import type { Store } from './store';
 import { words } from './words';
-
-/** What the page asks of the map; there is none without WebGL. */
-export interface MapPart {
-  middle(): string;
-  show(site: Site): void;
-}
 
 /** The page is a function of the state: the bar, the map's place, the section and the tables at the side. */
 export function page(store: Store<State>, changes: Changes, events: BarEvents, map: () => MapPart | undefined) {
@@ -34,6 +30,7 @@ export function page(store: Store<State>, changes: Changes, events: BarEvents, m
     <main>
       <section class="map" aria-label=${words.mapLabel}>
         <div id="map"></div>
+        ${s.map === 'ready' ? mapTools(store, map()) : nothing}
         ${s.map === 'none' ? html`<p class="cover-note">${words.noMap}</p>` : nothing}
         ${s.map === 'waiting' ? html`<p class="cover-note quiet">${words.mapWaiting}</p>` : nothing}
       </section>

@@ -1,4 +1,4 @@
-import type { Antenna, Heights, Link, Links, Plan, Section, Site, Station } from './api';
+import type { Antenna, Heights, Link, Links, Measured, Place, Plan, Section, Site, Station } from './api';
 import { type Asked, notAsked } from './asked';
 import type { View } from './hash';
 
@@ -45,6 +45,12 @@ export interface State {
 
   map: 'waiting' | 'ready' | 'none';
   view: View;
+  /** Whether the ground is shown in relief, from the side. */
+  solid: boolean;
+  /** What is under the pointer. */
+  place: Place | undefined;
+  /** Two places, or fewer, whose distance is asked; the measuring goes on until it is undefined. */
+  measure: { points: [number, number][]; way?: Measured } | undefined;
   theme: Theme;
   /** What is told to those who cannot see it. */
   said: string;
@@ -74,6 +80,9 @@ export function initialState(view: View): State {
     sectionHeight: 0,
     map: 'waiting',
     view,
+    solid: false,
+    place: undefined,
+    measure: undefined,
     theme: 'system',
     said: '',
   };
