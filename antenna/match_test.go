@@ -177,7 +177,11 @@ func TestVSWR(t *testing.T) {
 		ref  float64
 		want float64
 	}{
-		{50, 50, 1}, {75, 50, 1.5}, {25, 50, 2}, {complex(50, 50), 50, 2.6180}, {complex(73.1, 42.5), 50, 2.1819},
+		{50, 50, 1},
+		{75, 50, 1.5},
+		{25, 50, 2},
+		{complex(50, 50), 50, 2.6180},
+		{complex(73.1, 42.5), 50, 2.1819},
 		{1e-9, 50, 5e10}, // nearly all comes back: no digit may be lost
 	} {
 		near(t, "VSWR over the wanted", VSWR(tc.load, tc.ref)/tc.want, 1, 1e-4)

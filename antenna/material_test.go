@@ -11,8 +11,12 @@ func TestMaterialNamed(t *testing.T) {
 		name             string
 		sigma, permeable float64
 	}{
-		{"copper", 5.8e7, 1}, {"aluminium", 2.5e7, 1}, {"brass", 1.57e7, 1},
-		{"stainless", 1.39e6, 1}, {"steel", 6e6, 100}, {"ideal", math.Inf(1), 1},
+		{"copper", 5.8e7, 1},
+		{"aluminium", 2.5e7, 1},
+		{"brass", 1.57e7, 1},
+		{"stainless", 1.39e6, 1},
+		{"steel", 6e6, 100},
+		{"ideal", math.Inf(1), 1},
 	} {
 		got, err := MaterialNamed(tc.name)
 		if want := (Material{tc.name, tc.sigma, tc.permeable}); err != nil || got != want {

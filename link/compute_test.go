@@ -197,9 +197,15 @@ func TestVerdicts(t *testing.T) {
 		margin, chance float64
 		want           Verdict
 	}{
-		{Aim{MarginDB: 6}, 6, 0, Closes}, {Aim{MarginDB: 6}, 5.999, 99, Thin}, {Aim{MarginDB: 6}, 0, 0, Thin}, {Aim{MarginDB: 6}, -0.001, 99, Fails},
-		{Aim{MarginDB: 0}, 0, 0, Closes}, {Aim{MarginDB: -3}, -1, 0, Fails},
-		{Aim{ChancePct: 90}, 3, 90, Closes}, {Aim{ChancePct: 90}, 30, 89, Thin}, {Aim{ChancePct: 40}, -1, 45, Fails},
+		{Aim{MarginDB: 6}, 6, 0, Closes},
+		{Aim{MarginDB: 6}, 5.999, 99, Thin},
+		{Aim{MarginDB: 6}, 0, 0, Thin},
+		{Aim{MarginDB: 6}, -0.001, 99, Fails},
+		{Aim{MarginDB: 0}, 0, 0, Closes},
+		{Aim{MarginDB: -3}, -1, 0, Fails},
+		{Aim{ChancePct: 90}, 3, 90, Closes},
+		{Aim{ChancePct: 90}, 30, 89, Thin},
+		{Aim{ChancePct: 40}, -1, 45, Fails},
 	} {
 		if got := tc.aim.judge(tc.margin, tc.chance); got != tc.want {
 			t.Errorf("%+v with %g dB and %g %%: %s, want %s", tc.aim, tc.margin, tc.chance, got, tc.want)

@@ -83,9 +83,24 @@ func besideCylinderDBi(spacingM, radiusM float64, azRad []float64) []float64 {
 func TestMastAgainstCylinderSeries(t *testing.T) {
 	worst := 0.0
 	for _, tc := range []struct{ spacingM, radiusM float64 }{
-		{0.25, 0.003}, {0.25, 0.01}, {0.5, 0.02}, {0.25, 0.03}, {0.25, 0.05}, {0.4, 0.08}, {0.35, 0.12},
-		{0.05, 0.015}, {0.06, 0.03}, {0.1, 0.05}, {0.2, 0.1}, {0.4, 0.3},
-		{0.5, 0.2}, {0.7, 0.38}, {0.75, 0.45}, {0.95, 0.61}, {1.1, 0.8}, {1.3, 1},
+		{0.25, 0.003},
+		{0.25, 0.01},
+		{0.5, 0.02},
+		{0.25, 0.03},
+		{0.25, 0.05},
+		{0.4, 0.08},
+		{0.35, 0.12},
+		{0.05, 0.015},
+		{0.06, 0.03},
+		{0.1, 0.05},
+		{0.2, 0.1},
+		{0.4, 0.3},
+		{0.5, 0.2},
+		{0.7, 0.38},
+		{0.75, 0.45},
+		{0.95, 0.61},
+		{1.1, 0.8},
+		{1.3, 1},
 	} {
 		_, r := excited(t, besideMast(tc.spacingM, tc.radiusM, 0, 5))
 		want := besideCylinderDBi(tc.spacingM, tc.radiusM, []float64{0, math.Pi / 4, math.Pi / 2, math.Pi})
@@ -146,7 +161,8 @@ func TestFarMast(t *testing.T) {
 // the mount, and solved in the frame of the site. Source: both are one structure.
 func TestRolledAntennaOnUprightMast(t *testing.T) {
 	spec := YagiSpec{DiameterM: 0.01, Material: antenna.Ideal, Elements: []Element{
-		{Length: antenna.Length{M: 0.5}, At: antenna.Length{M: -0.2}}, {Length: antenna.Length{M: 0.46}, Driven: true}, {Length: antenna.Length{M: 0.44}, At: antenna.Length{M: 0.15}}}}
+		{Length: antenna.Length{M: 0.5}, At: antenna.Length{M: -0.2}}, {Length: antenna.Length{M: 0.46}, Driven: true}, {Length: antenna.Length{M: 0.44}, At: antenna.Length{M: 0.15}},
+	}}
 	a, err := Yagi(spec)
 	built(t, a, err)
 	for _, rollDeg := range []float64{0, 35, 90} {

@@ -24,11 +24,17 @@ func TestFiguresCore(t *testing.T) {
 		fit       fit
 		mhz, want float64
 	}{
-		{"city", City.manMade(), 30, 35.884}, {"city", City.manMade(), 250, 10.377},
-		{"residential", Residential.manMade(), 50, 25.439}, {"residential", Residential.manMade(), 150, 12.222},
-		{"rural", Rural.manMade(), 30, 26.284}, {"rural", Rural.manMade(), 150, 6.922},
-		{"quiet rural", QuietRural.manMade(), 30, 11.354}, {"quiet rural", QuietRural.manMade(), 250, -14.981},
-		{"galactic", galactic, 30, 18.026}, {"galactic", galactic, 150, 1.950}, {"galactic", galactic, 250, -3.153},
+		{"city", City.manMade(), 30, 35.884},
+		{"city", City.manMade(), 250, 10.377},
+		{"residential", Residential.manMade(), 50, 25.439},
+		{"residential", Residential.manMade(), 150, 12.222},
+		{"rural", Rural.manMade(), 30, 26.284},
+		{"rural", Rural.manMade(), 150, 6.922},
+		{"quiet rural", QuietRural.manMade(), 30, 11.354},
+		{"quiet rural", QuietRural.manMade(), 250, -14.981},
+		{"galactic", galactic, 30, 18.026},
+		{"galactic", galactic, 150, 1.950},
+		{"galactic", galactic, 250, -3.153},
 	} {
 		if got := tc.fit.figureDB(tc.mhz); math.Abs(got-tc.want) > 0.001 {
 			t.Errorf("%s at %g MHz: %.4f dB, want %.3f", tc.name, tc.mhz, got, tc.want)

@@ -70,12 +70,22 @@ type briefPath struct {
 	dlt, dlr                 float64 // the horizons, on a line of sight asked for when needed
 }
 
+// log10OnePlus returns log10(1 + x) for x >= 0; for the small ones of flat paths by its series, exact
+// to the last digits.
+func log10OnePlus(x float64) float64 {
+	if x > 1e-4 {
+		return math.Log10(1 + x)
+	}
+	return x * (1 - x*(0.5-x*(1.0/3-x*0.25))) / math.Ln10
+}
+
 // Loss evaluates the requests on one path into out, one for each request in their order. Nearer
 // than 0.25 km P.1812 is free space.
 func (b *Brief) Loss(o *Outline, g Ground, shares Shares, out []Combined) {
 	p := briefPath{Brief: b, Outline: o, ground: g, shares: shares, dlt: o.Dlt, dlr: o.Dlr}
-	rise := (o.Hts - o.Hrs) / 1000
-	p.lbfs = b.lbfs1 + 10*math.Log10(o.LengthKm*o.LengthKm+rise*rise)
+	rise := (o.Hts - o.Hrs) / 1000 / o.LengthKm
+	logD := math.Log10(o.LengthKm)
+	p.lbfs = b.lbfs1 + 20*logD + 10*log10OnePlus(rise*rise) // of the slant range
 	switch {
 	case b.method == FreeSpace.Name:
 		p.sameForAll(out, Combined{math.Inf(-1), p.lbfs})
@@ -94,7 +104,6 @@ func (b *Brief) Loss(o *Outline, g Ground, shares Shares, out []Combined) {
 		p.sameForAll(out, Combined{math.Inf(-1), p.lbfs + p.ld50})
 		return
 	}
-	logD := math.Log10(o.LengthKm)
 	for i := range b.requests {
 		out[i] = p.request(i, logD)
 	}

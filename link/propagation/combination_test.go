@@ -54,9 +54,13 @@ func TestWeights(t *testing.T) {
 		name      string
 		got, want float64
 	}{
-		{"Fj(0.3)", angleWeight(0.3), 0.5}, {"Fj(0)", angleWeight(0), 0.5 + 0.5*math.Tanh(2.4)}, {"Fj(10)", angleWeight(10), 0},
+		{"Fj(0.3)", angleWeight(0.3), 0.5},
+		{"Fj(0)", angleWeight(0), 0.5 + 0.5*math.Tanh(2.4)},
+		{"Fj(10)", angleWeight(10), 0},
 		{"Fj(-5)", angleWeight(-5), 1},
-		{"Fk(20)", distanceWeight(20), 0.5}, {"Fk(40)", distanceWeight(40), 0.5 - 0.5*math.Tanh(1.5)}, {"Fk(0)", distanceWeight(0), 0.5 + 0.5*math.Tanh(1.5)},
+		{"Fk(20)", distanceWeight(20), 0.5},
+		{"Fk(40)", distanceWeight(40), 0.5 - 0.5*math.Tanh(1.5)},
+		{"Fk(0)", distanceWeight(0), 0.5 + 0.5*math.Tanh(1.5)},
 	} {
 		if math.Abs(tc.got-tc.want) > 1e-12 {
 			t.Errorf("%s = %g, want %g", tc.name, tc.got, tc.want)

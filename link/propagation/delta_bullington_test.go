@@ -58,10 +58,20 @@ func TestP452Examples(t *testing.T) {
 			column string
 			got    float64
 		}{
-			{"ae_km", got.Ae}, {"d_km", p.LengthKm()}, {"hts_m", got.Hts}, {"hrs_m", got.Hrs},
-			{"theta_t_mrad", got.ThetaT}, {"theta_r_mrad", got.ThetaR}, {"theta_mrad", got.Theta},
-			{"hstd_m", got.Hstd}, {"hsrd_m", got.Hsrd}, {"dlt_km", got.Dlt}, {"dlr_km", got.Dlr},
-			{"omega", got.Omega}, {"Ldsph50_dB", got.LdsphK50}, {"Ld50_dB", got.Ld50},
+			{"ae_km", got.Ae},
+			{"d_km", p.LengthKm()},
+			{"hts_m", got.Hts},
+			{"hrs_m", got.Hrs},
+			{"theta_t_mrad", got.ThetaT},
+			{"theta_r_mrad", got.ThetaR},
+			{"theta_mrad", got.Theta},
+			{"hstd_m", got.Hstd},
+			{"hsrd_m", got.Hsrd},
+			{"dlt_km", got.Dlt},
+			{"dlr_km", got.Dlr},
+			{"omega", got.Omega},
+			{"Ldsph50_dB", got.LdsphK50},
+			{"Ld50_dB", got.Ld50},
 		} {
 			seen.check(t, name, c.column, c.got, r.num(c.column), 1e-4)
 		}
@@ -102,10 +112,20 @@ func TestDiffractionOverOneKm(t *testing.T) {
 		got, want  float64
 		toleration float64
 	}{
-		{"theta_t", got.ThetaT, -177.8382637, 1e-6}, {"theta_r", got.ThetaR, 189.2528327, 1e-6}, {"theta", got.Theta, 11.53303013, 1e-6},
-		{"dlt", got.Dlt, 0.4702, 1e-9}, {"dlr", got.Dlr, 0.58775, 1e-9}, {"ae", got.Ae, 8930.776786, 1e-6},
-		{"hts", got.Hts, 814.4, 1e-9}, {"hrs", got.Hrs, 617.3, 1e-9}, {"hstd", got.Hstd, 754.4, 1e-7}, {"hsrd", got.Hsrd, 595.082716, 1e-6},
-		{"Lbulla", got.LbullaK50, 19.97432438, 1e-7}, {"Lbulls", got.LbullsK50, 0, 0}, {"Ldsph", got.LdsphK50, 0, 0}, {"Ld50", got.Ld50, 19.97432438, 1e-7},
+		{"theta_t", got.ThetaT, -177.8382637, 1e-6},
+		{"theta_r", got.ThetaR, 189.2528327, 1e-6},
+		{"theta", got.Theta, 11.53303013, 1e-6},
+		{"dlt", got.Dlt, 0.4702, 1e-9},
+		{"dlr", got.Dlr, 0.58775, 1e-9},
+		{"ae", got.Ae, 8930.776786, 1e-6},
+		{"hts", got.Hts, 814.4, 1e-9},
+		{"hrs", got.Hrs, 617.3, 1e-9},
+		{"hstd", got.Hstd, 754.4, 1e-7},
+		{"hsrd", got.Hsrd, 595.082716, 1e-6},
+		{"Lbulla", got.LbullaK50, 19.97432438, 1e-7},
+		{"Lbulls", got.LbullsK50, 0, 0},
+		{"Ldsph", got.LdsphK50, 0, 0},
+		{"Ld50", got.Ld50, 19.97432438, 1e-7},
 	} {
 		seen.check(t, "1 km", c.symbol, c.got, c.want, c.toleration)
 	}

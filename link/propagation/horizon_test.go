@@ -22,10 +22,21 @@ func TestPublishedHorizons(t *testing.T) {
 			column string
 			got    float64
 		}{
-			{"ae_km", got.Ae}, {"hts_m", got.Hts}, {"hrs_m", got.Hrs}, {"dlt_km", got.Dlt}, {"dlr_km", got.Dlr},
-			{"theta_t_mrad", got.ThetaT}, {"theta_r_mrad", got.ThetaR}, {"theta_mrad", got.Theta},
-			{"hstd_m", got.Hstd}, {"hsrd_m", got.Hsrd}, {"omega", got.Omega},
-			{"Lbulla50_dB", got.LbullaK50}, {"Lbulls50_dB", got.LbullsK50}, {"Ldsph50_dB", got.LdsphK50}, {"Ld50_dB", got.Ld50},
+			{"ae_km", got.Ae},
+			{"hts_m", got.Hts},
+			{"hrs_m", got.Hrs},
+			{"dlt_km", got.Dlt},
+			{"dlr_km", got.Dlr},
+			{"theta_t_mrad", got.ThetaT},
+			{"theta_r_mrad", got.ThetaR},
+			{"theta_mrad", got.Theta},
+			{"hstd_m", got.Hstd},
+			{"hsrd_m", got.Hsrd},
+			{"omega", got.Omega},
+			{"Lbulla50_dB", got.LbullaK50},
+			{"Lbulls50_dB", got.LbullsK50},
+			{"Ldsph50_dB", got.LdsphK50},
+			{"Ld50_dB", got.Ld50},
 		} {
 			seen.check(t, r.text("case"), c.column, c.got, r.num(c.column), 1e-6)
 		}

@@ -14,8 +14,14 @@ func TestPathWords(t *testing.T) {
 		ratio float64
 		want  string
 	}{
-		{1.2, "clear"}, {1, "clear"}, {0.75, "clear, 0.7 F1 at 4.2 km"}, {0.6, "clear, 0.6 F1 at 4.2 km"},
-		{0.59, "grazes at 4.2 km"}, {0, "grazes at 4.2 km"}, {-0.01, "blocked at 4.2 km"}, {-8, "blocked at 4.2 km"},
+		{1.2, "clear"},
+		{1, "clear"},
+		{0.75, "clear, 0.7 F1 at 4.2 km"},
+		{0.6, "clear, 0.6 F1 at 4.2 km"},
+		{0.59, "grazes at 4.2 km"},
+		{0, "grazes at 4.2 km"},
+		{-0.01, "blocked at 4.2 km"},
+		{-8, "blocked at 4.2 km"},
 	} {
 		got := pathWords(&link.Result{Clearance: propagation.FresnelClearance{WorstRatio: tc.ratio, NeededRatio: 0.6, AtKm: 4.2}})
 		if got != tc.want {

@@ -173,11 +173,13 @@ func (f *file) checkHeights(strip *terrain.Grid, col, row int) error {
 // discStripCells is about how many cells are read at once.
 const discStripCells = 1 << 18
 
-// dropBlocks empties GDAL's cache of file blocks: a window that has been read is not read again.
-func dropBlocks() {
+// keepFewBlocks bounds GDAL's cache of file blocks more tightly until the function it returns is
+// called: what is read or written in one go is not asked for again.
+func keepFewBlocks() (restore func()) {
+	const bytes = 8 << 20
 	prepareGDAL()
-	gdal.SetCacheMax(0)
-	gdal.SetCacheMax(gdalCacheBytes)
+	gdal.SetCacheMax(bytes)
+	return func() { gdal.SetCacheMax(gdalCacheBytes) }
 }
 
 // readStrips reads a window some rows at a time; row counts from the window's first.
@@ -185,7 +187,7 @@ func (f *file) readStrips(w cellWindow, use func(strip *terrain.Grid, row int) e
 	if cells := float64(w.cols) * float64(w.rows); cells > MaxDiscCells {
 		return fmt.Errorf("%s: %d x %d cells lie within the range, %.1f GB in memory; at most %d million are taken: shorten the range, or use a coarser raster", f.info.Path, w.cols, w.rows, cells*4/1e9, MaxDiscCells/1_000_000)
 	}
-	defer dropBlocks()
+	defer keepFewBlocks()()
 	height := max(1, discStripCells/w.cols)
 	for row := 0; row < w.rows; row += height {
 		strip, err := f.read(w.col, w.row+row, w.cols, min(height, w.rows-row))

@@ -256,7 +256,8 @@ func TestBeyond(t *testing.T) {
 
 // coverRaster has classes in stripes of 1 km: 1, 2, 3, void; east of 446000 nothing.
 func coverRaster(t *testing.T) string {
-	return made{west: 440000, north: 5266000, cell: 20, cols: 300, rows: 300, epsg: 32627,
+	return made{
+		west: 440000, north: 5266000, cell: 20, cols: 300, rows: 300, epsg: 32627,
 		value: func(x, y float64) float64 {
 			if class := int(x-440000) / 1000 % 4; class < 3 {
 				return float64(class + 1)
@@ -324,8 +325,10 @@ func TestCover(t *testing.T) {
 func TestCoverBeyondSea(t *testing.T) {
 	m := utmPlane()
 	m.cols = 50 // to 441500
-	g := open(t, Spec{Elevation: []string{m.write(t, "plane.tif")}, Cover: coverRaster(t), BeyondSea: true,
-		Classes: map[int]terrain.Class{1: {HeightM: 4}, 2: {HeightM: 5}}}) // class 3 is missing
+	g := open(t, Spec{
+		Elevation: []string{m.write(t, "plane.tif")}, Cover: coverRaster(t), BeyondSea: true,
+		Classes: map[int]terrain.Class{1: {HeightM: 4}, 2: {HeightM: 5}},
+	}) // class 3 is missing
 	p, err := g.Profile(utm(t, 440100, 5263015), utm(t, 445000, 5263015))
 	if err != nil || len(p.Notes) != 0 {
 		t.Fatalf("%v, notes %q", err, p.Notes)

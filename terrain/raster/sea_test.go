@@ -70,8 +70,10 @@ func TestVoidIsNoSea(t *testing.T) {
 	}{
 		{"seen", seen, terrain.Coastal}, {"nodata", noData, terrain.Inland}, {"masked", masked, terrain.Inland},
 	} {
-		g := open(t, Spec{Elevation: []string{made{west: 440000, north: 5266000, cell: 100, cols: 90, rows: 60, epsg: 32627, value: func(x, y float64) float64 { return 9 }}.write(t, "dem.tif")},
-			Cover: tc.path, Classes: classes})
+		g := open(t, Spec{
+			Elevation: []string{made{west: 440000, north: 5266000, cell: 100, cols: 90, rows: 60, epsg: 32627, value: func(x, y float64) float64 { return 9 }}.write(t, "dem.tif")},
+			Cover:     tc.path, Classes: classes,
+		})
 		p, err := g.Profile(utm(t, 444000, 5263000), utm(t, 447000, 5263000))
 		if err != nil {
 			t.Fatal(err)

@@ -17,9 +17,21 @@ func TestUnitSizeM(t *testing.T) {
 		unit string
 		want float64
 	}{
-		{"", 1}, {"m", 1}, {"Metre", 1}, {" meters ", 1}, {"cm", 0.01}, {"dm", 0.1}, {"km", 1000}, {"mm", 0.001},
-		{"ft", 0.3048}, {"Feet", 0.3048}, {"foot", 0.3048},
-		{"US survey foot", 0.304800609601219}, {"us_survey_foot", 0.304800609601219}, {"US-ft", 0.304800609601219}, {"ftUS", 0.304800609601219},
+		{"", 1},
+		{"m", 1},
+		{"Metre", 1},
+		{" meters ", 1},
+		{"cm", 0.01},
+		{"dm", 0.1},
+		{"km", 1000},
+		{"mm", 0.001},
+		{"ft", 0.3048},
+		{"Feet", 0.3048},
+		{"foot", 0.3048},
+		{"US survey foot", 0.304800609601219},
+		{"us_survey_foot", 0.304800609601219},
+		{"US-ft", 0.304800609601219},
+		{"ftUS", 0.304800609601219},
 	} {
 		if got, err := unitSizeM(tc.unit); err != nil || math.Abs(got-tc.want) > 1e-15 {
 			t.Errorf("unitSizeM(%q) = %.15g, %v, want %.15g", tc.unit, got, err, tc.want)
