@@ -125,7 +125,7 @@ func forCells(t testing.TB, task Task, disc *terrain.Disc, frame *raster.Frame, 
 // linkTo computes the link to a cell on the stated profile.
 func linkTo(t testing.TB, task Task, s *sweep, index int) *link.Result {
 	t.Helper()
-	p, lat, ok := s.statedProfile(index)
+	p, lat, ok := newWalk(s).statedProfile(index)
 	if !ok {
 		t.Fatalf("cell %d has no profile", index)
 	}
@@ -145,7 +145,7 @@ func linkTo(t testing.TB, task Task, s *sweep, index int) *link.Result {
 // locationLine is Lb(pL) - Lb(50) by the direct method.
 func locationLine(t testing.TB, task Task, s *sweep, c *Cell, freqHz, share float64) float64 {
 	t.Helper()
-	p, lat, _ := s.statedProfile(c.Index)
+	p, lat, _ := newWalk(s).statedProfile(c.Index)
 	path := s.path(p, lat, freqHz, share, task.Conditions.N0)
 	median, err := propagation.P1812.Loss(path)
 	if err != nil {

@@ -25,7 +25,7 @@ type Cell struct {
 	own      []sample // the last of them, on the own bearing
 	zoneOf   [mostOwn + 1]terrain.Zone
 
-	aslM, coverM [mostOwn]float64
+	aslM, coverM [mostOwn + 1]float64
 
 	obstacleKm    float64 // NaN until asked for
 	dtm, dlm, sea float64
@@ -50,22 +50,20 @@ func (c *Cell) set(p place) bool {
 	c.Index, c.EastM, c.NorthM, c.interior = int(p.index), p.east, p.north, int(p.interior)
 	distM := math.Hypot(p.east, p.north)
 	c.d = distM / 1000
-	groundM, coverM, zone := w.disc.Point(p.east, p.north)
 	own := min(w.ownPoints, c.interior)
-	if math.IsNaN(groundM) || c.interior-own > w.known || !c.sampleOwn(own, p.east/distM, p.north/distM) {
+	if c.interior-own > w.known || !c.sample(own, p.east/distM, p.north/distM) {
 		return false
 	}
-	c.CoverM, c.zoneOf[own] = coverM, zone
 	w.advance(c.interior - own)
-	c.findOutline(groundM)
+	c.findOutline(c.aslM[own])
 	return true
 }
 
-// sampleOwn reads the points on the own bearing, whose direction is given.
-func (c *Cell) sampleOwn(count int, east, north float64) bool {
+// sample reads the points on the own bearing, whose direction is given, and the cell itself.
+func (c *Cell) sample(count int, east, north float64) bool {
 	w := c.walk
-	w.disc.Sample(w.ownRay(count, 1000*c.d, east, north), c.aslM[:count], c.coverM[:count], c.zoneOf[:count])
-	c.own = c.points[:count]
+	w.disc.Sample(w.ownRay(count, 1000*c.d, east, north), c.aslM[:count+1], c.coverM[:count+1], c.zoneOf[:count+1])
+	c.own, c.CoverM = c.points[:count], c.coverM[count]
 	for i := range c.own {
 		d, h, cover := c.d-float64(count-i)*w.stepKm, c.aslM[i], c.coverM[i]
 		if math.IsNaN(h) {
@@ -80,11 +78,11 @@ func (c *Cell) sampleOwn(count int, east, north float64) bool {
 		}
 		c.own[i] = sample{d, h, h + cover}
 	}
-	return true
+	return !math.IsNaN(c.aslM[count])
 }
 
 // ownRay leads over the last count points of the profile of a cell at distM, in steps up to one
-// before the cell; east and north are its direction.
+// before the cell, and on to the cell; east and north are its direction.
 func (s *sweep) ownRay(count int, distM, east, north float64) terrain.Ray {
 	from := distM - float64(count)*s.stepM
 	return terrain.Ray{East: east * from, North: north * from, StepEast: east * s.stepM, StepNorth: north * s.stepM}

@@ -77,9 +77,10 @@ func (s *sampling) check(ctx context.Context, t *Task, places *link.Places) (Che
 			if ctx.Err() != nil {
 				return ctx.Err()
 			}
+			w := newWalk(s.sweep)
 			for i := from; i < min(from+batch, len(s.kept)); i++ {
 				var err error
-				if sweepDB[i], cellDB[i], err = s.compare(t, places.Directions[0].FreqHz, s.kept[i]); err != nil {
+				if sweepDB[i], cellDB[i], err = s.compare(t, w, places.Directions[0].FreqHz, s.kept[i]); err != nil {
 					return err
 				}
 			}
@@ -94,12 +95,12 @@ func (s *sampling) check(ctx context.Context, t *Task, places *link.Places) (Che
 
 // compare evaluates a cell on the profile of the sweep, and on its own. Where the latter crosses a
 // void the difference is NaN.
-func (s *sampling) compare(t *Task, freqHz float64, c sampledCell) (sweepDB, cellDB float64, err error) {
+func (s *sampling) compare(t *Task, w *walk, freqHz float64, c sampledCell) (sweepDB, cellDB float64, err error) {
 	evaluate := func(p terrain.Profile, latDeg float64) (float64, error) {
 		loss, err := t.Conditions.Method.Loss(s.sweep.path(p, latDeg, freqHz, c.verticalPart, t.Conditions.N0))
 		return math.Abs(loss.DB - c.lossDB), err
 	}
-	p, latDeg, ok := s.sweep.statedProfile(c.index)
+	p, latDeg, ok := w.statedProfile(c.index)
 	if !ok {
 		return 0, 0, fmt.Errorf("coverage: cell %d has a loss without a profile", c.index)
 	}

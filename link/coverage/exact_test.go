@@ -68,7 +68,7 @@ func sweepAll(t testing.TB, s *sweep, a asking, every int) map[int]foundCell {
 
 // compare evaluates a cell's stated profile by the direct method.
 func compare(t *testing.T, s *sweep, a asking, index int, f foundCell) (worst float64) {
-	profile, lat, ok := s.statedProfile(index)
+	profile, lat, ok := newWalk(s).statedProfile(index)
 	if !ok {
 		t.Fatalf("cell %d has a loss and no profile", index)
 	}

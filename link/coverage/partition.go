@@ -80,7 +80,7 @@ func (s *sweep) eachCell(fromRow, toRow int, f func(cell int32, radial int)) {
 // radialOf is the radial nearest in azimuth to a position of the plane, to within 1e-5 rad: some
 // hundredths of the angle between two radials.
 func (s *sweep) radialOf(east, north float64) int {
-	radial := int(azimuth(east, north)*float64(s.radials)/(2*math.Pi) + 0.5)
+	radial := int(azimuth(east, north)*s.perRadian + 0.5)
 	if radial >= s.radials {
 		return 0
 	}

@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"io"
+	"runtime/debug"
 	"slices"
 
 	"fellreach/link"
@@ -184,6 +185,10 @@ func (r *runner) site(ctx context.Context, number int) (SiteReport, error) {
 	if err != nil {
 		return SiteReport{}, err
 	}
+	if !r.Outputs.Picture {
+		m.disc = nil
+	}
+	debug.FreeOSMemory() // of the ground and the lists of cells, before GDAL takes as much
 	report, err := r.writeSite(number, m)
 	if err != nil {
 		return SiteReport{}, err

@@ -10,7 +10,8 @@ import (
 // statedProfile lays out the profile of a cell as the package defines it, point by point; ok is
 // false where it is not known. It shares with the sweep where the ground is sampled and nothing
 // else.
-func (s *sweep) statedProfile(index int) (p terrain.Profile, latDeg float64, ok bool) {
+func (w *walk) statedProfile(index int) (p terrain.Profile, latDeg float64, ok bool) {
+	s := w.sweep
 	east, north := s.frame.Plane.At(float64(index%s.frame.Cols), float64(index/s.frame.Cols))
 	if math.Hypot(east, north) < nearestM {
 		east, north = 0, nearestM
@@ -18,7 +19,6 @@ func (s *sweep) statedProfile(index int) (p terrain.Profile, latDeg float64, ok 
 	distM := math.Hypot(east, north)
 	n := interiorPoints(distM, s.stepM)
 	p = terrain.Profile{DistKm: make([]float64, n+2), AslM: make([]float64, n+2), CoverM: make([]float64, n+2), Zone: make([]terrain.Zone, n+2)}
-	w := newWalk(s)
 	w.start(s.radialOf(east, north))
 	copy(p.AslM[:n+1], w.aslM)
 	copy(p.CoverM[:n+1], w.coverM)
@@ -31,17 +31,16 @@ func (s *sweep) statedProfile(index int) (p terrain.Profile, latDeg float64, ok 
 	}
 	own := min(s.ownPoints, n)
 	first := n - own + 1
-	aslM := make([]float64, own)
-	s.disc.Sample(s.ownRay(own, distM, east/distM, north/distM), aslM, p.CoverM[first:n+1], p.Zone[first:n+1])
-	for i, h := range aslM {
+	aslM := make([]float64, own+1)
+	s.disc.Sample(s.ownRay(own, distM, east/distM, north/distM), aslM, p.CoverM[first:], p.Zone[first:])
+	p.DistKm[n+1], p.AslM[n+1] = distM/1000, aslM[own]
+	for i, h := range aslM[:own] {
 		p.DistKm[first+i] = distM/1000 - float64(own-i)*s.stepKm
 		if at := s.index(p.DistKm[first+i]); math.IsNaN(h) && at <= w.known {
 			h = w.aslM[at]
 		}
 		p.AslM[first+i] = h
 	}
-	p.DistKm[n+1] = distM / 1000
-	p.AslM[n+1], p.CoverM[n+1], p.Zone[n+1] = s.disc.Point(east, north)
 	for _, h := range p.AslM {
 		if math.IsNaN(h) {
 			return p, 0, false

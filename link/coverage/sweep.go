@@ -48,6 +48,7 @@ type sweep struct {
 	ownPoints, points int // own points of a profile; points of a radial beyond the site
 	stepM, stepKm, ae float64
 	needsBeta         bool
+	perRadian         float64 // radials
 	clearLimit        float64 // tightness times distance from which on nothing is lost at any frequency
 }
 
@@ -68,6 +69,7 @@ func newSweep(s Spec, disc *terrain.Disc, frame *raster.Frame) (*sweep, error) {
 		w.radials, w.ownPoints = 2*w.radials, mostOwn
 	}
 	w.radials = max(w.radials, 8)
+	w.perRadian = float64(w.radials) / (2 * math.Pi)
 	w.points = interiorPoints(s.RangeM, s.StepM) + 1
 	w.ae = propagation.EffectiveEarthRadiusKm(s.DeltaN)
 	// J(nu) is 0 up to nu = -0.78, and nu^2 is tightness times d times 0.002 over the wavelength.
