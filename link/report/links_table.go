@@ -118,9 +118,19 @@ func (r *remarkList) add(title string, list []link.Warning) {
 func (r *remarkList) words(kind string) string {
 	var b strings.Builder
 	for _, text := range r.texts {
-		fmt.Fprintf(&b, "%s: %s\n%s(%s)\n", kind, text, strings.Repeat(" ", len(kind)+2), strings.Join(r.places[text], ", "))
+		fmt.Fprintf(&b, "%s: %s\n%s(%s)\n", kind, text, strings.Repeat(" ", len(kind)+2), placeWords(r.places[text]))
 	}
 	return b.String()
+}
+
+// mostPlaces is how many places of a remark a table names.
+const mostPlaces = 12
+
+func placeWords(places []string) string {
+	if others := len(places) - mostPlaces; others > 1 {
+		return fmt.Sprintf("%s and %d others", strings.Join(places[:mostPlaces], ", "), others)
+	}
+	return strings.Join(places, ", ")
 }
 
 // LinesTable writes the whole budget of every link, line by line, and what small changes do to it.

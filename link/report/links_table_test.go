@@ -2,6 +2,7 @@ package report
 
 import (
 	"bytes"
+	"fmt"
 	"strings"
 	"testing"
 
@@ -58,6 +59,20 @@ func TestTablesAreClean(t *testing.T) {
 		}
 		if !strings.HasSuffix(text.String(), "\n") || strings.Contains(text.String(), "\t") || strings.Contains(text.String(), " \n") || strings.Contains(text.String(), "\n\n\n") {
 			t.Errorf("%s:\n%q", name, &text)
+		}
+	}
+}
+
+// A remark of very many places names some and counts the others; all are named where one more would
+// do.
+func TestManyPlaces(t *testing.T) {
+	var places []string
+	for i := range 40 {
+		places = append(places, fmt.Sprintf("S%d", i))
+	}
+	for n, want := range map[int]string{1: "S0", 13: "S10, S11, S12", 14: "S10, S11 and 2 others", 40: "S10, S11 and 28 others"} {
+		if got := placeWords(places[:n]); !strings.HasSuffix(got, want) || !strings.HasPrefix(got, "S0") {
+			t.Errorf("%d places: %q, want it to end in %q", n, got, want)
 		}
 	}
 }
