@@ -176,6 +176,37 @@ func TestPolarization(t *testing.T) {
 	}
 }
 
+// Phases not known matter between two slanted fields alone, and only then the line says so.
+func TestUnknownPhasesAreTold(t *testing.T) {
+	for _, tc := range []struct {
+		slantA, slantB float64
+		told           bool
+	}{{0, 0, false}, {0, 45, false}, {45, 0, false}, {90, 90, false}, {45, 90, false}, {45, 30, true}} {
+		a, b := plainStation("A", 0, isotropic(t, 0, 1)), plainStation("B", 1, isotropic(t, 0, 1))
+		a.Mount.RollDeg, b.Mount.RollDeg = tc.slantA, tc.slantB
+		r := mustCompute(t, &Link{From: a, To: b, Channel: poll, Aim: Aim{AvailabilityPct: 50}}, level(5), propagation.FreeSpace)
+		for _, l := range r.Directions[0].Lines {
+			if l.Name == "polarization" && strings.Contains(l.Source, "phases not known") != tc.told {
+				t.Errorf("slants %g and %g: told %v, want %v: %s", tc.slantA, tc.slantB, !tc.told, tc.told, l.Source)
+			}
+		}
+	}
+}
+
+// The mismatch line tells the load whose VSWR it tells: behind the transformer, at the edge of the
+// channel that is worst. A load of 75 ohm behind 4:1 is 18.75 ohm: VSWR 2.67 on 50 ohm.
+func TestMismatchTellsItsLoad(t *testing.T) {
+	a, b := plainStation("A", 0, isotropic(t, 0, 1.5)), plainStation("B", 1, isotropic(t, 0, 1))
+	a.Match = antenna.Match{Ratio: 4}
+	r := mustCompute(t, &Link{From: a, To: b, Channel: poll, Aim: Aim{AvailabilityPct: 50}}, level(5), propagation.FreeSpace)
+	const want = "VSWR 2.67 at the radio, 2.67 at the antenna (18.8 + j0.0 ohm behind 4:1)"
+	for _, l := range r.Directions[0].Lines {
+		if l.Name == "A: mismatch at the radio" && l.Source != want {
+			t.Errorf("got %q, want %q", l.Source, want)
+		}
+	}
+}
+
 func TestObstructedPathLosesMore(t *testing.T) {
 	a, b := plainStation("A", 0, isotropic(t, 0, 1)), plainStation("B", 1, isotropic(t, 0, 1))
 	l := &Link{From: a, To: b, Channel: poll, Aim: Aim{AvailabilityPct: 50}}

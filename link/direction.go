@@ -106,10 +106,17 @@ func (w *way) polarizationLine(b *Budget, sent, caught antenna.Field, phased boo
 	if w.trans {
 		floor, source = crossedObstructedDB, "antennas as installed, at most 10 dB on an obstructed path (common practice, no source)"
 	}
-	if !phased && sent.VerticalShare() > 0 && sent.VerticalShare() < 1 {
+	if !phased && slanted(sent) && slanted(caught) {
 		source += "; phases not known, taken as zero"
 	}
 	b.add(LossLine, "polarization", -antenna.PolarizationMatchDB(sent, caught, floor), source)
+}
+
+// slanted tells whether a field has both components to speak of: between two such the phases count.
+func slanted(f antenna.Field) bool {
+	const least = 1e-6
+	share := f.VerticalShare()
+	return share > least && share < 1-least
 }
 
 // allowanceLines writes the fading allowance, stated or computed, and the planner's own.

@@ -89,8 +89,12 @@ func (f *frontEnd) insertLines(add func(Kind, string, float64, string), transmit
 }
 
 func (f *frontEnd) feederLines(add func(Kind, string, float64, string)) {
+	load := impedance(f.line.LoadOhm)
+	if r := f.Match.Ratio; r != 0 && r != 1 {
+		load += fmt.Sprintf(" behind %g:1", r)
+	}
 	add(LossLine, "mismatch at the radio", -f.line.MismatchLossDB,
-		fmt.Sprintf("VSWR %.2f at the radio, %.2f at the antenna (%s)", f.line.RadioVSWR, f.line.AntennaVSWR, impedance(f.solution.ImpedanceOhm)))
+		fmt.Sprintf("VSWR %.2f at the radio, %.2f at the antenna (%s)", f.line.RadioVSWR, f.line.AntennaVSWR, load))
 	connectorsDB := float64(f.Run.ConnectorCount) * f.Run.ConnectorLossDB
 	if f.Run.LengthM > 0 {
 		add(LossLine, fmt.Sprintf("feeder %s, %g m", f.Run.Feeder.Name, f.Run.LengthM), connectorsDB-f.line.MatchedLossDB, f.RunSource+", by the square root of frequency")
