@@ -28,8 +28,9 @@ export function ledgerTable(link: Link, way: 0 | 1, open: ReadonlySet<string>, o
     </div>
     <table class="ledger">
       <caption class="unseen">${words.ledgerOf(d.from, d.to)}</caption>
-      <thead class="unseen">
-        <tr><th scope="col">${words.step}</th><td></td><th scope="col">${words.value}</th></tr>
+      <colgroup><col class="names" /><col class="bars" /><col class="values" /></colgroup>
+      <thead>
+        <tr><th scope="col">${words.step}</th><td></td><th scope="col" class="figure">${words.value}</th></tr>
       </thead>
       ${partsOf(d).map(
         (part) => html`<tbody>
@@ -98,19 +99,20 @@ function toggled(open: ReadonlySet<string>, name: string): ReadonlySet<string> {
   return next;
 }
 
-const rowHeight = 22;
-
-// Places across are in percent of the cell, so that the bars need not know its width.
+// Places across are in percent of the cell, so that the bars need not know its width; the drawing fills rows of any
+// height, and a dotted line leads from each step's end to the next step.
 function bar(l: Ledger, b: Bar, index: number) {
   const span = l.most - l.least || 1;
   const across = (db: number) => `${((db - l.least) / span) * 100}%`;
   const wide = Math.abs(b.to - b.from);
-  const zero = across(l.margin.from);
-  return html`<svg class="steps" height=${rowHeight} aria-hidden="true">
-    <line class="zero" x1=${zero} x2=${zero} y1="-6" y2=${rowHeight} />
-    ${index > 0 ? svg`<line class="joint" x1=${across(b.from)} x2=${across(b.from)} y1="-5" y2="5" />` : nothing}
+  const [zero, from, to] = [across(l.margin.from), across(b.from), across(b.to)];
+  const total = index === l.bars.length;
+  return html`<svg class="steps" aria-hidden="true">
+    <line class="zero" x1=${zero} x2=${zero} y1="0" y2="100%" />
+    ${index > 0 ? svg`<line class="joint" x1=${total ? to : from} x2=${total ? to : from} y1="0" y2="5" />` : nothing}
+    ${total ? nothing : svg`<line class="joint" x1=${to} x2=${to} y1="18" y2="100%" />`}
     <rect x=${across(Math.min(b.from, b.to))} y="5" width=${`${(wide / span) * 100}%`} height="13" />
-    ${wide === 0 ? svg`<line class="none" x1=${across(b.to)} x2=${across(b.to)} y1="5" y2="18" />` : nothing}
+    ${(wide / span) * 100 < 0.6 ? svg`<line class="none" x1=${to} x2=${to} y1="5" y2="18" />` : nothing}
     ${b.cut ? svg`<svg class="cut" x=${across((b.from + b.to) / 2)} y="3"><path d="M-4 17 2 0M1 17 7 0" /></svg>` : nothing}
   </svg>`;
 }

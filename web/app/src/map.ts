@@ -8,7 +8,7 @@ import contourUrl from './contour_worker.js?worker&url';
 import { moveSite } from './edits';
 import { decimalPlace } from './format';
 import { newest } from './latest';
-import { boundsOf, lineFeature, linkFeatures, moveBy, siteFeatures } from './map_data';
+import { boundsOf, figureFeatures, lineFeature, linkFeatures, moveBy, siteFeatures } from './map_data';
 import { markImage } from './map_marks';
 import { type Colours, colourNames, mapStyle } from './map_style';
 import { nearest } from './profile';
@@ -56,7 +56,9 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
     if (!s.plan.value) return;
     const set = (id: string, data: unknown) =>
       (map.getSource(id) as maplibre.GeoJSONSource | undefined)?.setData(data as never);
-    set('links', linkFeatures(s.plan.value, s.links.value, sites.moved));
+    const links = linkFeatures(s.plan.value, s.links.value, sites.moved);
+    set('links', links);
+    set('figures', figureFeatures(links));
     set('sites', siteFeatures(s.plan.value, sites.moved));
     set('measured', lineFeature(s.measure?.points ?? []));
   }
@@ -80,7 +82,10 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
   map.on('style.load', drawAll);
   map.on('click', (e) => {
     const s = store.get();
-    if (s.measure) return measureAt(store, [e.lngLat.lng, e.lngLat.lat]);
+    if (s.measure) {
+      void measureAt(store, [e.lngLat.lng, e.lngLat.lat]);
+      return;
+    }
     const near = 6;
     const box: [maplibre.PointLike, maplibre.PointLike] = [
       [e.point.x - near, e.point.y - near],

@@ -40,6 +40,19 @@ export function linkFeatures(plan: Plan, links: Links | undefined, moved: Readon
 const siteName = (plan: Plan, station: string): string =>
   plan.sites.find((s) => s.name === station || s.stations.some((st) => st.name === station))?.name ?? station;
 
+type LinkFeatures = ReturnType<typeof linkFeatures>;
+
+/** figureFeatures puts each link's mark and margin at its middle. */
+export const figureFeatures = (links: LinkFeatures) =>
+  collection(
+    links.features
+      .filter((f) => 'verdict' in f.properties)
+      .map((f) => {
+        const [[x1, y1], [x2, y2]] = f.geometry.coordinates as [Position, Position];
+        return { ...f, geometry: { type: 'Point' as const, coordinates: [(x1 + x2) / 2, (y1 + y2) / 2] } };
+      }),
+  );
+
 export function siteFeatures(plan: Plan, moved: ReadonlyMap<string, Position>) {
   return collection(
     plan.sites.map((s) => ({

@@ -58,6 +58,7 @@ export function mapStyle(p: StyleParts): StyleSpecification {
     sources: {
       ...(p.ground ? groundSources(p.ground, p.origin, p.contours) : {}),
       links: { type: 'geojson', data: empty, promoteId: 'id' },
+      figures: { type: 'geojson', data: empty },
       sites: { type: 'geojson', data: empty, promoteId: 'id' },
       measured: { type: 'geojson', data: empty },
     },
@@ -165,8 +166,8 @@ function groundLayers(g: Ground, c: Colours, contours: boolean): LayerSpecificat
         filter: ['!=', ['get', 'ele'], 0],
         paint: {
           'line-color': c.contour,
-          'line-width': ['match', ['get', 'level'], 1, 1, 0.5],
-          'line-opacity': ['match', ['get', 'level'], 1, 0.75, 0.5],
+          'line-width': ['match', ['get', 'level'], 1, 1.1, 0.6],
+          'line-opacity': ['match', ['get', 'level'], 1, 0.85, 0.6],
         },
       },
       {
@@ -232,16 +233,18 @@ function linkLayers(c: Colours): LayerSpecification[] {
     {
       id: 'link-figures',
       type: 'symbol',
-      source: 'links',
+      source: 'figures',
       layout: {
-        'symbol-placement': 'line-center',
         'symbol-sort-key': ['get', 'margin'],
         'icon-image': ['concat', 'mark-', ['get', 'verdict']],
-        'icon-offset': [-30, 0],
-        'icon-padding': 1,
+        'icon-allow-overlap': true,
         'text-field': ['get', 'label'],
         'text-font': ['Plex'],
         'text-size': 13,
+        'text-variable-anchor': ['left', 'right', 'bottom', 'top'],
+        'text-radial-offset': 0.75,
+        'text-optional': true,
+        'text-padding': 1,
       },
       paint: { 'text-color': c.ink, 'text-halo-color': c.paper, 'text-halo-width': 2.5 },
     },

@@ -5,7 +5,7 @@ import type { Link, Plan } from './api';
 import { type BarEvents, bar } from './bar';
 import type { Changes } from './changes';
 import { addLink, addSite, changeAntenna, placeSite, raiseAntenna, removeLink } from './edits';
-import { metres } from './format';
+import { bearing, fixed, metres } from './format';
 import { heightsTable } from './heights_table';
 import { ledgerTable, notes, whatGives } from './ledger_table';
 import { linksTable } from './links_table';
@@ -144,6 +144,8 @@ function sites(store: Store<State>, changes: Changes, plan: Plan, map: () => Map
   </section>`;
 }
 
+const sectionEnd = (m: Mast) => `${m.name}, ${words.m(metres(m.aboveM))}`;
+
 function strip(store: Store<State>, changes: Changes) {
   const s = store.get();
   const section = s.section.value;
@@ -160,6 +162,11 @@ function strip(store: Store<State>, changes: Changes) {
     return found ? raiseAntenna(found.site, found.station, m) : [];
   };
   return html`
+    <p class="ends">
+      <b>${sectionEnd(masts[0])}</b>
+      <span class="quiet">${words.sectionWay(fixed(section.distance_km, 2), bearing(section.azimuth_deg), bearing(section.back_azimuth_deg))}</span>
+      <b>${sectionEnd(masts[1])}</b>
+    </p>
     <div class="chart" id="section-box">
       ${
         s.sectionWidth > 0

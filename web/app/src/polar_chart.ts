@@ -19,9 +19,9 @@ export interface PolarProps {
   peakDBi: number;
 }
 
-const size = 240;
+const size = 200;
 const centre = size / 2;
-const radius = 92;
+const radius = 76;
 const depthDB = 30;
 
 /** Gain along a circle, rings each 10 dB down from the antenna's peak. */
@@ -66,7 +66,7 @@ export function polarChart(p: PolarProps) {
       return svg`<text class="level" x=${at.x} y=${at.y} text-anchor="middle">${fixed(p.peakDBi - down, down === 0 ? 1 : 0)}</text>`;
     })}
     ${around.map(([deg, name]) => {
-      const at = text(deg, radius + 13);
+      const at = text(deg, radius + 12);
       return svg`<text x=${at.x} y=${at.y} text-anchor="middle">${name}</text>`;
     })}
   </svg>`;

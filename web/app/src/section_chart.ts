@@ -60,9 +60,10 @@ export function sectionChart(p: SectionProps, on: SectionEvents) {
     >
       <title>${entered(section)}</title>
       ${axes(x, y, step, least, most, section.distance_km, widthPx, heightPx)}
+      <clipPath id="plot"><rect x=${margins.left} y="0" width=${widthPx - margins.left - margins.right} height=${heightPx - margins.bottom} /></clipPath>
       ${layers(points, x, y, heightPx - margins.bottom)}
       ${worstMark(section, x, y)}
-      ${ends(section, p.masts, x, y)}
+      ${ends(section, x, y)}
       ${at ? cursor(at, x, y, heightPx) : nothing}
     </svg>
     ${p.masts.map((mast, end) => handle(section, mast, end as 0 | 1, x, y, on))}
@@ -125,7 +126,7 @@ function axes(
   height: number,
 ) {
   const kmStep = stepFor(km, Math.max(2, width / 130));
-  const lastKm = x(km) - 26;
+  const lastKm = x(km) - 62;
   return svg`
     <g class="axis">
       <text x="4" y="13">${words.masl}</text>
@@ -154,13 +155,13 @@ function layers(points: readonly Point[], x: Scale, y: Scale, floorPx: number) {
   const whole = around(1);
   const floor = `${x(points.at(-1)!.d_km).toFixed(1)} ${floorPx}L${x(0).toFixed(1)} ${floorPx}Z`;
   const bulge = scale(0, 1, floorPx, floorPx + y(1) - y(0));
-  return svg`
+  return svg`<g clip-path="url(#plot)">
     <path class="zone" d=${band(...around(0.6))} />
     <path class="cover" d=${band(coverLine, groundLine)} />
     <path class="ground" d=${`M${run(groundLine)}L${floor}`} />
     <path class="bulge" d=${`M${points.map((p) => `${x(p.d_km).toFixed(1)} ${bulge(p.bulge_m).toFixed(1)}`).join('L')}Z`} />
     <path class="whole" d=${`M${run(whole[0])}M${run(whole[1])}`} />
-    <path class="ray" d=${`M${run((p) => p.ray_m, [points[0]!, points.at(-1)!])}`} />`;
+    <path class="ray" d=${`M${run((p) => p.ray_m, [points[0]!, points.at(-1)!])}`} /></g>`;
 }
 
 function worstMark(s: Section, x: Scale, y: Scale) {
@@ -177,16 +178,10 @@ function worstMark(s: Section, x: Scale, y: Scale) {
   </g>`;
 }
 
-function ends(s: Section, masts: readonly [Mast, Mast], x: Scale, y: Scale) {
-  return masts.map((mast, end) => {
-    const p = end === 0 ? s.points[0]! : s.points.at(-1)!;
-    const px = x(p.d_km);
-    return svg`<g class="mast">
-      <line x1=${px} x2=${px} y1=${y(p.ground_m)} y2=${y(p.ray_m)} />
-      <text x=${px + (end === 0 ? 10 : -10)} y=${Math.max(y(p.ray_m) - 10, margins.top + 8)}
-        text-anchor=${end === 0 ? 'start' : 'end'}>${mast.name}, ${words.m(metres(mast.aboveM))}</text>
-    </g>`;
-  });
+function ends(s: Section, x: Scale, y: Scale) {
+  return [s.points[0]!, s.points.at(-1)!].map(
+    (p) => svg`<line class="mast" x1=${x(p.d_km)} x2=${x(p.d_km)} y1=${y(p.ground_m)} y2=${y(p.ray_m)} />`,
+  );
 }
 
 function cursor(p: Point, x: Scale, y: Scale, height: number) {

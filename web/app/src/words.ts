@@ -113,6 +113,7 @@ export const en = {
   sectionWaiting: 'Cutting the section…',
   sectionLabel: (from: string, to: string) => `Section from ${from} to ${to}`,
   sectionKeys: 'Arrow keys move the cursor, with Shift in tens; Home and End go to the ends, Escape takes it away.',
+  sectionWay: (km: string, az: string, back: string) => `${km} km, ${az}° there, ${back}° back`,
   masl: 'm asl',
   cursor: (km: string, ground: string, over: string, ratio: string) =>
     `${km} km: ground ${ground} m asl, ray ${over}, ${ratio} of the first Fresnel radius`,
@@ -125,11 +126,10 @@ export const en = {
   heightAt: (who: string) => `Antenna height at ${who}`,
   aboveGround: (m: string) => `${m} m above ground`,
   heightSet: (who: string, m: string) => `${who}: antenna at ${m} m`,
-  legendGround: 'ground on the curved Earth',
+  legendGround: 'ground',
   legendCover: 'cover',
-  legendBulge: 'the Earth’s bulge',
-  legendRay: 'ray',
-  legendZone: '0.6 of the first Fresnel zone, dotted the whole',
+  legendBulge: 'Earth’s bulge',
+  legendZone: '0.6 F1, dotted F1',
   sectionTable: 'The section as a table',
   from: 'From',
 
