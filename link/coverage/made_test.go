@@ -88,7 +88,7 @@ var shapes = map[string]func(east, north float64) float64{
 	"level": func(_, _ float64) float64 { return 100 },
 	"ramp":  func(east, north float64) float64 { return 500 + 0.01*east + 0.007*north },
 	"bowl":  func(east, north float64) float64 { return (east*east + north*north) * 2e-7 },
-	"dome":  func(east, north float64) float64 { return 800 - (east*east+north*north)*1e-6 },
+	"dome":  func(east, north float64) float64 { return 800 - (east*east+north*north)*4e-7 },
 	"bulge": func(east, north float64) float64 { return (east*east + north*north) / 2 / 8.9e6 },
 	"stairs": func(east, north float64) float64 {
 		return 10 * math.Floor(math.Hypot(east, north)/500)
