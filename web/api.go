@@ -30,6 +30,7 @@ func (s *Server) serveAPI(r chi.Router) error {
 	s.registerAntenna(api)
 	s.registerHeights(api)
 	s.registerGround(api)
+	s.registerCover(api)
 	s.registerLayers(api)
 	s.registerPlace(api)
 	s.registerFiles(api)

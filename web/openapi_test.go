@@ -30,7 +30,8 @@ func TestOpenAPI(t *testing.T) {
 	}
 }
 
-// TestExamples runs every operation with the examples of its description; each must succeed.
+// TestExamples runs every operation with the examples of its description; each must succeed. The number
+// of a job and the version of the file are those that there are.
 func TestExamples(t *testing.T) {
 	for path, item := range serve(t, demo(t)).api.Paths {
 		for method, op := range map[string]*huma.Operation{http.MethodGet: item.Get, http.MethodPut: item.Put, http.MethodPost: item.Post, http.MethodDelete: item.Delete} {
@@ -38,8 +39,12 @@ func TestExamples(t *testing.T) {
 				continue
 			}
 			t.Run(op.OperationID, func(t *testing.T) {
-				s := serve(t, demo(t))
-				a := ask(s, method, exampleTarget(t, path, op), exampleBody(t, s, op))
+				s := serve(t, smallCover(t))
+				target := exampleTarget(t, path, op)
+				if strings.Contains(path, "{id}") {
+					target = strings.Replace(target, "0011223344556677", exampleJob(t, s, method), 1)
+				}
+				a := ask(s, method, target, exampleBody(t, s, op))
 				if a.status/100 != 2 {
 					t.Errorf("status %d: %.800s", a.status, a.body)
 				}
@@ -76,6 +81,15 @@ func exampleTarget(t *testing.T, path string, op *huma.Operation) string {
 		}
 	}
 	return path + "?" + query.Encode()
+}
+
+// exampleJob starts a coverage job, and waits for its end unless it is to be cancelled.
+func exampleJob(t *testing.T, s *Server, method string) string {
+	job := send[CoverJob](t, s, http.StatusOK, http.MethodPost, "/api/coverage", CoverBody{Site: "Hallin Top/gauges"})
+	if method != http.MethodDelete {
+		ended(t, s, job.ID)
+	}
+	return job.ID
 }
 
 // exampleBody is the example of a body, its version of the file the one the file has.

@@ -9,6 +9,7 @@ import (
 	"log"
 	"net"
 	"net/http"
+	"strings"
 	"time"
 
 	"github.com/danielgtaylor/huma/v2"
@@ -44,6 +45,7 @@ type Server struct {
 	log   *log.Logger
 	shelf *shelf
 	tiles *tileStore
+	jobs  coverJobs
 	api   *huma.OpenAPI
 	http.Handler
 }
@@ -62,8 +64,11 @@ func New(o Options) (*Server, error) {
 	return s, nil
 }
 
-// Close closes the rasters. No request may be at work any more.
-func (s *Server) Close() { s.shelf.close() }
+// Close ends all jobs and closes the rasters. No request may be at work any more.
+func (s *Server) Close() {
+	s.jobs.close()
+	s.shelf.close()
+}
 
 func (s *Server) routes() (http.Handler, error) {
 	r := chi.NewMux()
@@ -75,11 +80,23 @@ func (s *Server) routes() (http.Handler, error) {
 	r.Get("/", s.servePage)
 	var err error
 	r.Group(func(r chi.Router) {
-		r.Use(middleware.ThrottleBacklog(maxAtOnce, maxWaiting, waitTime), asJSON, middleware.Timeout(answerTimeout))
-		r.Get("/tiles/{kind}/{ground}/{z}/{x}/{y}.png", s.serveTile)
+		r.Use(bounded, asJSON)
+		r.Get("/tiles/{kind}/{source}/{z}/{x}/{y}.png", s.serveTile)
 		err = s.serveAPI(r)
 	})
 	return r, err
+}
+
+// bounded lets so many requests work at once, each for so long. A stream of events only waits.
+func bounded(next http.Handler) http.Handler {
+	inTime := middleware.ThrottleBacklog(maxAtOnce, maxWaiting, waitTime)(middleware.Timeout(answerTimeout)(next))
+	return http.HandlerFunc(func(w http.ResponseWriter, r *http.Request) {
+		if strings.HasSuffix(r.URL.Path, "/events") {
+			next.ServeHTTP(w, r)
+			return
+		}
+		inTime.ServeHTTP(w, r)
+	})
 }
 
 // recovered turns a panic into an answer and a line of the log, so that the server goes on.
@@ -103,7 +120,7 @@ func (s *Server) recovered(next http.Handler) http.Handler {
 // seconds. It closes the listener.
 func (s *Server) Serve(ctx context.Context, on net.Listener) error {
 	server := &http.Server{
-		Handler: s, ErrorLog: s.log, ReadHeaderTimeout: readTimeout, ReadTimeout: readTimeout, IdleTimeout: idleTimeout, MaxHeaderBytes: maxHeaderBytes,
+		Handler: s, ErrorLog: s.log, ReadHeaderTimeout: readTimeout, IdleTimeout: idleTimeout, MaxHeaderBytes: maxHeaderBytes,
 		BaseContext: func(net.Listener) context.Context { return ctx },
 	}
 	stopped := make(chan error, 1)

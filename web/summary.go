@@ -22,6 +22,7 @@ type PlanSummary struct {
 	Antennas []AntennaSummary `json:"antennas"`
 	Radios   []string         `json:"radios"`
 	Feeders  []string         `json:"feeders"`
+	Coverage []CoverSummary   `json:"coverage" doc:"maps that the plan asks for"`
 	Rasters  []RasterSummary  `json:"rasters" doc:"elevation in its order, then cover"`
 }
 
@@ -91,6 +92,12 @@ type AntennaSummary struct {
 	Kind string `json:"kind"`
 }
 
+// A CoverSummary is an entry of the plan's coverage list.
+type CoverSummary struct {
+	Site    string  `json:"site"`
+	RangeKm float64 `json:"range_km"`
+}
+
 // A RasterSummary is a raster of the ground.
 type RasterSummary struct {
 	File   string     `json:"file" doc:"as the plan names it"`
@@ -105,7 +112,7 @@ type RasterSummary struct {
 func summaryOf(n *plan.Network) PlanSummary {
 	p := n.Plan()
 	out := PlanSummary{
-		Title: p.Title, Method: p.Method, Sites: []SiteSummary{}, Links: []LinkSummary{}, Channels: []ChannelSummary{}, Antennas: []AntennaSummary{},
+		Title: p.Title, Method: p.Method, Sites: []SiteSummary{}, Links: []LinkSummary{}, Coverage: []CoverSummary{}, Channels: []ChannelSummary{}, Antennas: []AntennaSummary{},
 		Radios: slices.AppendSeq([]string{}, maps.Keys(p.Radios)), Feeders: slices.AppendSeq([]string{}, maps.Keys(p.Feeders)), Rasters: rastersOf(n),
 	}
 	slices.Sort(out.Radios)
@@ -115,6 +122,9 @@ func summaryOf(n *plan.Network) PlanSummary {
 	}
 	for _, l := range p.Links.List {
 		out.Links = append(out.Links, LinkSummary{l.Name, l.From, l.To, l.Channel, l.OneWay})
+	}
+	for _, c := range p.Coverage {
+		out.Coverage = append(out.Coverage, CoverSummary{c.Site, float64(c.Range) / 1000})
 	}
 	for _, name := range slices.Sorted(maps.Keys(p.Channels)) {
 		c := p.Channel(name)

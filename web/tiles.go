@@ -8,11 +8,10 @@ import (
 	"image/png"
 	"math"
 	"net/http"
+	"slices"
 	"strconv"
 
-	"fellreach/link/plan"
 	"fellreach/terrain"
-	"fellreach/terrain/raster"
 
 	"github.com/danielgtaylor/huma/v2"
 	"github.com/go-chi/chi/v5"
@@ -77,14 +76,15 @@ func tilePlace(x, y float64) orb.Point {
 	return orb.Point{360*x - 180, math.Atan(math.Sinh(math.Pi*(1-2*y))) * 180 / math.Pi}
 }
 
-// A tileAddress names a tile. Its ground is the hash of what is drawn, so that it never changes.
+// A tileAddress names a tile. Its source is the hash of the ground, or the number of the job, that it
+// shows, so that it never changes.
 type tileAddress struct {
-	kind, ground string
+	kind, source string
 	z, x, y      int
 }
 
 func addressOf(r *http.Request) (tileAddress, error) {
-	a := tileAddress{kind: chi.URLParam(r, "kind"), ground: chi.URLParam(r, "ground")}
+	a := tileAddress{kind: chi.URLParam(r, "kind"), source: chi.URLParam(r, "source")}
 	for name, to := range map[string]*int{"z": &a.z, "x": &a.x, "y": &a.y} {
 		number, err := strconv.Atoi(chi.URLParam(r, name))
 		if err != nil {
@@ -92,13 +92,13 @@ func addressOf(r *http.Request) (tileAddress, error) {
 		}
 		*to = number
 	}
-	if a.kind != "ground" && a.kind != "filled" || a.z < 0 || a.z > maxZoom || a.x < 0 || a.y < 0 || a.x >= 1<<a.z || a.y >= 1<<a.z {
-		return a, problem(http.StatusNotFound, fmt.Sprintf("there is no such tile: they are /tiles/ground/… and /tiles/filled/… with z from 0 to %d", maxZoom))
+	if !slices.Contains([]string{"ground", "filled", "coverage"}, a.kind) || a.z < 0 || a.z > maxZoom || a.x < 0 || a.y < 0 || a.x >= 1<<a.z || a.y >= 1<<a.z {
+		return a, problem(http.StatusNotFound, fmt.Sprintf("there is no such tile: they are /tiles/ground/…, /tiles/filled/… and /tiles/coverage/… with z from 0 to %d", maxZoom))
 	}
 	return a, nil
 }
 
-// serveTile answers with an elevation tile.
+// serveTile answers with a tile of the ground or of a coverage map.
 func (s *Server) serveTile(w http.ResponseWriter, r *http.Request) {
 	address, err := addressOf(r)
 	if err == nil {
@@ -107,7 +107,7 @@ func (s *Server) serveTile(w http.ResponseWriter, r *http.Request) {
 			h := w.Header()
 			h.Set("Content-Type", "image/png")
 			h.Set("Cache-Control", "max-age=31536000, immutable")
-			h.Set("ETag", fmt.Sprintf(`"%s-%s-%d-%d-%d"`, address.kind, address.ground, address.z, address.x, address.y))
+			h.Set("ETag", fmt.Sprintf(`"%s-%s-%d-%d-%d"`, address.kind, address.source, address.z, address.x, address.y))
 			serveBytes(w, r, tile)
 			return
 		}
@@ -116,9 +116,16 @@ func (s *Server) serveTile(w http.ResponseWriter, r *http.Request) {
 	refuse(w, p.Status, p.Detail)
 }
 
-// drawTile cuts a tile from the ground.
 func (s *Server) drawTile(a tileAddress) ([]byte, error) {
-	v, err := s.shelf.takeGround(a.ground)
+	if a.kind == "coverage" {
+		return s.drawCoverTile(a)
+	}
+	return s.drawGroundTile(a)
+}
+
+// drawGroundTile cuts a tile from the ground.
+func (s *Server) drawGroundTile(a tileAddress) ([]byte, error) {
+	v, err := s.shelf.takeGround(a.source)
 	if err != nil {
 		return nil, err
 	}
@@ -133,21 +140,11 @@ func (s *Server) drawTile(a tileAddress) ([]byte, error) {
 		}
 	}
 	bounds, _ := v.ground.bounds()
-	grid, err := heightsOf(v.network, a, bounds.Center().Lat())
+	grid, err := v.network.Ground.Heights(a.picture(bounds.Center().Lat()))
 	if err != nil {
 		return nil, problem(http.StatusInternalServerError, err.Error())
 	}
 	return encodeTile(grid, hole)
-}
-
-func heightsOf(n *plan.Network, a tileAddress, middleLat float64) (*terrain.Grid, error) {
-	size := math.Exp2(float64(a.z))
-	return n.Ground.Heights(raster.Picture{
-		Cols: tilePixels, Rows: tilePixels, PixelM: pixelSizeM(a.z, middleLat),
-		Place: func(col, row float64) orb.Point {
-			return tilePlace((float64(a.x)+(col+0.5)/tilePixels)/size, (float64(a.y)+(row+0.5)/tilePixels)/size)
-		},
-	})
 }
 
 // encodeTile writes heights as colours, in steps of 1/256 m; a hole's height takes the place of none.
