@@ -15,6 +15,7 @@ type Request struct {
 type Brief struct {
 	method    string
 	f, lambda float64
+	rootF     float64 // cube root of f
 	lbfs1     float64 // free space over 1 km
 	coupling  float64 // the part of the ducting loss that all paths share, less 20 log(1 km)
 	earth     SmoothEarth
@@ -37,7 +38,7 @@ type Region struct{ MostKm, LeastLatDeg float64 }
 func NewBrief(m Model, freqHz, n0 float64, within Region, requests []Request) *Brief {
 	f := freqHz / 1e9
 	b := &Brief{
-		method: m.Name, f: f, lambda: diffractionWavelengthM(freqHz), lbfs1: lineOfSightDB(f, 1), coupling: couplingBasisDB(f),
+		method: m.Name, f: f, rootF: math.Cbrt(f), lambda: diffractionWavelengthM(freqHz), lbfs1: lineOfSightDB(f, 1), coupling: couplingBasisDB(f),
 		earth: NewSmoothEarth(freqHz, 1), requests: requests,
 	}
 	if m.Name != P1812.Name {
@@ -74,7 +75,7 @@ type briefPath struct {
 // to the last digits.
 func log10OnePlus(x float64) float64 {
 	if x > 1e-4 {
-		return math.Log10(1 + x)
+		return log10(1 + x)
 	}
 	return x * (1 - x*(0.5-x*(1.0/3-x*0.25))) / math.Ln10
 }
@@ -84,7 +85,7 @@ func log10OnePlus(x float64) float64 {
 func (b *Brief) Loss(o *Outline, g Ground, shares Shares, out []Combined) {
 	p := briefPath{Brief: b, Outline: o, ground: g, shares: shares, dlt: o.Dlt, dlr: o.Dlr}
 	rise := (o.Hts - o.Hrs) / 1000 / o.LengthKm
-	logD := math.Log10(o.LengthKm)
+	logD := log10(o.LengthKm)
 	p.lbfs = b.lbfs1 + 20*logD + 10*log10OnePlus(rise*rise) // of the slant range
 	switch {
 	case b.method == FreeSpace.Name:
@@ -225,11 +226,11 @@ func (p *briefPath) withDucting(i int, lb0p, lbd, logD float64) float64 {
 func (p *briefPath) leastDuctingDB(logD float64) float64 {
 	least := p.coupling + 20*logD
 	if p.TransHorizon {
-		least = p.coupling + 20*math.Log10(p.Dlt+p.Dlr)
+		least = p.coupling + 20*log10(p.Dlt+p.Dlr)
 	}
 	if p.omega >= 0.75 {
 		least -= 2 * mostCoastDB
 	}
 	theta := 1000*p.LengthKm/p.Ae + min(p.ThetaT, 0) + min(p.ThetaR, 0)
-	return least + ductAngleDB(p.f, p.Ae, theta)
+	return least + ductAngleDB(p.rootF, p.Ae, theta)
 }

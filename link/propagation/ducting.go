@@ -50,7 +50,7 @@ func (u *duct) lossDB(p float64) float64 { return u.couplingDB() + u.alongDB(p) 
 // air, (~47) to (~50).
 func (u *duct) couplingDB() float64 {
 	h := &u.horizons
-	return couplingBasisDB(u.f) + 20*math.Log10(h.dlt+h.dlr) +
+	return couplingBasisDB(u.f) + 20*log10(h.dlt+h.dlr) +
 		u.shieldingDB(h.thetaT, h.dlt) + u.shieldingDB(h.thetaR, h.dlr) +
 		u.coastDB(u.dct, h.dlt, u.hts) + u.coastDB(u.dcr, h.dlr, u.hrs)
 }
@@ -61,7 +61,7 @@ func couplingBasisDB(f float64) float64 {
 	if f < 0.5 {
 		alf = 45.375 - 137.0*f + 92.5*f*f
 	}
-	return 102.45 + 20*math.Log10(f) + alf
+	return 102.45 + 20*log10(f) + alf
 }
 
 // shieldingDB returns As, the diffraction loss by the ground that shields an antenna whose horizon
@@ -71,7 +71,7 @@ func (u *duct) shieldingDB(theta, dl float64) float64 {
 	if over <= 0 {
 		return 0
 	}
-	return 20*math.Log10(1+0.361*over*math.Sqrt(u.f*dl)) + 0.264*over*math.Cbrt(u.f)
+	return 20*log10(1+0.361*over*math.Sqrt(u.f*dl)) + 0.264*over*math.Cbrt(u.f)
 }
 
 // coastDB returns Ac, the correction for coupling over the sea of an antenna dc km from the coast at
@@ -86,7 +86,7 @@ func (u *duct) coastDB(dc, dl, hs float64) float64 {
 // alongDB returns Ad(p), the loss along the anomalous structure by angle and time, (~51) to (~56).
 func (u *duct) alongDB(p float64) float64 {
 	h := &u.horizons
-	return ductAngleDB(u.f, h.ae, u.thetaPrime()) + ductTimeDB(p, u.d, u.logBeta())
+	return ductAngleDB(math.Cbrt(u.f), h.ae, u.thetaPrime()) + ductTimeDB(p, u.d, u.logBeta())
 }
 
 // ductTimeDB returns A(p), the time variability of ducting over d km by the logarithm of beta, (~53)
@@ -94,7 +94,7 @@ func (u *duct) alongDB(p float64) float64 {
 func ductTimeDB(p, d, logBeta float64) float64 {
 	gamma := 1.076 / math.Pow(2.0058-logBeta, 1.012) *
 		math.Exp(-(9.51-4.8*logBeta+0.198*logBeta*logBeta)*1e-6*math.Pow(d, 1.13))
-	x := math.Log10(p) - logBeta // of p/beta
+	x := log10(p) - logBeta // of p/beta
 	return -12 + (1.2+3.7e-3*d)*x + 12*math.Pow(10, gamma*x)
 }
 
@@ -104,8 +104,8 @@ func (u *duct) thetaPrime() float64 {
 	return 1000*u.d/h.ae + min(h.thetaT, 0.1*h.dlt) + min(h.thetaR, 0.1*h.dlr)
 }
 
-// ductAngleDB returns the loss over an angular distance theta, mrad, (~51).
-func ductAngleDB(f, ae, theta float64) float64 { return 5e-5 * ae * math.Cbrt(f) * theta }
+// ductAngleDB returns the loss over an angular distance theta, mrad, with the cube root of f, (~51).
+func ductAngleDB(rootF, ae, theta float64) float64 { return 5e-5 * ae * rootF * theta }
 
 // mostCoastDB is the most that [duct.coastDB] takes off at one end.
 const mostCoastDB = 6
@@ -113,7 +113,7 @@ const mostCoastDB = 6
 // mostLogBeta is the logarithm of the largest beta0 at a latitude and nearer to the pole: mu1 and its
 // product with mu4 are 1 at most, as are mu2 and mu3.
 func mostLogBeta(latDeg float64) float64 {
-	return max(1.67-0.015*math.Abs(latDeg), math.Log10(4.17))
+	return max(1.67-0.015*math.Abs(latDeg), log10(4.17))
 }
 
 // leastDuctTimeDB is a bound of A(p) from below on paths of up to mostKm where beta is at most
@@ -121,7 +121,7 @@ func mostLogBeta(latDeg float64) float64 {
 // beta bounds it, with the lesser slope of short paths and the lesser exponent of long ones;
 // elsewhere the power is positive.
 func leastDuctTimeDB(p, mostKm, logBeta float64) float64 {
-	x := math.Log10(p) - logBeta
+	x := log10(p) - logBeta
 	if x < 0 || mostKm > 300 {
 		return (1.2+3.7e-3*mostKm)*min(x, 0) - 12
 	}
@@ -131,7 +131,7 @@ func leastDuctTimeDB(p, mostKm, logBeta float64) float64 {
 // leastDB is a bound of the loss from below that does not need the heights over the smooth surface.
 // leastTime is one of A(p).
 func (u *duct) leastDB(leastTime float64) float64 {
-	return u.couplingDB() + ductAngleDB(u.f, u.horizons.ae, u.thetaPrime()) + leastTime
+	return u.couplingDB() + ductAngleDB(math.Cbrt(u.f), u.horizons.ae, u.thetaPrime()) + leastTime
 }
 
 // logBeta returns the logarithm of beta, beta0 with its corrections for the geometry of the path
@@ -139,11 +139,11 @@ func (u *duct) leastDB(leastTime float64) float64 {
 func (u *duct) logBeta() float64 {
 	alpha := max(-0.6-3.5e-9*math.Pow(u.d, 3.1)*u.time.tau, -3.4)
 	roots := math.Sqrt(u.hte) + math.Sqrt(u.hre)
-	logMu2 := min(0, alpha*math.Log10(500/u.horizons.ae*u.d*u.d/(roots*roots)))
+	logMu2 := min(0, alpha*log10(500/u.horizons.ae*u.d*u.d/(roots*roots)))
 	logMu3 := 0.0
 	if u.hm > 10 {
 		di := min(u.d-u.horizons.dlt-u.horizons.dlr, 40)
 		logMu3 = -4.6e-5 * (u.hm - 10) * (43 + 6*di) / math.Ln10
 	}
-	return math.Log10(u.time.beta0) + logMu2 + logMu3
+	return log10(u.time.beta0) + logMu2 + logMu3
 }

@@ -134,9 +134,10 @@ func (e SmoothEarth) residueDB(p SmoothPath, a, admittance float64) float64 {
 // distanceTermDB returns FX for the normalized distance x.
 func distanceTermDB(x float64) float64 {
 	if x >= 1.6 {
-		return 11 + 10*math.Log10(x) - 17.6*x
+		return 11 + 10*log10(x) - 17.6*x
 	}
-	return -20*math.Log10(x) - 5.6488*math.Pow(x, 1.425)
+	logX := math.Log(x)
+	return -20/math.Ln10*logX - 5.6488*math.Exp(1.425*logX)
 }
 
 // heightGainDB returns G for b = beta Y, Y being the normalized height, which already holds beta
@@ -144,9 +145,9 @@ func distanceTermDB(x float64) float64 {
 func heightGainDB(b, k float64) float64 {
 	var g float64
 	if b > 2 {
-		g = 17.6*math.Sqrt(b-1.1) - 5*math.Log10(b-1.1) - 8
+		g = 17.6*math.Sqrt(b-1.1) - 5*log10(b-1.1) - 8
 	} else {
-		g = 20 * math.Log10(b+0.1*b*b*b)
+		g = 20 * log10(b+0.1*b*b*b)
 	}
-	return max(g, 2+20*math.Log10(k))
+	return max(g, 2+20*log10(k))
 }
