@@ -57,6 +57,7 @@ func newLoss(t *terminal) *cobra.Command {
 			if !cmd.Flags().Changed("latitude") && method.Name == propagation.P1812.Name {
 				loss.Notes = append(loss.Notes, fmt.Sprintf("no --latitude was given: %g degrees is taken", v.latitude))
 			}
+			loss.Notes = append(loss.Notes, v.idle(method)...)
 			return out.write(t, func(w io.Writer) error {
 				if out.format == "json" {
 					return report.LossJSON(w, method, loss)
@@ -85,6 +86,17 @@ func (v *lossFlags) flags(cmd *cobra.Command) {
 	f.Float64Var(&v.n0, "n0", 325, "sea-level surface refractivity, N-units")
 	f.Float64Var(&v.deltaN, "delta-n", 45, "fall of refractivity over the lowest kilometre, N-units per km")
 	f.StringVar(&v.method, "method", propagation.P1812.Name, "free-space, p526 or p1812")
+}
+
+// idle warns of what was asked and changes nothing.
+func (v *lossFlags) idle(method propagation.Model) []string {
+	switch {
+	case method.Name != propagation.P1812.Name && (v.time != 50 || v.locations != 50):
+		return []string{fmt.Sprintf("method %s knows neither --time nor --locations: its loss is the median", method.Name)}
+	case v.locations != 50 && v.spread == 0:
+		return []string{"--locations changes nothing without a --location-spread above 0 dB"}
+	}
+	return nil
 }
 
 // path reads the profile and sets it in the flags' circumstances.

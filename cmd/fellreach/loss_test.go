@@ -115,3 +115,25 @@ func TestLossKnowsPolarization(t *testing.T) {
 		t.Errorf("vertical %.1f dB, horizontal %.1f dB", vertical.LossDB, horizontal.LossDB)
 	}
 }
+
+// What is asked and changes nothing is told: times and locations of a method without them, and
+// locations without a spread.
+func TestLossTellsIdleFlags(t *testing.T) {
+	path := write(t, t.TempDir(), "profile.csv", smallProfile)
+	for _, tc := range []struct {
+		flags string
+		want  string // empty: nothing is told
+	}{
+		{"--method p526 --time 1%", "method p526 knows neither"},
+		{"--method free-space --locations 90% --location-spread 5dB", "method free-space knows neither"},
+		{"--method p526 --time 50%", ""},
+		{"--locations 90%", "changes nothing without a --location-spread"},
+		{"--locations 90% --location-spread 5dB --time 1%", ""},
+	} {
+		args := append([]string{"loss", path, "--frequency", "151.5 MHz", "--latitude", "50", "--format", "json"}, strings.Fields(tc.flags)...)
+		told := strings.Join(decoded[lossAnswer](t, succeeds(t, exitDone, args...)).Warnings, "; ")
+		if (tc.want == "") != (told == "") || !strings.Contains(told, tc.want) {
+			t.Errorf("%s: told %q, want %q", tc.flags, told, tc.want)
+		}
+	}
+}
