@@ -120,17 +120,20 @@ func TestCoverBands(t *testing.T) {
 		t.Fatalf("%v, %v", err, a.header)
 	}
 	site := get[PlanAnswer](t, s, "/api/plan").Sites[1].Place
+	var drawn, want float64
 	for _, f := range layer.Features {
 		for _, polygon := range f.Geometry.(orb.MultiPolygon) {
 			if d, _, _ := raster.Inverse(polygon[0][0], orb.Point{site.Lon, site.Lat}); d > 3100 {
 				t.Errorf("a corner lies %g m from the site", d)
 			}
 		}
-		// A degree is 111.2 km of latitude and 75.2 km of longitude at 47.58 degrees. The polygons leave
-		// patches of few cells out, and so fill small holes.
-		if km2, want := planar.Area(f.Geometry)*111.2*75.2, f.Properties["area_km2"].(float64); math.Abs(km2/want-1) > 0.2 {
-			t.Errorf("the polygons have %g km2, the band %v", km2, f.Properties["area_km2"])
-		}
+		// A degree is 111.2 km of latitude and 75.2 km of longitude at 47.58 degrees. Patches of few cells
+		// belong to the band around them in the polygons, so that only all bands together compare.
+		drawn += planar.Area(f.Geometry) * 111.2 * 75.2
+		want += f.Properties["area_km2"].(float64)
+	}
+	if math.Abs(drawn/want-1) > 0.05 {
+		t.Errorf("the polygons have %g km2, the bands %g", drawn, want)
 	}
 }
 
