@@ -24,6 +24,7 @@ type Cell struct {
 	points   [mostOwn]sample
 	own      []sample // the last of them, on the own bearing
 	zoneOf   [mostOwn + 1]terrain.Zone
+	covered  bool // some own point carries cover
 
 	aslM, coverM [mostOwn + 1]float64
 
@@ -63,7 +64,7 @@ func (c *Cell) set(p place) bool {
 func (c *Cell) sample(count int, east, north float64) bool {
 	w := c.walk
 	w.disc.Sample(w.ownRay(count, 1000*c.d, east, north), c.aslM[:count+1], c.coverM[:count+1], c.zoneOf[:count+1])
-	c.own, c.CoverM = c.points[:count], c.coverM[count]
+	c.own, c.CoverM, c.covered = c.points[:count], c.coverM[count], false
 	for i := range c.own {
 		d, h, cover := c.d-float64(count-i)*w.stepKm, c.aslM[i], c.coverM[i]
 		if math.IsNaN(h) {
@@ -76,6 +77,7 @@ func (c *Cell) sample(count int, east, north float64) bool {
 		if cover > 0 && 1000*d < w.ClearingM {
 			cover = 0
 		}
+		c.covered = c.covered || cover > 0
 		c.own[i] = sample{d, h, h + cover}
 	}
 	return !math.IsNaN(c.aslM[count])
@@ -95,10 +97,16 @@ func (c *Cell) findOutline(groundM float64) {
 	}
 	c.obstacleKm = math.NaN()
 	c.findZones()
-	c.findHorizons()
+	bare := w.bare.sight(d, o.Hrs, c.own, false)
+	c.setHorizons(bare)
 	c.fit()
 	c.findObstructions()
-	o.Slopes = c.cladSkyline().slopes(d, o.Hrs, w.clearLimit/d, c.own, true)
+	if w.wooded || c.covered {
+		s := c.cladSkyline()
+		o.Slopes = s.slopes(s.sight(d, o.Hrs, c.own, true), d, o.Hrs, w.clearLimit/d, c.own, true)
+	} else {
+		o.Slopes = w.bare.slopes(bare, d, o.Hrs, w.clearLimit/d, c.own, false)
+	}
 }
 
 // cladSkyline is the skyline with cover; without cover on the radial it is the bare one.
@@ -109,17 +117,14 @@ func (c *Cell) cladSkyline() *skyline {
 	return &c.walk.bare
 }
 
-func (c *Cell) findHorizons() {
+func (c *Cell) setHorizons(v sight) {
 	o, s := &c.Outline, &c.walk.bare
-	ray := s.ray(c.d, o.Hrs)
-	steepest, km := s.fromSite(c.own, false)
-	if steepest > ray {
-		o.TransHorizon, o.ThetaT, o.Dlt = true, propagation.ElevationMrad(steepest), km
-		slope, km := s.fromCell(c.d, o.Hrs, c.own, false)
-		o.ThetaR, o.Dlr = propagation.ElevationMrad(slope-2*s.drop*c.d), c.d-km
+	if v.fromSite > v.ray {
+		o.TransHorizon, o.ThetaT, o.Dlt = true, propagation.ElevationMrad(v.fromSite), v.siteKm
+		o.ThetaR, o.Dlr = propagation.ElevationMrad(v.fromCell-2*s.drop*c.d), c.d-v.cellKm
 		return
 	}
-	o.ThetaT = propagation.ElevationMrad(ray)
+	o.ThetaT = propagation.ElevationMrad(v.ray)
 	o.ThetaR = propagation.ElevationMrad((o.Hts-o.Hrs)/c.d - s.drop*c.d)
 }
 

@@ -10,7 +10,8 @@ var _ propagation.Ground = (*Cell)(nil)
 
 // SlopesBeta implements [propagation.Ground].
 func (c *Cell) SlopesBeta() propagation.Slopes {
-	return c.walk.beta.slopes(c.d, c.Outline.Hrs, c.walk.clearLimit/c.d, c.own, true)
+	s, antennaM := &c.walk.beta, c.Outline.Hrs
+	return s.slopes(s.sight(c.d, antennaM, c.own, true), c.d, antennaM, c.walk.clearLimit/c.d, c.own, true)
 }
 
 // LevelSlopes implements [propagation.Ground].

@@ -99,20 +99,38 @@ func (s *skyline) tightest(ray, d, limit float64, own []sample, clad bool) (valu
 	return value, km
 }
 
-// slopes returns Bullington's slopes to an antenna at d. On a free path tightnesses of limit and
-// more count as endless clearance.
-func (s *skyline) slopes(d, antennaM, limit float64, own []sample, clad bool) propagation.Slopes {
+// A sight is what both ends of a path see of a skyline: the steepest sight lines, lifted, and the
+// points on them. That from the cell is only known where the ray is touched.
+type sight struct {
+	ray              float64
+	fromSite, siteKm float64
+	fromCell, cellKm float64
+	touched          bool
+}
+
+// sight looks to and from an antenna at d.
+func (s *skyline) sight(d, antennaM float64, own []sample, clad bool) (v sight) {
+	v.ray = s.ray(d, antennaM)
+	v.fromSite, v.siteKm = s.fromSite(own, clad)
+	// Either form of the same comparison, whatever rounding makes of it.
+	if v.touched = v.fromSite >= v.ray || v.fromSite+s.drop*d >= (antennaM-s.from)/d; v.touched {
+		v.fromCell, v.cellKm = s.fromCell(d, antennaM, own, clad)
+	}
+	return v
+}
+
+// slopes returns Bullington's slopes for a sight to an antenna at d. On a free path tightnesses of
+// limit and more count as endless clearance.
+func (s *skyline) slopes(v sight, d, antennaM, limit float64, own []sample, clad bool) propagation.Slopes {
 	rise := s.drop * d // what lifting takes off the slopes from the site, and adds to those from the cell
-	steepest, _ := s.fromSite(own, clad)
 	out := propagation.Slopes{
-		Stim: steepest + rise, Str: (antennaM - s.from) / d, Srim: math.Inf(-1), Height: math.Inf(-1),
+		Stim: v.fromSite + rise, Str: (antennaM - s.from) / d, Srim: math.Inf(-1), Height: math.Inf(-1),
 	}
 	if out.Blocked() {
-		slope, _ := s.fromCell(d, antennaM, own, clad)
-		out.Srim = slope - rise
+		out.Srim = v.fromCell - rise
 		return out
 	}
-	if value, _ := s.tightest(s.ray(d, antennaM), d, limit, own, clad); value < limit {
+	if value, _ := s.tightest(v.ray, d, limit, own, clad); value < limit {
 		out.Height = -math.Sqrt(value * d)
 	}
 	return out
