@@ -186,3 +186,30 @@ func TestDiscIsTheGround(t *testing.T) {
 		}
 	}
 }
+
+func TestDiscRefuses(t *testing.T) {
+	far := made{west: 700000, north: 5267000, cell: 25, cols: 50, rows: 50, epsg: 32627, value: func(_, _ float64) float64 { return 1 }}
+	far.edit = func(tiff *GeoTIFF) { tiff.Type, tiff.NoData = Uint8, nil }
+	near := far
+	near.west, near.north = 444000, 5263500
+	bad := utmPlane()
+	bad.value = func(x, _ float64) float64 { return map[bool]float64{true: 30000, false: 100}[x > 445000] }
+	ground := utmPlane().write(t, "a.tif")
+	site := utm(t, 444500, 5263000)
+	for _, tc := range []struct {
+		name string
+		spec Spec
+		at   orb.Point
+		says string
+	}{
+		{"cover elsewhere", Spec{Elevation: []string{ground}, Cover: far.write(t, "far.tif"), Classes: map[int]terrain.Class{1: {}}}, site, "does not overlap the range"},
+		{"class not in the table", Spec{Elevation: []string{ground}, Cover: near.write(t, "near.tif"), Classes: map[int]terrain.Class{2: {}}}, site, "of class 1"},
+		{"no height on Earth", Spec{Elevation: []string{bad.write(t, "bad.tif")}}, site, "no height on Earth"},
+		{"ground elsewhere", Spec{Elevation: []string{ground}}, orb.Point{10, 50}, "do not reach"},
+	} {
+		g := open(t, tc.spec)
+		if _, err := g.Disc(tc.at, 3000); err == nil || !strings.Contains(err.Error(), tc.says) {
+			t.Errorf("%s: error %v, want %q", tc.name, err, tc.says)
+		}
+	}
+}

@@ -51,8 +51,8 @@ func (g *Ground) Disc(site orb.Point, radiusM float64) (*terrain.Disc, error) {
 		return nil, err
 	}
 	var first cellWindow
-	if d.Cover, first, err = g.coverLayer(place); err != nil || d.Cover == nil {
-		return d, err
+	if d.Cover, first, err = g.coverLayer(place); err != nil {
+		return nil, err
 	}
 	if d.Coast, err = g.Coast(d.Places.Nodes()); err != nil {
 		return nil, err
@@ -201,11 +201,13 @@ func (f *file) readStrips(w cellWindow, use func(strip *terrain.Grid, row int) e
 	return nil
 }
 
-// coverLayer reads the part of the cover raster that a mesh covers, nil where there is none.
+// coverLayer reads the part of the cover raster that a mesh covers. A cover raster that lies
+// elsewhere is an error: it was meant for this ground.
 func (g *Ground) coverLayer(place *terrain.Mesh) (*terrain.CoverLayer, cellWindow, error) {
 	w, ok := g.cover.windowOf(place.Nodes())
 	if !ok {
-		return nil, w, nil
+		return nil, w, fmt.Errorf("cover raster %s does not overlap the range: it lies at longitude %.3f to %.3f, latitude %.3f to %.3f; list one that does, or none",
+			g.cover.info.Path, g.cover.info.LonLat[0], g.cover.info.LonLat[2], g.cover.info.LonLat[1], g.cover.info.LonLat[3])
 	}
 	layer := &terrain.CoverLayer{Cols: w.cols, Rows: w.rows, Classes: []terrain.Class{{Zone: terrain.Inland}}, Place: place}
 	index := map[float32]uint8{}
