@@ -97,23 +97,9 @@ func TestMeasuredPathsPrediction(t *testing.T) {
 	seen := deviation{}
 	for _, want := range readTable(t, "measured", "p1812_prediction.csv") {
 		name := want.text("case")
-		r := paths[name]
-		p := Path{
-			Profile: readProfile(t, "measured", "profiles", r.text("profile")+".csv"),
-			FreqHz:  r.num("f_GHz") * 1e9, TxAglM: r.num("htg_m"), RxAglM: r.num("hrg_m"),
-			DeltaN: r.num("DN"), N0: r.num("N0"), LocationPct: 50, TxCoastKm: 500, RxCoastKm: 500,
-			LatDeg: (r.num("tx_lat") + r.num("rx_lat")) / 2,
-		}
-		if math.IsNaN(p.N0) {
-			p.N0 = 325
-		}
-		for i, d := range p.DistKm { // coastal land beyond the stated length of inland
-			if d > r.num("dlm_km") {
-				p.Zone[i] = terrain.Coastal
-			}
-		}
-		if r.num("dtm_km") < 0.9*p.LengthKm() {
-			continue // one row gives a short stretch of land without saying where the sea is
+		p, ok := measuredPath(t, paths[name])
+		if !ok {
+			continue
 		}
 		for _, pct := range []string{"1", "10", "50"} {
 			p.TimePct = map[string]float64{"1": 1, "10": 10, "50": 50}[pct]
@@ -125,6 +111,26 @@ func TestMeasuredPathsPrediction(t *testing.T) {
 		}
 	}
 	seen.log(t)
+}
+
+// measuredPath is a path of the data bank. One row is passed over: it gives a short stretch of land
+// without saying where the sea is.
+func measuredPath(t *testing.T, r row) (p Path, ok bool) {
+	p = Path{
+		Profile: readProfile(t, "measured", "profiles", r.text("profile")+".csv"),
+		FreqHz:  r.num("f_GHz") * 1e9, TxAglM: r.num("htg_m"), RxAglM: r.num("hrg_m"),
+		DeltaN: r.num("DN"), N0: r.num("N0"), LocationPct: 50, TxCoastKm: 500, RxCoastKm: 500,
+		LatDeg: (r.num("tx_lat") + r.num("rx_lat")) / 2,
+	}
+	if math.IsNaN(p.N0) {
+		p.N0 = 325
+	}
+	for i, d := range p.DistKm { // coastal land beyond the stated length of inland
+		if d > r.num("dlm_km") {
+			p.Zone[i] = terrain.Coastal
+		}
+	}
+	return p, r.num("dtm_km") >= 0.9*p.LengthKm()
 }
 
 // tenKm is the published profile of 10 km with 27 points, case 2. Source: as [oneKm].
