@@ -29,7 +29,7 @@ quick: ## Go tests alone, no installation, no network
 	$(GO) test -short ./...
 
 format:
-	@out=$$($(GO) tool gofumpt -l cmd link terrain antenna); test -z "$$out" || { echo "not formatted by gofumpt:"; echo "$$out"; exit 1; }
+	@out=$$($(GO) tool gofumpt -l cmd link terrain antenna web); test -z "$$out" || { echo "not formatted by gofumpt:"; echo "$$out"; exit 1; }
 
 vet:
 	$(GO) vet ./...
@@ -54,4 +54,4 @@ fuzz: ## run each fuzz target for FUZZTIME
 	  done; done
 
 generate: ## write the generated files and golden files anew
-	$(GO) test ./cmd/fellreach ./link/report -update
+	$(GO) test ./cmd/fellreach ./link/report ./web -update

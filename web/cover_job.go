@@ -163,11 +163,7 @@ func (c *coverJobs) close() {
 
 // run computes a job's map.
 func (j *coverJob) run(ctx context.Context, v *version, progress func(done, total int)) (*coverResult, error) {
-	network, err := v.alone()
-	if err != nil {
-		return nil, err
-	}
-	m, err := coverage.Compute(ctx, network.Ground, j.site.Task, coverage.Layers{Loss: true, Margin: true}, progress)
+	m, err := coverage.Compute(ctx, v.network.Ground, j.site.Task, coverage.Layers{Loss: true, Margin: true}, progress)
 	if err != nil {
 		return nil, err
 	}

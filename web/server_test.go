@@ -172,9 +172,11 @@ func TestPanic(t *testing.T) {
 	}
 }
 
-// TestServe asks over a socket, and stops the server.
+// TestServe asks over a socket, and stops the server while a job runs and is watched.
 func TestServe(t *testing.T) {
-	s := serve(t, demo(t))
+	path := demo(t)
+	write(t, path, coverText(t, "40 km", "30 m"))
+	s := serve(t, path)
 	on, err := net.Listen("tcp", "127.0.0.1:0")
 	if err != nil {
 		t.Fatal(err)
@@ -190,6 +192,11 @@ func TestServe(t *testing.T) {
 	if response.StatusCode != 200 {
 		t.Errorf("status %d", response.StatusCode)
 	}
+	events, err := http.Get(fmt.Sprintf("http://%s/api/coverage/%s/events", on.Addr(), start(t, s).ID))
+	if err != nil {
+		t.Fatal(err)
+	}
+	defer events.Body.Close()
 	stop()
 	select {
 	case err := <-ended:

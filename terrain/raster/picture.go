@@ -227,7 +227,7 @@ func (f *file) look(use func(*terrain.Grid)) error {
 // CoarsestM returns the greatest size of pixels, in metres, at which a [Picture] of the ground is quick
 // to read: without limit where the rasters hold overviews or are small.
 func (g *Ground) CoarsestM() float64 {
-	const most = 32 // of every how many cells may be read
+	const most = 16 // of every how many cells may be read
 	coarsest := math.Inf(1)
 	for _, f := range g.elevation {
 		if f.info.Cols*f.info.Rows > largeCells && !f.hasOverviews() {
