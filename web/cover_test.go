@@ -139,7 +139,9 @@ func TestCoverBands(t *testing.T) {
 
 // TestCoverEvents watches a job over a socket: progress that grows, the finished job once, then the end.
 func TestCoverEvents(t *testing.T) {
-	s := serve(t, demo(t))
+	path := demo(t)
+	write(t, path, coverText(t, "12 km", "60 m"))
+	s := serve(t, path)
 	server := httptest.NewServer(s)
 	defer server.Close()
 	job := start(t, s)
