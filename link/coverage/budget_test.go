@@ -41,7 +41,7 @@ func madeTask(t testing.TB) Task {
 			Aim: link.Aim{AvailabilityPct: 99, MarginDB: 6}, Allowances: []link.Allowance{{Name: "body", LossDB: 4}},
 		},
 		Conditions:   link.Conditions{Method: propagation.P1812, DeltaN: 45, N0: 325, Dn1: -200, SpreadDB: 9},
-		LocationsPct: 90, RangeM: 12000, CellM: 30, StepM: 30,
+		LocationsPct: 90, RangeM: 4000, CellM: 30, StepM: 30,
 	}
 }
 
@@ -64,10 +64,10 @@ func TestCellIsALink(t *testing.T) {
 			task := madeTask(t)
 			task.Link.Aim.AvailabilityPct, task.LocationsPct, task.Link.Fade = tc.availability, tc.locations, tc.fade
 			task.Link.Channel.BackHz = tc.backHz
-			disc, frame := made{cellM: 30, reach: 420, height: rough, class: mixed}.lay(t)
+			disc, frame := made{cellM: 30, reach: 140, height: rough, class: mixed}.lay(t)
 			compared := 0
 			forCells(t, task, disc, frame, func(s *sweep, r *reckoner, c *Cell) {
-				if c.Index%4001 != 0 {
+				if c.Index%449 != 0 {
 					return
 				}
 				compared++
@@ -176,7 +176,7 @@ func radiatedDBm(b link.Budget) (eirp float64) {
 func TestMap(t *testing.T) {
 	task := madeTask(t)
 	all := Layers{Loss: true, Margin: true, Field: true}
-	ground := made{cellM: 30, reach: 420, height: rough, class: mixed}
+	ground := made{cellM: 30, reach: 140, height: rough, class: mixed}
 	task.Workers = 1
 	one := mapMade(t, task, ground, all)
 	task.Workers = 3
@@ -187,8 +187,8 @@ func TestMap(t *testing.T) {
 	if one.Check != three.Check || one.Check.Samples < 1000 || !(one.Check.SweepMaxDB <= 1e-6) {
 		t.Errorf("checks %+v and %+v", one.Check, three.Check)
 	}
-	if one.VoidCells != 0 || math.Abs(float64(one.Cells)-math.Pi*400*400) > 2000 {
-		t.Errorf("%d cells, %d of them void; a circle of 400 cells' radius", one.Cells, one.VoidCells)
+	if one.VoidCells != 0 || math.Abs(float64(one.Cells)-math.Pi*4000*4000/900) > 500 {
+		t.Errorf("%d cells, %d of them void; a circle of 4 km", one.Cells, one.VoidCells)
 	}
 	t.Logf("%+v", one.Check)
 }

@@ -152,5 +152,6 @@ func (l *cellList) of(s *sweep, cells []int32) []place {
 	return l.sorted
 }
 
-// interiorPoints is the number of multiples of the step up to half a step before a distance.
+// interiorPoints is how many interior points a profile of that length has: its whole steps, but for
+// one that would leave less than half of another.
 func interiorPoints(distM, stepM float64) int { return max(0, int(distM/stepM-0.5)) }
