@@ -32,7 +32,7 @@ func (w *way) fade(freqHz, verticalShare float64) (Allowance, error) {
 		return Allowance{}, fmt.Errorf("method %s does not compute the fading that %g %% availability asks for: state it, or ask for 50 %%", w.conditions.Method.Name, q)
 	}
 	if q > MaxAvailabilityPct {
-		return Allowance{}, fmt.Errorf("no fading allowance is computed for %g %% availability: the most is %g %%; state the fade", q, MaxAvailabilityPct)
+		return Allowance{}, fmt.Errorf("no fading allowance is computed for %g %% availability: the most is %g %%", q, MaxAvailabilityPct)
 	}
 	mirrored, err := w.mirroredFadeDB(q, freqHz, verticalShare)
 	if err != nil {

@@ -14,12 +14,14 @@ type frontEnd struct {
 	*Station
 	solution antenna.Solution
 	line     antenna.Transfer
+	// cutForAnother tells that the antenna's resonant lengths are those of another channel.
+	cutForAnother bool
 }
 
 // frontEnd solves the station's antenna at a frequency of the channel. The impedance counts at
 // whichever of the channel's edges or its centre delivers the least.
 func (s *Station) frontEnd(freqHz float64, c Channel) (frontEnd, error) {
-	f := frontEnd{Station: s}
+	f := frontEnd{Station: s, cutForAnother: s.CutForHz > 0 && s.CutForHz != c.CentreHz()}
 	for i, hz := range [...]float64{freqHz, freqHz - c.BandwidthHz/2, freqHz + c.BandwidthHz/2} {
 		solution, err := s.Antenna.Solve(s.setting(hz, c.CentreHz()))
 		if err != nil {
@@ -71,6 +73,9 @@ func (f *frontEnd) lines(b *Budget, toward antenna.Direction, transmits bool) {
 	}
 	b.Lines = append(b.Lines, part...)
 	b.warn(f.Name, f.warnings(toward)...)
+	if f.cutForAnother && !f.solution.GainKnown {
+		b.Remarks = addWarning(b.Remarks, Warning{f.Name, fmt.Sprintf("its resonant lengths are cut for %g MHz, the channel of its first link", f.CutForHz/1e6)})
+	}
 	for _, text := range f.solution.Remarks {
 		b.Remarks = addWarning(b.Remarks, Warning{f.Name, text})
 	}

@@ -67,7 +67,7 @@ func (c cut) radiate(in antenna.Setting, n *Network) (solved, error) {
 	}
 	remarks := mastRemarks(in, c.structure.Mast)
 	if ports := len(c.feeds); ports > 1 {
-		remarks = append(remarks, fmt.Sprintf("%d feeds driven in phase with equal voltages: a harness of equal lines of a multiple of a half wave", ports))
+		remarks = append(remarks, fmt.Sprintf("%d feeds driven in phase with equal voltages by a harness of equal lines of a multiple of a half wave, its junction transformed back by %d: the impedance is that at its input", ports, ports))
 	}
 	return solved{
 		Solution: antenna.Solution{

@@ -52,7 +52,7 @@ func newLoss(t *terminal) *cobra.Command {
 			}
 			loss, err := method.Loss(path)
 			if err != nil {
-				return err
+				return &usageError{err.Error()}
 			}
 			if !cmd.Flags().Changed("latitude") && method.Name == propagation.P1812.Name {
 				loss.Notes = append(loss.Notes, fmt.Sprintf("no --latitude was given: %g degrees is taken", v.latitude))

@@ -28,6 +28,9 @@ type checker struct {
 func (p *Plan) check() Errors {
 	c := &checker{Plan: p}
 	c.aim("aim", p.Aim)
+	if p.Prediction.Readings == 1 {
+		c.wrong("prediction.readings", "one reading gives no spread", "state two or more, or 0 where the spread is assumed")
+	}
 	if step := p.Ground.Step; step != nil {
 		c.within("ground.step", float64(*step), minStepM, maxStepM, "m")
 	}

@@ -119,7 +119,7 @@ func (n *notation) schema() *jsonschema.Schema {
 // is known, or where it was asked outside of one.
 type Refusal struct{ Problem, Hint string }
 
-func (r *Refusal) Error() string { return r.Problem + " (" + r.Hint + ")" }
+func (r *Refusal) Error() string { return r.Problem + "\n    hint: " + r.Hint }
 
 // orList joins names as a person would: "a, b or c".
 func orList(names []string) string {

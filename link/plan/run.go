@@ -64,6 +64,11 @@ func (n *Network) Run(ctx context.Context, done func()) (*Result, error) {
 
 // Compute works out one link, of the plan or of the caller's own making between its stations.
 func (n *Network) Compute(l *link.Link) (*link.Result, error) {
+	for _, s := range []*link.Station{l.From, l.To} {
+		if s.Radio.PowerSource == "" && !(l.OneWay && s == l.To) {
+			return nil, &Refusal{fmt.Sprintf("%s transmits on this path, but its radio %q has no power", s.Name, s.Radio.Name), "state its power, or ask the other way"}
+		}
+	}
 	ground, err := n.profile(l.From, l.To)
 	if err != nil {
 		return nil, err
