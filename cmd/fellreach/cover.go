@@ -88,7 +88,7 @@ func (f *coverFlags) run(cmd *cobra.Command, t *terminal, network *plan.Network,
 	bars.end()
 	if err != nil {
 		if cmd.Context().Err() != nil {
-			return errors.Join(err, errors.New("sites that were finished are kept; the same command goes on from there"))
+			return errors.New("interrupted; sites that were finished are kept, and the same command goes on from there")
 		}
 		return err
 	}

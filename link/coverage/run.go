@@ -5,45 +5,12 @@ import (
 	"fmt"
 	"io"
 	"runtime/debug"
-	"slices"
 
 	"fellreach/link"
 	"fellreach/terrain/raster"
 
 	"golang.org/x/sync/errgroup"
 )
-
-// Outputs say which files are wanted.
-type Outputs struct{ Loss, Margin, Field, Bands, Network, Picture bool }
-
-// allOutputs are all of them.
-var allOutputs = Outputs{true, true, true, true, true, true}
-
-// ParseOutputs reads a list of "loss", "margin", "field", "bands", "network" and "picture"; an empty
-// list means all.
-func ParseOutputs(names []string) (Outputs, error) {
-	if len(names) == 0 {
-		return allOutputs, nil
-	}
-	var o Outputs
-	known := []struct {
-		name string
-		on   *bool
-	}{{"loss", &o.Loss}, {"margin", &o.Margin}, {"field", &o.Field}, {"bands", &o.Bands}, {"network", &o.Network}, {"picture", &o.Picture}}
-	for _, name := range names {
-		i := slices.IndexFunc(known, func(k struct {
-			name string
-			on   *bool
-		}) bool {
-			return k.name == name
-		})
-		if i < 0 {
-			return o, fmt.Errorf("%q is none of loss, margin, field, bands, network, picture", name)
-		}
-		*known[i].on = true
-	}
-	return o, nil
-}
 
 // Options say where results go and who hears of the work.
 type Options struct {
