@@ -26,7 +26,7 @@ export function bar(s: State, on: BarEvents) {
       <button ?disabled=${!after} title=${after ? words.redoWhat(after.what) : words.redo} @click=${on.redo}>${words.redo}</button>
       <button class="main" ?disabled=${!dirty || s.saving} @click=${on.save}>${s.saving ? words.saving : words.save}</button>
       ${plan ? files(s) : nothing}
-      <button @click=${() => on.theme(nextTheme[s.theme])}>${words.theme[s.theme]}</button>
+      <button title=${words.themeLong[s.theme]} @click=${() => on.theme(nextTheme[s.theme])}>${words.theme[s.theme]}</button>
     </div>
   </header>`;
 }

@@ -61,7 +61,7 @@ export function ledgerTable(link: Link, way: 0 | 1, open: ReadonlySet<string>, o
         <tr class="step total ${decides ? link.verdict : ''}">
           <th scope="row">${words.marginOf} ${decides ? verdict(link.verdict) : html`<span class="quiet">${words.otherDecides}</span>`}</th>
           <td class="bar">${bar(l, l.margin, d.lines.length)}</td>
-          <td class="figure"><output>${words.db(margin(d.margin_db))}</output></td>
+          <td class="figure">${words.db(margin(d.margin_db))}</td>
         </tr>
       </tfoot>
     </table>

@@ -24,7 +24,7 @@ export function linksTable(
           <th scope="col">${words.link}</th>
           <th scope="col" class="figure">${words.distance}</th>
           <th scope="col" class="figure">${words.margin}</th>
-          <th scope="col" class="figure">${words.chance}</th>
+          <th scope="col" class="figure of-chance">${words.chance}</th>
           <th scope="col">${words.result}</th>
         </tr>
       </thead>
@@ -42,7 +42,7 @@ export function linksTable(
               l
                 ? html`<td class="figure">${fixed(l.distance_km, 2)}</td>
                   <td class="figure">${margin(l.margin_db)}</td>
-                  <td class="figure">${percent(l.chance)}</td>
+                  <td class="figure of-chance">${percent(l.chance)}</td>
                   <td>${verdict(l.verdict)}</td>`
                 : html`<td colspan="4" class="waiting">${links.waiting ? words.waitingLinks : nothing}</td>`
             }

@@ -80,6 +80,7 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
   }
 
   map.on('style.load', drawAll);
+  map.once('idle', () => into.setAttribute('data-drawn', ''));
   map.on('click', (e) => {
     const s = store.get();
     if (s.measure) {
@@ -129,7 +130,6 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
 
   const motion = () => ({ duration: matchMedia('(prefers-reduced-motion: reduce)').matches ? 0 : 350 });
   await map.once('load');
-  void map.once('idle').then(() => into.setAttribute('data-drawn', ''));
   return {
     middle: () => decimalPlace(map.getCenter().lat, map.getCenter().lng),
     show: (site) =>

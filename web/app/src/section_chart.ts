@@ -33,7 +33,7 @@ export function sectionChart(p: SectionProps, on: SectionEvents) {
   const { section, widthPx, heightPx } = p;
   const points = section.points;
   const { least, most } = reach(points);
-  const step = stepFor(most - least || 1, 4);
+  const step = stepFor(most - least || 1, 5);
   const x = scale(0, section.distance_km, margins.left, widthPx - margins.right);
   const y = scale(least, Math.max(most, least + step), heightPx - margins.bottom, margins.top);
   const at = p.cursorKm === undefined ? undefined : points[nearest(points, p.cursorKm)];

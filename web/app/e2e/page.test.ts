@@ -1,0 +1,252 @@
+import { readFileSync } from 'node:fs';
+import { afterAll, beforeAll, expect, test } from 'vitest';
+import type { Links } from '../src/api';
+import { margin, signed } from '../src/format';
+import { Bench, type Visit } from './harness';
+
+let bench: Bench;
+beforeAll(async () => {
+  bench = await Bench.open();
+});
+afterAll(() => bench.close());
+
+const thin = '#link=Gauge%203..Ormvik%2Fcoast';
+
+/** Looks at a page and makes sure that nothing went wrong on it. */
+async function looking(visit: Visit, look: (v: Visit) => Promise<void>) {
+  await look(visit);
+  expect(visit.strange).toEqual([]);
+  expect(visit.wrong).toEqual([]);
+  await visit.close();
+}
+
+test('the page opens with every link, and no request leaves the server', async () => {
+  await looking(await bench.visit(), async (v) => {
+    const { links } = bench.command('links', bench.plan) as Links;
+    const rows = await v.page.locator('table.links tbody tr').allInnerTexts();
+    expect(rows).toHaveLength(links.length);
+    links.forEach((l, i) => {
+      for (const part of [l.from, l.to, margin(l.margin_db), l.verdict]) expect(rows[i]).toContain(part);
+    });
+    await v.drawn();
+  });
+});
+
+test('the links name their ends before they are worked out, and before the map', async () => {
+  const visit = await bench.visit('', {}, async (page) => {
+    await page.route('**/api/links*', async (route) => {
+      await page.locator('table.links button.pick', { hasText: 'East Holm' }).waitFor();
+      await route.continue();
+    });
+  });
+  await looking(visit, async (v) => {
+    await v.page.locator('table.links td.figure').first().waitFor();
+  });
+});
+
+test('the ledger holds the figures of the links command, both ways, with their sources', async () => {
+  await looking(await bench.visit(thin), async (v) => {
+    const { links } = bench.command('links', bench.plan) as Links;
+    const link = links.find((l) => l.from === 'Gauge 3' && l.to === 'Ormvik/coast')!;
+    await v.page.getByLabel('All sources').check();
+    for (const [i, d] of link.directions.entries()) {
+      await v.page.locator('[aria-label="Direction of the ledger"] button').nth(i).click();
+      await v.page.locator(`table.ledger caption`, { hasText: `from ${d.from}` }).waitFor({ state: 'attached' });
+      if (i > 0) await v.page.getByLabel('All sources').check();
+      const values = await v.page.locator('table.ledger .step:not(.total) .figure').allInnerTexts();
+      expect(values).toEqual(d.lines.map((l) => signed(l.value_db)));
+      expect(await v.margin()).toBe(`${margin(d.margin_db)} dB`);
+      const sources = await v.page.locator('table.ledger .source').allInnerTexts();
+      d.lines.forEach((l, n) => {
+        expect(sources[n]).toContain(l.source);
+      });
+    }
+  });
+});
+
+test('a click on a link of the map chooses it', async () => {
+  await looking(await bench.visit(), async (v) => {
+    await v.drawn();
+    const at = await v.page.locator('.site[aria-label="Site Mouth Hill"]').boundingBox();
+    const to = await v.page.locator('.site[aria-label="Site Gauge 3"]').boundingBox();
+    const part = 0.25;
+    await v.page.mouse.click(at!.x + 14 + (to!.x - at!.x) * part, at!.y + 14 + (to!.y - at!.y) * part);
+    await v.page.locator('table.links tr.chosen', { hasText: 'Mouth Hill' }).waitFor();
+    expect(v.page.url()).toContain('link=Gauge%203..Mouth%20Hill');
+  });
+});
+
+test('the cursor of the section reads out the ground and moves a point on the map', async () => {
+  await looking(await bench.visit(thin), async (v) => {
+    await v.drawn();
+    const section = v.page.getByRole('slider', { name: /^Section from/ });
+    await section.hover({ position: { x: 300, y: 60 } });
+    const walker = v.page.locator('.walker');
+    await walker.waitFor();
+    const before = await walker.boundingBox();
+    expect(await v.page.locator('.readout').innerText()).toMatch(
+      /km: ground .* m asl, ray .* of the first Fresnel radius/,
+    );
+    await section.focus();
+    await v.page.keyboard.press('End');
+    await expect.poll(() => section.getAttribute('aria-valuetext')).toContain('10.53 km');
+    const after = await walker.boundingBox();
+    expect(after!.x).toBeGreaterThan(before!.x + 20);
+    for (let i = 0; i < 3; i++) await v.page.keyboard.press('Shift+ArrowLeft');
+    await expect.poll(() => section.getAttribute('aria-valuetext')).not.toContain('10.53 km');
+    await v.page.keyboard.press('Escape');
+    await walker.waitFor({ state: 'detached' });
+  });
+});
+
+test('a height dragged in the section moves the ledger, and undo brings it back', async () => {
+  await looking(await bench.visit(thin), async (v) => {
+    const before = await v.margin();
+    const knob = v.page.getByRole('slider', { name: 'Antenna height at Gauge 3' });
+    const box = (await knob.boundingBox())!;
+    await v.page.mouse.move(box.x + 13, box.y + 13);
+    await v.page.mouse.down();
+    await v.page.mouse.move(box.x + 13, box.y - 10, { steps: 6 });
+    await expect.poll(v.margin).not.toBe(before);
+    await v.page.mouse.up();
+    await v.page.locator('.bar .state', { hasText: '1 change' }).waitFor();
+    await expect.poll(v.margin).not.toBe(before);
+    await v.page.getByRole('button', { name: 'Undo' }).click();
+    await expect.poll(v.margin).toBe(before);
+    await v.page.locator('.bar .state', { hasText: 'as saved' }).waitFor();
+  });
+});
+
+test('a site dragged on the map has live figures', async () => {
+  await looking(await bench.visit(thin), async (v) => {
+    await v.drawn();
+    const distance = () => v.page.locator('table.links tr.chosen td').first().innerText();
+    const before = await distance();
+    const box = (await v.page.locator('.site[aria-label="Site Gauge 3"]').boundingBox())!;
+    await v.page.mouse.move(box.x + 14, box.y + 14);
+    await v.page.mouse.down();
+    await v.page.mouse.move(box.x - 20, box.y - 10, { steps: 5 });
+    await expect.poll(distance).not.toBe(before);
+    const live = Number(await distance());
+    await v.page.mouse.up();
+    await v.page.locator('.bar .state', { hasText: '1 change' }).waitFor();
+    await expect.poll(async () => Number(await distance())).toBeGreaterThan(Number(before));
+    expect(live).toBeGreaterThan(Number(before));
+  });
+});
+
+test('a cell of the height table is tried, and the ledger has its margin', async () => {
+  await looking(await bench.visit(thin), async (v) => {
+    const cell = v.page.locator('table.heights button', { hasText: '+' }).last();
+    await cell.waitFor();
+    const promised = (await cell.innerText()).trim();
+    await cell.click();
+    await expect.poll(v.margin).toBe(`${promised} dB`);
+    expect(await v.page.locator('body > [role=status]').innerText()).toContain('Gauge 3');
+  });
+});
+
+test('keys alone choose a link, move a site, raise an antenna and save; a reload shows the file', async () => {
+  await looking(await bench.visit(), async (v) => {
+    await v.drawn();
+    await v.link('East Holm').focus();
+    await v.page.keyboard.press('Enter');
+    await v.page.locator('table.links tr.chosen', { hasText: 'East Holm' }).waitFor();
+    const site = v.page.locator('.site[aria-label="Site East Holm"]');
+    await site.focus();
+    await v.page.keyboard.press('Shift+ArrowUp');
+    await v.page.locator('.bar .state', { hasText: '1 change' }).waitFor();
+    const knob = v.page.getByRole('slider', { name: 'Antenna height at East Holm' });
+    await knob.focus();
+    await v.page.keyboard.press('ArrowUp');
+    await v.page.locator('.bar .state', { hasText: '2 changes' }).waitFor();
+    const tried = await v.margin();
+    await v.page.keyboard.press('Control+s');
+    await v.page.locator('.bar .state', { hasText: 'as saved' }).waitFor();
+    const text = readFileSync(bench.plan, 'utf8');
+    expect(text).toContain('# gauges of the ridge');
+    expect(text).toContain('above_ground: "7 m"');
+    await v.page.reload();
+    await expect.poll(v.margin).toBe(tried);
+  });
+});
+
+test('a file changed by others meanwhile is not written over', async () => {
+  const visit = await bench.visit(thin);
+  const { writeFileSync } = await import('node:fs');
+  const text = readFileSync(bench.plan, 'utf8');
+  await visit.page.locator('table.heights button').first().click();
+  await visit.page.locator('.bar .state', { hasText: '1 change' }).waitFor();
+  writeFileSync(bench.plan, text.replace('Hallin river gauges', 'Hallin gauges'));
+  await visit.page.getByRole('button', { name: 'Save' }).click();
+  await visit.page.locator('.trouble', { hasText: 'changed' }).waitFor();
+  expect(readFileSync(bench.plan, 'utf8')).toContain('title: Hallin gauges');
+  await visit.page.getByRole('button', { name: 'Read the file again' }).click();
+  await visit.page.locator('.bar h1', { hasText: 'Hallin gauges' }).waitFor();
+  writeFileSync(bench.plan, text);
+  await visit.close();
+});
+
+test('what the server refuses is told with what to do', async () => {
+  const visit = await bench.visit(thin);
+  await visit.page.locator('.sites summary', { hasText: 'Gauge 3' }).click();
+  const place = visit.page.locator('.sites details[open] input').first();
+  await place.fill('nowhere');
+  await place.press('Enter');
+  const trouble = visit.page.locator('.trouble');
+  await trouble.waitFor();
+  expect(await trouble.innerText()).toMatch(/line \d+/);
+  expect(await visit.axe()).toEqual([]);
+  await visit.close();
+});
+
+test('distance and bearing are measured between two places', async () => {
+  await looking(await bench.visit(), async (v) => {
+    await v.drawn();
+    await v.page.getByRole('button', { name: /^Measure/ }).click();
+    const box = (await v.page.locator('#map').boundingBox())!;
+    await v.page.mouse.click(box.x + 300, box.y + 250);
+    await v.page.mouse.click(box.x + 400, box.y + 250);
+    await v.page.locator('.map-word.top', { hasText: /\d km, (89|90)\.\d° there, 2(69|70)\.\d° back/ }).waitFor();
+    expect(await v.page.locator('.map-word.place').innerText()).toMatch(/UTM 27N/);
+  });
+});
+
+for (const colorScheme of ['light', 'dark'] as const) {
+  test(`axe finds nothing in ${colorScheme}`, async () => {
+    await looking(await bench.visit(thin, { colorScheme }), async (v) => {
+      await v.drawn();
+      await v.page.locator('table.heights').waitFor();
+      await v.page.locator('svg.vswr').waitFor();
+      expect(await v.axe()).toEqual([]);
+      await v.page.getByLabel('All sources').check();
+      for (const summary of await v.page.locator('details:not([open]) > summary').all()) await summary.click();
+      expect(await v.axe()).toEqual([]);
+    });
+  });
+}
+
+test('360 px wide, nothing scrolls sideways', async () => {
+  await looking(await bench.visit(thin, { viewport: { width: 360, height: 740 }, hasTouch: true }), async (v) => {
+    await v.drawn();
+    await v.page.locator('table.heights').waitFor();
+    expect(await v.page.evaluate(() => document.documentElement.scrollWidth)).toBe(360);
+    expect(await v.axe()).toEqual([]);
+  });
+});
+
+test('without WebGL the page says so, and tables and section work', async () => {
+  const visit = await bench.visit(thin, {}, async (page) => {
+    await page.addInitScript(() => {
+      const get = HTMLCanvasElement.prototype.getContext;
+      HTMLCanvasElement.prototype.getContext = function (this: HTMLCanvasElement, kind: string, ...more: unknown[]) {
+        return kind.startsWith('webgl') ? null : (get as (...a: unknown[]) => unknown).call(this, kind, ...more);
+      } as typeof get;
+    });
+  });
+  await visit.page.locator('.cover-note', { hasText: 'WebGL' }).waitFor();
+  await visit.page.getByRole('slider', { name: /^Section from/ }).waitFor();
+  expect(await visit.margin()).toMatch(/dB$/);
+  expect(await visit.axe()).toEqual([]);
+  await visit.close();
+});
