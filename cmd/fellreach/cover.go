@@ -21,6 +21,7 @@ type coverFlags struct {
 	site, dir, compress, quality, along string
 	only                                []string
 	step                                plan.Length
+	smooth                              plan.Distance
 }
 
 func newCover(t *terminal) *cobra.Command {
@@ -51,6 +52,7 @@ func newCover(t *terminal) *cobra.Command {
 	flags.StringSliceVar(&f.only, "only", nil, "compute and write only these: loss, margin, field, bands, network, picture")
 	flags.StringVar(&f.compress, "compress", "fast", "fast, or small for smaller files")
 	flags.StringVar(&f.quality, "quality", "normal", "normal, or fine: twice the radials, 8 points of each profile on the cell's own bearing")
+	flags.Var(&quantityFlag{&f.smooth, "0 m"}, "smooth", "how far the bands' outlines may leave the sides of the cells")
 	flags.StringVar(&f.along, "along", "", "follow a track (GeoJSON or GPX) instead of mapping: margin by distance")
 	flags.Var(&quantityFlag{&f.step, "100 m"}, "step", "distance of two stops on the track")
 	_ = cmd.RegisterFlagCompletionFunc("compress", cobra.FixedCompletions([]string{"fast", "small"}, cobra.ShellCompDirectiveNoFileComp))
@@ -67,7 +69,7 @@ func (f *coverFlags) options() (o coverage.Options, err error) {
 	case f.quality != "normal" && f.quality != "fine":
 		return o, &usageError{fmt.Sprintf("--quality %q is not one of normal, fine", f.quality)}
 	}
-	o.Dir, o.Small = f.dir, f.compress == "small"
+	o.Dir, o.Small, o.SmoothM = f.dir, f.compress == "small", float64(f.smooth)
 	if o.Outputs, err = coverage.ParseOutputs(f.only); err != nil {
 		return o, &usageError{"--only: " + err.Error()}
 	}

@@ -10,5 +10,5 @@ func (s *Site) Report(m *Map) SiteReport {
 // WriteBands writes the bands of a site's map as the file bands-SITE.geojson holds them.
 func (s *Site) WriteBands(w io.Writer, m *Map) error {
 	classes := classify(m.MarginDB, s.BandsDB)
-	return writeBands(w, s.Name, m.Frame, patchesOf(classes, m.Frame.Cols, m.Frame.Rows, leastPatch), measure(classes, m.Frame, s.BandsDB))
+	return writeBands(w, s.Name, m.Frame, patchesOf(classes, m.Frame.Cols, m.Frame.Rows, leastPatch), measure(classes, m.Frame, s.BandsDB), 0)
 }

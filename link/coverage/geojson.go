@@ -10,11 +10,13 @@ import (
 	"fellreach/terrain/raster"
 
 	"github.com/paulmach/orb"
+	"github.com/paulmach/orb/simplify"
 )
 
 // writeBands writes the patches of a map as GeoJSON (RFC 7946): one feature for each band that has
-// any, with its range and area, coordinates to 1e-6 degrees (0.1 m).
-func writeBands(w io.Writer, name string, f *raster.Frame, patches []patch, bands []Band) error {
+// any, with its range and area, coordinates to 1e-6 degrees (0.1 m). Outlines may leave the sides of
+// the cells by smoothCells cells.
+func writeBands(w io.Writer, name string, f *raster.Frame, patches []patch, bands []Band, smoothCells float64) error {
 	out := bufio.NewWriterSize(w, 1<<16)
 	title, err := json.Marshal(name)
 	if err != nil {
@@ -38,7 +40,7 @@ func writeBands(w io.Writer, name string, f *raster.Frame, patches []patch, band
 		}
 		first = false
 		fmt.Fprintf(out, "\n"+`{"type":"Feature","properties":%s,"geometry":{"type":"MultiPolygon","coordinates":[`, properties)
-		if err := writePolygons(out, f, patches, uint8(k+1)); err != nil {
+		if err := writePolygons(out, f, patches, uint8(k+1), smoothCells); err != nil {
 			return err
 		}
 		out.WriteString("]}}")
@@ -56,7 +58,7 @@ func hasClass(patches []patch, class uint8) bool {
 	return false
 }
 
-func writePolygons(out *bufio.Writer, f *raster.Frame, patches []patch, class uint8) error {
+func writePolygons(out *bufio.Writer, f *raster.Frame, patches []patch, class uint8, smoothCells float64) error {
 	first := true
 	for i := range patches {
 		if patches[i].class != class {
@@ -71,7 +73,7 @@ func writePolygons(out *bufio.Writer, f *raster.Frame, patches []patch, class ui
 			if k > 0 {
 				out.WriteByte(',')
 			}
-			if err := writeRing(out, f, ring); err != nil {
+			if err := writeRing(out, f, smoothed(ring, smoothCells)); err != nil {
 				return err
 			}
 		}
@@ -80,13 +82,26 @@ func writePolygons(out *bufio.Writer, f *raster.Frame, patches []patch, class ui
 	return nil
 }
 
-// writeRing writes a ring in longitude and latitude, its first place repeated at its end.
-func writeRing(out *bufio.Writer, f *raster.Frame, ring []corner) error {
-	places := make([]orb.Point, len(ring)+1)
+// smoothed is a ring as places of the frame, its first repeated at its end, simplified by Douglas and
+// Peucker's method where a tolerance is given. A ring that would vanish keeps its cells.
+func smoothed(ring []corner, cells float64) orb.Ring {
+	places := make(orb.Ring, len(ring)+1)
 	for i, c := range ring {
 		places[i] = orb.Point{float64(c.col), float64(c.row)}
 	}
 	places[len(ring)] = places[0]
+	if cells == 0 {
+		return places
+	}
+	const least = 4 // places of a ring
+	if simple := simplify.DouglasPeucker(cells).Ring(places.Clone()); len(simple) >= least {
+		return simple
+	}
+	return places
+}
+
+// writeRing writes a ring in longitude and latitude.
+func writeRing(out *bufio.Writer, f *raster.Frame, places orb.Ring) error {
 	if err := f.Places(places); err != nil {
 		return err
 	}

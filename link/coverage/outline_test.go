@@ -73,3 +73,23 @@ func TestPatches(t *testing.T) {
 		}
 	}
 }
+
+// Source: Douglas and Peucker's promise, every corner within the tolerance; here of a staircase, which
+// becomes its slope.
+func TestSmoothed(t *testing.T) {
+	var ring []corner
+	for i := range int32(10) {
+		ring = append(ring, corner{i, i}, corner{i, i + 1})
+	}
+	ring = append(ring, corner{10, 10}, corner{20, 10}, corner{20, 0})
+	raw, smooth := smoothed(ring, 0), smoothed(ring, 1)
+	if len(raw) != len(ring)+1 || raw[0] != raw[len(ring)] {
+		t.Errorf("without a tolerance: %v", raw)
+	}
+	if len(smooth) > 6 || smooth[0] != smooth[len(smooth)-1] {
+		t.Errorf("smoothed: %v", smooth)
+	}
+	if cell := smoothed([]corner{{0, 0}, {0, 1}, {1, 1}, {1, 0}}, 5); len(cell) != 5 {
+		t.Errorf("a cell that would vanish: %v", cell)
+	}
+}

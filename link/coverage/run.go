@@ -17,6 +17,8 @@ type Options struct {
 	Dir     string
 	Outputs Outputs
 	Small   bool // compress for small files, not for time
+	// SmoothM is how far the outlines of bands may leave the sides of the cells; 0 keeps those.
+	SmoothM float64
 	// Progress, if not nil, is told for each site how many of its radials are done, from several
 	// goroutines; Note what else a person should know.
 	Progress func(site string, done, total int)
@@ -133,7 +135,7 @@ func (r *runner) site(ctx context.Context, number int) (SiteReport, error) {
 	if err != nil {
 		return SiteReport{}, err
 	}
-	digest := s.digest(places, fmt.Sprintln(r.fingerprint, r.Outputs, r.Small))
+	digest := s.digest(places, fmt.Sprintln(r.fingerprint, r.Outputs, r.Small, r.SmoothM))
 	if report, ok := r.folder.done(r.slug(number), digest, r.files(number)); ok && r.recall(number) == nil {
 		if r.Note != nil {
 			r.Note(s.Name + ": kept from an earlier run")
@@ -231,7 +233,7 @@ func (r *runner) writeSite(number int, m *Map) (SiteReport, error) {
 
 func (r *runner) writeBands(file, name string, f *raster.Frame, classes []uint8, bands []Band) error {
 	patches := patchesOf(classes, f.Cols, f.Rows, leastPatch)
-	return r.folder.write(file, func(w io.Writer) error { return writeBands(w, name, f, patches, bands) })
+	return r.folder.write(file, func(w io.Writer) error { return writeBands(w, name, f, patches, bands, r.SmoothM/f.CellM) })
 }
 
 // network joins the sites and writes the layers.
