@@ -27,7 +27,7 @@ func risingZero(lo, hi, guess, step float64, f func(float64) (float64, error)) (
 		if err != nil {
 			return 0, err
 		}
-		if math.Abs(y) < 1e-5*(1+math.Abs(fb-fa)) || math.Abs(b-a) < 1e-10*math.Abs(x) {
+		if math.Abs(y) < 1e-6*(1+math.Abs(fb-fa)) || math.Abs(b-a) < 1e-10*math.Abs(x) {
 			return x, nil
 		}
 		if (y < 0) == (fb < 0) {
