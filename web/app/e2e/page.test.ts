@@ -1,7 +1,7 @@
 import { readFileSync } from 'node:fs';
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import type { Links } from '../src/api';
-import { margin, signed } from '../src/format';
+import { bearing, fixed, margin, signed } from '../src/format';
 import { Bench, type Visit } from './harness';
 
 let bench: Bench;
@@ -52,10 +52,10 @@ test('the ledger holds the figures of the links command, both ways, with their s
     for (const [i, d] of link.directions.entries()) {
       await v.page.locator('[aria-label="Direction of the ledger"] button').nth(i).click();
       await v.page.locator(`table.ledger caption`, { hasText: `from ${d.from}` }).waitFor({ state: 'attached' });
-      if (i > 0) await v.page.getByLabel('All sources').check();
       const values = await v.page.locator('table.ledger .step:not(.total) .figure').allInnerTexts();
       expect(values).toEqual(d.lines.map((l) => signed(l.value_db)));
       expect(await v.margin()).toBe(`${margin(d.margin_db)} dB`);
+      await expect.poll(() => v.page.locator('table.ledger .source').count()).toBe(d.lines.length);
       const sources = await v.page.locator('table.ledger .source').allInnerTexts();
       d.lines.forEach((l, n) => {
         expect(sources[n]).toContain(l.source);
@@ -200,15 +200,19 @@ test('what the server refuses is told with what to do', async () => {
   await visit.close();
 });
 
-test('distance and bearing are measured between two places', async () => {
+test('distance and bearing are measured between two places, sites among them', async () => {
   await looking(await bench.visit(), async (v) => {
+    const { links } = bench.command('links', bench.plan) as Links;
+    const link = links.find((l) => l.from === 'Gauge 3' && l.to === 'Mouth Hill')!;
     await v.drawn();
     await v.page.getByRole('button', { name: /^Measure/ }).click();
-    const box = (await v.page.locator('#map').boundingBox())!;
-    await v.page.mouse.click(box.x + 300, box.y + 250);
-    await v.page.mouse.click(box.x + 400, box.y + 250);
-    await v.page.locator('.map-word.top', { hasText: /\d km, (89|90)\.\d° there, 2(69|70)\.\d° back/ }).waitFor();
-    expect(await v.page.locator('.map-word.place').innerText()).toMatch(/UTM 27N/);
+    await v.page.locator('.site[aria-label="Site Gauge 3"]').click();
+    await v.page.locator('.site[aria-label="Site Mouth Hill"]').click();
+    const said = `${fixed(link.distance_km, 2)} km, ${bearing(link.azimuth_deg)}° there, ${bearing(link.back_azimuth_deg)}° back`;
+    await v.page.locator('.map-word.top', { hasText: said }).waitFor();
+    await v.page.locator('#map').click({ position: { x: 60, y: 400 } });
+    await v.page.locator('.map-word.top', { hasText: 'second place' }).waitFor();
+    await v.page.locator('.map-word.place', { hasText: 'UTM 27N' }).waitFor();
   });
 });
 
@@ -220,7 +224,9 @@ for (const colorScheme of ['light', 'dark'] as const) {
       await v.page.locator('svg.vswr').waitFor();
       expect(await v.axe()).toEqual([]);
       await v.page.getByLabel('All sources').check();
-      for (const summary of await v.page.locator('details:not([open]) > summary').all()) await summary.click();
+      await v.page.evaluate(() => {
+        for (const details of document.querySelectorAll('details')) details.open = true;
+      });
       expect(await v.axe()).toEqual([]);
     });
   });

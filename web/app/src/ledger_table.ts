@@ -15,14 +15,13 @@ export interface LedgerEvents {
 export function ledgerTable(link: Link, way: 0 | 1, open: ReadonlySet<string>, on: LedgerEvents) {
   const d = link.directions[way] ?? link.directions[0]!;
   const l = ledgerOf(d);
-  const names = d.lines.map((x) => x.name);
   const decides = d.margin_db === link.margin_db;
-  const all = names.every((n) => open.has(n));
+  const all = named(d).every((n) => open.has(n));
   return html`
     <div class="row spread">
       ${directions(link, way, on)}
       <label class="tick">
-        <input type="checkbox" .checked=${all} @change=${() => on.open(new Set(all ? [] : names))} />
+        <input type="checkbox" .checked=${all} @change=${() => on.open(new Set(all ? [] : link.directions.flatMap(named)))} />
         ${words.showSources}
       </label>
     </div>
@@ -71,6 +70,8 @@ export function ledgerTable(link: Link, way: 0 | 1, open: ReadonlySet<string>, o
     </dl>
   `;
 }
+
+const named = (d: Direction) => d.lines.map((line) => line.name);
 
 function directions(link: Link, way: 0 | 1, on: LedgerEvents) {
   return html`<div class="choice" role="group" aria-label=${words.directions}>

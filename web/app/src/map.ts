@@ -272,7 +272,8 @@ class Sites {
     marker.on('dragend', () => this.drop(name, marker.getLngLat().toArray()));
     el.addEventListener('click', (e) => {
       e.stopPropagation();
-      this.choose(name);
+      if (this.store.get().measure) void measureAt(this.store, marker.getLngLat().toArray());
+      else this.choose(name);
     });
     el.addEventListener('keydown', (e) => {
       const way = { ArrowUp: [0, 1], ArrowDown: [0, -1], ArrowRight: [1, 0], ArrowLeft: [-1, 0] }[e.key];
