@@ -80,23 +80,27 @@ func (s *Server) routes() (http.Handler, error) {
 	r.Get("/", s.servePage)
 	var err error
 	r.Group(func(r chi.Router) {
-		r.Use(bounded, asJSON)
+		r.Use(bounded(), asJSON)
 		r.Get("/tiles/{kind}/{source}/{z}/{x}/{y}.png", s.serveTile)
 		err = s.serveAPI(r)
 	})
 	return r, err
 }
 
-// bounded lets so many requests work at once, each for so long. A stream of events only waits.
-func bounded(next http.Handler) http.Handler {
-	inTime := middleware.ThrottleBacklog(maxAtOnce, maxWaiting, waitTime)(middleware.Timeout(answerTimeout)(next))
-	return http.HandlerFunc(func(w http.ResponseWriter, r *http.Request) {
-		if strings.HasSuffix(r.URL.Path, "/events") {
-			next.ServeHTTP(w, r)
-			return
-		}
-		inTime.ServeHTTP(w, r)
-	})
+// bounded lets so many requests work at once, on all addresses together, each for so long. A stream of
+// events only waits.
+func bounded() func(http.Handler) http.Handler {
+	throttle := middleware.ThrottleBacklog(maxAtOnce, maxWaiting, waitTime)
+	return func(next http.Handler) http.Handler {
+		inTime := throttle(middleware.Timeout(answerTimeout)(next))
+		return http.HandlerFunc(func(w http.ResponseWriter, r *http.Request) {
+			if strings.HasSuffix(r.URL.Path, "/events") {
+				next.ServeHTTP(w, r)
+				return
+			}
+			inTime.ServeHTTP(w, r)
+		})
+	}
 }
 
 // recovered turns a panic into an answer and a line of the log, so that the server goes on.

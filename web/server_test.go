@@ -286,3 +286,27 @@ func TestAtOnce(t *testing.T) {
 		}
 	}
 }
+
+// TestBounded holds as many requests as may be worked on; one more, on another address, waits for them.
+func TestBounded(t *testing.T) {
+	bound := bounded()
+	entered, leave := make(chan struct{}, maxAtOnce), make(chan struct{})
+	slow := bound(http.HandlerFunc(func(http.ResponseWriter, *http.Request) { entered <- struct{}{}; <-leave }))
+	reached := make(chan string, 2)
+	other := bound(http.HandlerFunc(func(_ http.ResponseWriter, r *http.Request) { reached <- r.URL.Path }))
+	for range maxAtOnce {
+		go ask(slow, http.MethodGet, "/api/slow", "")
+	}
+	for range maxAtOnce {
+		<-entered
+	}
+	go ask(other, http.MethodGet, "/api/other", "")
+	ask(other, http.MethodGet, "/api/coverage/1/events", "")
+	if first := <-reached; first != "/api/coverage/1/events" {
+		t.Errorf("%s is reached while %d requests are worked on", first, maxAtOnce)
+	}
+	close(leave)
+	if second := <-reached; second != "/api/other" {
+		t.Errorf("%s is reached", second)
+	}
+}

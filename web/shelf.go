@@ -114,7 +114,11 @@ func (s *shelf) refresh() error {
 	}
 	v := s.find(id)
 	if v == nil {
-		if v, err = s.open(text, s.file); err != nil {
+		p, err := plan.Parse(s.path, text)
+		if err != nil {
+			return err
+		}
+		if v, err = s.open(p, text, s.file); err != nil {
 			return err
 		}
 		s.put(v)
@@ -137,21 +141,17 @@ func readPlan(path string) ([]byte, error) {
 	return os.ReadFile(path)
 }
 
-// open parses a text and opens it, on the ground of the version before where it can.
-func (s *shelf) open(text []byte, before *version) (*version, error) {
-	p, err := plan.Parse(s.path, text)
+// open opens a plan that has been parsed, on the ground of the version before where it can.
+func (s *shelf) open(p *plan.Plan, text []byte, before *version) (*version, error) {
+	open := p.Open
+	if before != nil {
+		open = func() (*plan.Network, error) { return p.OpenAfter(before.network, s.antennas.last()) }
+	}
+	network, err := open()
 	if err != nil {
 		return nil, err
 	}
-	v := &version{id: idOf(text), text: text, plan: p}
-	if before == nil {
-		v.network, err = p.Open()
-	} else {
-		v.network, err = p.OpenAfter(before.network, s.antennas.last())
-	}
-	if err != nil {
-		return nil, err
-	}
+	v := &version{id: idOf(text), text: text, plan: p, network: network}
 	s.antennas.add(v.network)
 	if before != nil && v.network.SharesGround(before.network) {
 		v.ground = before.ground
@@ -168,10 +168,11 @@ func (s *shelf) try(text []byte, from *version) (*version, error) {
 	if v, err := s.take(id); err == nil {
 		return v, nil
 	}
-	if err := s.check(text); err != nil {
+	p, err := s.parse(text)
+	if err != nil {
 		return nil, err
 	}
-	v, err := s.open(text, from)
+	v, err := s.open(p, text, from)
 	if err != nil {
 		return nil, err
 	}
@@ -189,15 +190,15 @@ func (s *shelf) try(text []byte, from *version) (*version, error) {
 	return v, nil
 }
 
-// check parses a client's text and looks at the files that it names.
-func (s *shelf) check(text []byte) error {
+// parse reads a client's text and looks at the files that it names.
+func (s *shelf) parse(text []byte) (*plan.Plan, error) {
 	p, err := plan.Parse(s.path, text)
 	if err != nil {
-		return err
+		return nil, err
 	}
 	s.mutex.Lock()
 	defer s.mutex.Unlock()
-	return p.NamesOnly(s.files)
+	return p, p.NamesOnly(s.files)
 }
 
 // save puts a text in the place of the file, whole, if the file still holds the version that the
