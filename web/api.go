@@ -52,8 +52,8 @@ func schemaName(t reflect.Type, hint string) string {
 	return strings.TrimSuffix(huma.DefaultSchemaNamer(t, hint), "JSON")
 }
 
-// describe finishes the description: lists of any length are never null, and everything that goes wrong is a
-// [Problem].
+// describe finishes the description: lists of any length are never null, and everything that goes
+// wrong is a [Problem].
 func describe(doc *huma.OpenAPI) {
 	schemas := doc.Components.Schemas
 	problems := schemas.Schema(reflect.TypeFor[Problem](), true, "")
