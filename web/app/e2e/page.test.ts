@@ -216,6 +216,39 @@ test('distance and bearing are measured between two places, sites among them', a
   });
 });
 
+test('coverage is mapped to its end, drawn and read out; bands follow', async () => {
+  await looking(await bench.visit(), async (v) => {
+    await v.drawn();
+    const { width, height } = (await v.page.locator('#map').boundingBox())!;
+    const clip = { x: width * 0.45, y: height * 0.4, width: 60, height: 60 };
+    const picture = async () => (await v.page.screenshot({ clip })).toString('base64');
+    const before = await picture();
+    await v.page.getByRole('button', { name: /^Map the coverage/ }).click();
+    await v.page.locator('progress').waitFor();
+    await v.page.locator('.key', { hasText: '40 dB and more' }).waitFor();
+    await expect.poll(picture).not.toBe(before);
+    const margin = await picture();
+    await v.page.mouse.move(width * 0.45, height * 0.5);
+    await v.page.locator('.map-word.place', { hasText: /margin [+−]?\d+\.\d dB|no coverage/ }).waitFor();
+    expect(v.page.url()).toContain('cover=Hallin%20Top%2Fgauges');
+    await v.page.getByRole('button', { name: 'Bands', exact: true }).click();
+    await expect.poll(picture).not.toBe(margin);
+    expect(await v.axe()).toEqual([]);
+    await v.page.getByRole('button', { name: 'Nothing' }).click();
+    await expect.poll(picture).toBe(before);
+  });
+});
+
+test('a coverage job can be cancelled', async () => {
+  await looking(await bench.visit(), async (v) => {
+    await v.page.getByRole('button', { name: /^Map the coverage/ }).click();
+    await v.page.getByRole('button', { name: 'Cancel' }).click();
+    await v.page.locator('.hint', { hasText: 'given up' }).waitFor();
+    await v.page.getByRole('button', { name: /^Map the coverage/ }).click();
+    await v.page.locator('table', { hasText: 'Area by margin' }).waitFor();
+  });
+});
+
 for (const colorScheme of ['light', 'dark'] as const) {
   test(`axe finds nothing in ${colorScheme}`, async () => {
     await looking(await bench.visit(thin, { colorScheme }), async (v) => {

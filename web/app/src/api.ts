@@ -16,6 +16,7 @@ export type Antenna = Schemas['AntennaAnswer'];
 export type Ground = Schemas['GroundAnswer'];
 export type Place = Schemas['PlaceAnswer'];
 export type Measured = Schemas['Measured'];
+export type CoverJob = Schemas['CoverJob'];
 export type Heights = Schemas['Heights'];
 export type Edit = Schemas['EditBody'];
 export type Problem = Schemas['Problem'];

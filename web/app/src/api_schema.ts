@@ -21,6 +21,92 @@ export interface paths {
         patch?: never;
         trace?: never;
     };
+    "/api/coverage": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        get?: never;
+        put?: never;
+        /** Start to map the coverage of a site */
+        post: operations["startCoverage"];
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/coverage/{id}": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** How far a coverage job has come, and its result */
+        get: operations["readCoverage"];
+        put?: never;
+        post?: never;
+        /** Cancel a coverage job that is running */
+        delete: operations["cancelCoverage"];
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/coverage/{id}/bands": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** The bands of a coverage map as polygons */
+        get: operations["readCoverageBands"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/coverage/{id}/events": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** Watch a coverage job until it ends */
+        get: operations["watchCoverage"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
+    "/api/coverage/{id}/value": {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        /** What a coverage map holds at a place */
+        get: operations["readCoverageValue"];
+        put?: never;
+        post?: never;
+        delete?: never;
+        options?: never;
+        head?: never;
+        patch?: never;
+        trace?: never;
+    };
     "/api/files/antenna.{format}": {
         parameters: {
             query?: never;
@@ -371,6 +457,16 @@ export interface components {
             kind: string;
             name: string;
         };
+        Band: {
+            /** Format: double */
+            area_km2: number;
+            /** Format: int64 */
+            cells: number;
+            /** Format: double */
+            from_db: number;
+            /** Format: double */
+            to_db: number | null;
+        };
         ChannelSummary: {
             /** Format: double */
             back_hz: number;
@@ -379,6 +475,18 @@ export interface components {
             name: string;
             /** Format: double */
             out_hz: number;
+        };
+        Check: {
+            /** Format: double */
+            cell_max_db: number;
+            /** Format: double */
+            cell_median_db: number;
+            /** Format: double */
+            cell_p95_db: number;
+            /** Format: int64 */
+            samples: number;
+            /** Format: double */
+            sweep_max_db: number;
         };
         Checked: {
             problems: components["schemas"]["ProblemDetail"][];
@@ -392,6 +500,91 @@ export interface components {
             needed_ratio: number;
             /** Format: double */
             worst_ratio: number;
+        };
+        CoverBody: {
+            /** @description as the plan's coverage list names it */
+            site: string;
+            /** @description version of the plan; that of the file when left out */
+            version?: string;
+        };
+        CoverJob: {
+            /**
+             * Format: int64
+             * @description radials
+             */
+            done: number;
+            id: string;
+            /** @description why it failed */
+            problem?: string;
+            result?: components["schemas"]["CoverResult"];
+            site: string;
+            /** @enum {string} */
+            state: "running" | "finished" | "cancelled" | "failed";
+            /**
+             * Format: int64
+             * @description radials; 0 while the ground is read
+             */
+            total: number;
+            /** @description version of the plan that it maps */
+            version: string;
+        };
+        CoverProgress: {
+            /**
+             * Format: int64
+             * @description radials
+             */
+            done: number;
+            /** Format: int64 */
+            total: number;
+        };
+        CoverResult: {
+            bands: components["schemas"]["Band"][];
+            /** Format: double */
+            cell_m: number;
+            /** Format: int64 */
+            cells: number;
+            check: components["schemas"]["Check"];
+            /** Format: double */
+            east: number;
+            /** Format: double */
+            frequency_hz: number;
+            /** @description colours of the tiles, growing */
+            legend: components["schemas"]["LegendColor"][];
+            /** Format: int64 */
+            max_zoom: number;
+            /** Format: int64 */
+            min_zoom: number;
+            /** Format: double */
+            north: number;
+            /** Format: int64 */
+            radials: number;
+            /** Format: double */
+            range_km: number;
+            /** Format: double */
+            seconds: number;
+            site: string;
+            /** Format: double */
+            south: number;
+            /** @description address of the margin's tiles: PNG, clear where there is no coverage */
+            tiles: string;
+            /** Format: int64 */
+            void_cells: number;
+            /** Format: double */
+            west: number;
+        };
+        CoverSummary: {
+            /** Format: double */
+            range_km: number;
+            site: string;
+        };
+        CoverValue: {
+            /**
+             * Format: double
+             * @description basic transmission loss for half of time and locations
+             */
+            loss_db: number | null;
+            /** Format: double */
+            margin_db: number | null;
         };
         Cut: {
             /** Format: double */
@@ -492,6 +685,12 @@ export interface components {
             /** Format: double */
             to_km: number;
             trans_horizon: boolean;
+        };
+        LegendColor: {
+            /** @example #002051 */
+            color: string;
+            /** Format: double */
+            from_db: number;
         };
         Line: {
             /** @enum {string} */
@@ -612,6 +811,8 @@ export interface components {
         PlanAnswer: {
             antennas: components["schemas"]["AntennaSummary"][];
             channels: components["schemas"]["ChannelSummary"][];
+            /** @description maps that the plan asks for */
+            coverage: components["schemas"]["CoverSummary"][];
             feeders: string[];
             /** @description name of the plan's file */
             file: string;
@@ -880,6 +1081,226 @@ export interface operations {
                 };
                 content: {
                     "application/json": components["schemas"]["AntennaAnswer"];
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    startCoverage: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path?: never;
+            cookie?: never;
+        };
+        requestBody: {
+            content: {
+                /**
+                 * @example {
+                 *       "site": "Hallin Top/gauges"
+                 *     }
+                 */
+                "application/json": components["schemas"]["CoverBody"];
+            };
+        };
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["CoverJob"];
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    readCoverage: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                id: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["CoverJob"];
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    cancelCoverage: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                id: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["CoverJob"];
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    readCoverageBands: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                id: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    "Content-Disposition"?: string;
+                    "Content-Type"?: string;
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/geo+json": string;
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    watchCoverage: {
+        parameters: {
+            query?: never;
+            header?: never;
+            path: {
+                id: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "text/event-stream": ({
+                        data: components["schemas"]["CoverJob"];
+                        /**
+                         * @description The event name.
+                         * @constant
+                         */
+                        event: "finished";
+                        /** @description The event ID. */
+                        id?: number;
+                        /** @description The retry time in milliseconds. */
+                        retry?: number;
+                    } | {
+                        data: components["schemas"]["CoverProgress"];
+                        /**
+                         * @description The event name.
+                         * @constant
+                         */
+                        event: "progress";
+                        /** @description The event ID. */
+                        id?: number;
+                        /** @description The retry time in milliseconds. */
+                        retry?: number;
+                    })[];
+                };
+            };
+            /** @description Error */
+            default: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/problem+json": components["schemas"]["Problem"];
+                };
+            };
+        };
+    };
+    readCoverageValue: {
+        parameters: {
+            query: {
+                lon: number;
+                lat: number;
+            };
+            header?: never;
+            path: {
+                id: string;
+            };
+            cookie?: never;
+        };
+        requestBody?: never;
+        responses: {
+            /** @description OK */
+            200: {
+                headers: {
+                    [name: string]: unknown;
+                };
+                content: {
+                    "application/json": components["schemas"]["CoverValue"];
                 };
             };
             /** @description Error */

@@ -1,6 +1,7 @@
 import './style.css';
 import { render } from 'lit';
 import { createChanges } from './changes';
+import { createCover } from './cover';
 import { desk } from './desk';
 import { readHash, writeHash } from './hash';
 import type { MapPart } from './map';
@@ -12,6 +13,7 @@ import { words } from './words';
 
 const store = createStore({ ...initialState(readHash(location.hash)), theme: rememberedTheme() });
 const changes = createChanges(store);
+const cover = createCover(store);
 let map: MapPart | undefined;
 
 const bar = {
@@ -28,7 +30,7 @@ function draw() {
   requestAnimationFrame(() => {
     drawing = false;
     render(
-      page(store, changes, bar, () => map),
+      page(store, changes, cover, bar, () => map),
       document.body,
     );
     measure();
@@ -51,7 +53,13 @@ store.watch((now, before) => {
   draw();
   if (now.theme !== before.theme) applyTheme(now.theme);
   if (now.plan.value !== before.plan.value) document.title = `${now.plan.value?.title ?? ''} – ${words.product}`;
-  const hash = writeHash({ ...now.view, ...(now.link ? { link: now.link } : {}) });
+  const { at, cover: asked } = now.view;
+  const covered = now.cover?.job.site ?? asked;
+  const hash = writeHash({
+    ...(at ? { at } : {}),
+    ...(now.link ? { link: now.link } : {}),
+    ...(covered ? { cover: covered } : {}),
+  });
   if (hash !== location.hash) history.replaceState(null, '', hash || location.pathname);
 });
 
@@ -88,4 +96,5 @@ async function drawMap() {
 applyTheme(store.get().theme);
 draw();
 await changes.read();
+if (store.get().view.cover) void cover.start(store.get().view.cover!);
 requestAnimationFrame(() => void drawMap());

@@ -7,10 +7,11 @@ import type { Changes } from './changes';
 import contourUrl from './contour_worker.js?worker&url';
 import { moveSite } from './edits';
 import { decimalPlace } from './format';
-import { newest } from './latest';
+import { drawCover } from './map_cover';
 import { boundsOf, figureFeatures, lineFeature, linkFeatures, moveBy, siteFeatures } from './map_data';
 import { markImage } from './map_marks';
 import { type Colours, colourNames, mapStyle } from './map_style';
+import { measureAt, readPlace } from './places';
 import { nearest } from './profile';
 import type { State } from './state';
 import type { Store } from './store';
@@ -76,6 +77,7 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
       map.addImage(`mark-${v}`, markImage(v, c[v], c.paper), { pixelRatio: 2 });
     }
     drawData(store.get());
+    drawCover(map, store.get().cover, location.origin, c.ink);
     markChosen(store.get());
   }
 
@@ -98,13 +100,13 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
   map.on('mousemove', (e) => {
     const over = map.queryRenderedFeatures(e.point, { layers: ['links', 'link-figures'] }).length > 0;
     map.getCanvas().style.cursor = store.get().measure ? 'crosshair' : over ? 'pointer' : '';
-    readPlace({ store, lon: e.lngLat.lng, lat: e.lngLat.lat });
+    readPlace({ store, at: [e.lngLat.lng, e.lngLat.lat] });
   });
   map.getCanvas().addEventListener('keydown', (e) => {
     if (e.key !== 'Enter') return;
     const { lng, lat } = map.getCenter();
     if (store.get().measure) measureAt(store, [lng, lat]);
-    else readPlace({ store, lon: lng, lat });
+    else readPlace({ store, at: [lng, lat] });
   });
   map.on('moveend', () => {
     const { lat, lng } = map.getCenter();
@@ -123,6 +125,7 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
     }
     if (now.link !== before.link && map.isStyleLoaded() !== undefined) markChosen(now);
     if (now.cursorKm !== before.cursorKm || now.section.value !== before.section.value) walker(now);
+    if (coverChanged(now.cover, before.cover)) drawCover(map, now.cover, location.origin, colours().ink);
     if (now.solid !== before.solid && ground) solid(map, now.solid);
   });
   matchMedia('(prefers-color-scheme: dark)').addEventListener('change', () => map.setStyle(style(), { diff: false }));
@@ -142,6 +145,9 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
     },
   };
 }
+
+const coverChanged = (a: State['cover'], b: State['cover']) =>
+  a?.job.result !== b?.job.result || a?.shown !== b?.shown || a?.bands !== b?.bands;
 
 async function groundOf(version: string): Promise<Ground | undefined> {
   try {
@@ -204,30 +210,6 @@ function walkerOf(map: maplibre.Map): (s: State) => void {
     if (p) marker.setLngLat([p.lon, p.lat]).addTo(map);
     else marker.remove();
   };
-}
-
-const readPlace = newest(async ({ store, lon, lat }: { store: Store<State>; lon: number; lat: number }) => {
-  const { version } = store.get();
-  try {
-    store.set({ place: await taken(server.GET('/api/place', { params: { query: { version, lon, lat } } })) });
-  } catch {
-    store.set({ place: undefined });
-  }
-});
-
-async function measureAt(store: Store<State>, at: [number, number]) {
-  const first = store.get().measure?.points ?? [];
-  const points = first.length === 1 ? [...first, at] : [at];
-  store.set({ measure: { points } });
-  const [a, b] = points;
-  if (!a || !b) return;
-  try {
-    const query = { from_lon: a[0], from_lat: a[1], to_lon: b[0], to_lat: b[1] };
-    const way = await taken(server.GET('/api/measure', { params: { query } }));
-    if (store.get().measure?.points === points) store.set({ measure: { points, way } });
-  } catch {
-    store.set({ measure: { points: [] } });
-  }
 }
 
 /** The sites are buttons on the map: to be dragged, or moved by keys. */

@@ -1,5 +1,6 @@
 import { html, nothing } from 'lit';
-import { bearing, fixed } from './format';
+import { coverLegend } from './cover_panel';
+import { bearing, fixed, margin } from './format';
 import type { MapPart } from './map';
 import type { State } from './state';
 import type { Store } from './store';
@@ -20,6 +21,7 @@ export function mapTools(store: Store<State>, map: MapPart | undefined) {
       ${button(words.measureLong, '↔', () => store.set({ measure: s.measure ? undefined : { points: [] } }), s.measure !== undefined)}
     </div>
     ${s.measure ? html`<p class="map-word top" role="status">${measured(s.measure)}</p>` : nothing}
+    ${coverLegend(s)}
     ${s.place ? placeOf(s.place) : nothing}
   `;
 }
@@ -32,6 +34,7 @@ function measured(m: NonNullable<State['measure']>): string {
 
 function placeOf(p: NonNullable<State['place']>) {
   return html`<ul class="map-word place" aria-label=${words.notations}>
+    ${p.margin_db === undefined ? nothing : html`<li><b>${p.margin_db === null ? words.noCover : words.coverHere(margin(p.margin_db))}</b></li>`}
     <li>${p.ground_m === null ? words.noHeight : words.ground(fixed(p.ground_m, 0))}${p.cover_m ? words.coverAt(fixed(p.cover_m, 0)) : nothing}</li>
     <li>${p.decimal}</li><li>${p.dms}</li><li>${p.utm}</li>
   </ul>`;

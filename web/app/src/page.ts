@@ -4,6 +4,8 @@ import { antennaPanel, endChoice } from './antenna_panel';
 import type { Link, Plan } from './api';
 import { type BarEvents, bar } from './bar';
 import type { Changes } from './changes';
+import type { CoverDesk } from './cover';
+import { coverPanel } from './cover_panel';
 import { addLink, addSite, changeAntenna, placeSite, raiseAntenna, removeLink } from './edits';
 import { bearing, fixed, metres } from './format';
 import { heightsTable } from './heights_table';
@@ -20,7 +22,13 @@ import type { Store } from './store';
 import { words } from './words';
 
 /** The page is a function of the state: the bar, the map's place, the section and the tables at the side. */
-export function page(store: Store<State>, changes: Changes, events: BarEvents, map: () => MapPart | undefined) {
+export function page(
+  store: Store<State>,
+  changes: Changes,
+  cover: CoverDesk,
+  events: BarEvents,
+  map: () => MapPart | undefined,
+) {
   const s = store.get();
   const plan = s.plan.value;
   const link = chosenLink(s);
@@ -49,6 +57,11 @@ export function page(store: Store<State>, changes: Changes, events: BarEvents, m
           ${s.links.value ? notes(words.remarks(s.links.value.notes?.length ?? 0), s.links.value.notes ?? [], false) : nothing}
         </section>
         ${plan && link ? ofLink(store, changes, plan, link) : plan && s.links.value ? html`<p class="hint">${words.noLinkChosen}</p>` : nothing}
+        ${
+          plan && plan.coverage.length > 0
+            ? html`<section aria-labelledby="cover-title"><h2 id="cover-title">${words.coverage}</h2>${coverPanel(s, plan, cover)}</section>`
+            : nothing
+        }
         ${plan ? sites(store, changes, plan, map) : nothing}
       </div>
     </main>

@@ -1,5 +1,6 @@
 import type { Antenna, Heights, Link, Links, Measured, Place, Plan, Section, Site, Station } from './api';
 import { type Asked, notAsked } from './asked';
+import type { Cover } from './cover';
 import type { View } from './hash';
 
 /** A Step is a version of the plan and what made it, for undo. */
@@ -47,8 +48,9 @@ export interface State {
   view: View;
   /** Whether the ground is shown in relief, from the side. */
   solid: boolean;
-  /** What is under the pointer. */
-  place: Place | undefined;
+  /** What is under the pointer; the margin is that of the coverage map that is shown. */
+  place: (Place & { margin_db?: number | null }) | undefined;
+  cover: Cover | undefined;
   /** Two places, or fewer, whose distance is asked; the measuring goes on until it is undefined. */
   measure: { points: [number, number][]; way?: Measured } | undefined;
   theme: Theme;
@@ -82,6 +84,7 @@ export function initialState(view: View): State {
     view,
     solid: false,
     place: undefined,
+    cover: undefined,
     measure: undefined,
     theme: 'system',
     said: '',

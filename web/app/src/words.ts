@@ -181,6 +181,32 @@ export const en = {
   tried: (who: string, antenna: string, m: string) => `${who}: ${antenna} at ${m} m`,
   now: 'as planned',
 
+  // Coverage.
+  coverage: 'Coverage',
+  mapCoverage: (site: string) => `Map the coverage of ${site}`,
+  coverRange: (km: string) => `out to ${km} km`,
+  coverDone: 'Coverage computed',
+  radials: (done: number, total: number) => `${done} of ${total} radials`,
+  cancel: 'Cancel',
+  coverState: {
+    running: 'Reading the ground…',
+    finished: 'The coverage map is ready.',
+    cancelled: 'The coverage map was given up.',
+    failed: 'The coverage map could not be made.',
+  },
+  coverStale: 'This map is of another version of the plan than the one in view.',
+  coverShow: 'What is drawn of the coverage',
+  coverShown: { margin: 'Margin', bands: 'Bands', none: 'Nothing' },
+  coverOf: (site: string) => `Area by margin, ${site}`,
+  area: 'km²',
+  bandFrom: (from: string) => `${from} dB and more`,
+  bandTo: (from: string, to: string) => `${from} to ${to} dB`,
+  sampling: (n: number, median: string, p95: string, most: string) =>
+    `Against ${n} cells worked out as links are: differs by ${median} dB at the median, ${p95} dB at 95 %, ${most} dB at most.`,
+  coverLegend: 'Legend of the coverage map',
+  coverHere: (db: string) => `margin ${db} dB`,
+  noCover: 'no coverage',
+
   // Sites.
   sites: 'Sites',
   name: 'Name',
@@ -221,6 +247,7 @@ export const en = {
     antenna: 'Antenna (text)',
     pattern: 'Antenna pattern (SVG)',
     vswr: 'VSWR curve (SVG)',
+    bands: 'Bands (GeoJSON)',
   },
 
   noAnswer: 'The server does not answer. Is fellreach serve still running?',
