@@ -13,8 +13,9 @@ type block [2][2]complex128
 func (b block) transposed() block { return block{{b[0][0], b[1][0]}, {b[0][1], b[1][1]}} }
 
 // nearSegments is the distance between the centres of two segments, over the mean of their
-// lengths, up to which the kernel is integrated as a near one.
-const nearSegments = 2.5
+// lengths, up to which the kernel is integrated as a near one. It is no ratio that segments at a
+// feed are likely to stand in: rounding must not decide.
+const nearSegments = 2.553
 
 // An interaction is what two runs have to do with each other. With w the sines on a segment of
 // length d, w0 = sin k(d-s)/sin kd and w1 = sin ks/sin kd, and t the directions, the blocks are

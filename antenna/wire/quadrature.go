@@ -42,12 +42,13 @@ var (
 )
 
 // farPoints returns how many points on each of two segments leave less than about 1e-6 of their
-// interaction open, from the distance of their centres over the mean of their lengths.
+// interaction open, from the distance of their centres over the mean of their lengths. The limits
+// lie between whole numbers, on which equal segments of one line stand: rounding must not decide.
 func farPoints(distance float64) int {
 	switch {
-	case distance > 15:
+	case distance > 15.5:
 		return 2
-	case distance > 6:
+	case distance > 6.5:
 		return 3
 	}
 	return 4

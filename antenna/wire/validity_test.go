@@ -170,7 +170,8 @@ func TestSegmentation(t *testing.T) {
 		{0.01, 1e-2, 0, nil, []int{1}},
 		{0.5, 1e-3, 30, []float64{0.5}, []int{15, 15}},
 		{0.5, 1e-3, 30, []float64{0.1, 0.5}, []int{3, 12, 15}},
-		{0.5, 1e-3, 2, []float64{0.1}, []int{1, 2}},
+		{0.5, 1e-3, 2, []float64{0.1}, []int{1, 1}},
+		{0.5, 1e-3, 20, []float64{0.625}, []int{12, 8}}, // 12.5 and 7.5: no rounding decides
 	} {
 		w := upright(tc.lengthM, tc.radiusM)
 		w.Segments = tc.segments
