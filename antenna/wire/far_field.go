@@ -123,3 +123,11 @@ func (r *radiator) radiatedW() float64 {
 	}
 	return 4 * math.Pi * sum / (2 * antenna.WaveImpedanceOhm)
 }
+
+// directionOf returns the direction of a unit vector of the antenna's frame.
+func directionOf(v vec) antenna.Direction {
+	return antenna.Direction{
+		AzDeg: math.Atan2(-v[1], v[0]) * 180 / math.Pi,
+		ElDeg: math.Asin(max(-1, min(1, v[2]))) * 180 / math.Pi,
+	}
+}

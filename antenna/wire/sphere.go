@@ -136,18 +136,25 @@ func (s *sphere) peak() float64 {
 			}
 		}
 	}
+	return s.summit(at, step)
+}
+
+// summit climbs from a direction in ever smaller steps, in degrees, to the largest power around: along
+// great circles, so that a pole is a place like any other.
+func (s *sphere) summit(at antenna.Direction, stepDeg float64) float64 {
 	most := s.field(at).Power()
-	for step > 1e-3 {
+	for stepDeg > 1e-3 {
 		higher := false
-		for _, to := range []antenna.Direction{{AzDeg: step}, {AzDeg: -step}, {ElDeg: step}, {ElDeg: -step}} {
-			to.AzDeg += at.AzDeg
-			to.ElDeg = max(-90, min(90, to.ElDeg+at.ElDeg))
+		ray, down, across := axes(at)
+		for _, way := range []vec{down, down.times(-1), across, across.times(-1)} {
+			sin, cos := math.Sincos(stepDeg * math.Pi / 180)
+			to := directionOf(ray.times(cos).plus(way.times(sin)))
 			if p := s.field(to).Power(); p > most {
 				most, at, higher = p, to, true
 			}
 		}
 		if !higher {
-			step /= 2
+			stepDeg /= 2
 		}
 	}
 	return most
