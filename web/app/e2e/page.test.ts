@@ -289,3 +289,35 @@ test('without WebGL the page says so, and tables and section work', async () => 
   expect(await visit.axe()).toEqual([]);
   await visit.close();
 });
+
+test('a server that has gone is told, and what was there stays', async () => {
+  const visit = await bench.visit(thin);
+  const cell = visit.page.locator('table.heights button').first();
+  await cell.waitFor();
+  const before = await visit.margin();
+  await visit.page.route('**/api/try', (route) => route.abort('connectionrefused'));
+  await cell.click();
+  await visit.page.locator('.trouble', { hasText: 'does not answer' }).waitFor();
+  expect(await visit.margin()).toBe(before);
+  await visit.close();
+});
+
+test('a site and a link are added and removed again by undo', async () => {
+  await looking(await bench.visit(), async (v) => {
+    await v.drawn();
+    await v.page.locator('summary', { hasText: 'Add a site' }).click();
+    await v.page.getByLabel('Name').fill('Cairn');
+    await v.page.getByRole('button', { name: 'Add', exact: true }).click();
+    await v.page.locator('.site[aria-label="Site Cairn"]').waitFor();
+    await v.page.locator('summary', { hasText: 'Add a link' }).click();
+    await v.page.getByLabel('From').selectOption('Cairn');
+    await v.page.getByLabel('To', { exact: true }).selectOption('Mouth Hill');
+    await v.page.getByRole('button', { name: 'Add', exact: true }).click();
+    await v.link('Cairn').waitFor();
+    await v.page.keyboard.press('Control+z');
+    await v.link('Cairn').waitFor({ state: 'detached' });
+    await v.page.keyboard.press('Control+z');
+    await v.page.locator('.site[aria-label="Site Cairn"]').waitFor({ state: 'detached' });
+    await v.page.locator('.bar .state', { hasText: 'as saved' }).waitFor();
+  });
+});

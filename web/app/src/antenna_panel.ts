@@ -145,7 +145,7 @@ function cutTable(flat: Cut, up: Cut) {
     <thead><tr><th scope="col">${head}</th><th scope="col" class="figure">${words.dbiHead}</th></tr></thead>
     <tbody>${rows(cut, 15).map((c) => html`<tr><th scope="row">${c.deg}°</th><td class="figure">${fixed(c.dbi, 1)}</td></tr>`)}</tbody>
   </table>`;
-  return html`<details><summary>${words.patternTable}</summary>
+  return html`<details class="patterns"><summary>${words.patternTable}</summary>
     <div class="cuts">${table(words.bearingHead, flat)}${table(words.elevationHead, up)}</div>
   </details>`;
 }

@@ -6,6 +6,7 @@ export interface BarEvents {
   undo(): void;
   redo(): void;
   save(): void;
+  print(): void;
   theme(t: Theme): void;
 }
 
@@ -25,13 +26,13 @@ export function bar(s: State, on: BarEvents) {
       <button ?disabled=${!before} title=${before ? words.undoWhat(before.what) : words.undo} @click=${on.undo}>${words.undo}</button>
       <button ?disabled=${!after} title=${after ? words.redoWhat(after.what) : words.redo} @click=${on.redo}>${words.redo}</button>
       <button class="main" ?disabled=${!dirty || s.saving} @click=${on.save}>${s.saving ? words.saving : words.save}</button>
-      ${plan ? files(s) : nothing}
+      ${plan ? files(s, on.print) : nothing}
       <button title=${words.themeLong[s.theme]} @click=${() => on.theme(nextTheme[s.theme])}>${words.theme[s.theme]}</button>
     </div>
   </header>`;
 }
 
-function files(s: State) {
+function files(s: State, print: () => void) {
   const of = (path: string, query: Record<string, string> = {}) =>
     `./api/${path}?${new URLSearchParams({ ...query, ...(s.version ? { version: s.version } : {}) })}`;
   const d = words.download;
@@ -61,7 +62,7 @@ function files(s: State) {
     <summary>${words.files}</summary>
     <ul>
       ${list.map(([name, href]) => html`<li><a href=${href!} download>${name}</a></li>`)}
-      <li><button class="plain" @click=${() => window.print()}>${words.print}</button></li>
+      <li><button class="plain" @click=${print}>${words.print}</button></li>
     </ul>
   </details>`;
 }

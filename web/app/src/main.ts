@@ -1,4 +1,5 @@
 import './style.css';
+import './print.css';
 import { render } from 'lit';
 import { createChanges } from './changes';
 import { createCover } from './cover';
@@ -20,6 +21,14 @@ const bar = {
   undo: () => void changes.undo(),
   redo: () => void changes.redo(),
   save: () => void changes.save(),
+  // The map is a picture: it is drawn in the light colours of paper before it is printed.
+  print: async () => {
+    const { theme } = store.get();
+    store.set({ theme: 'light' });
+    await map?.settled();
+    window.print();
+    store.set({ theme });
+  },
   theme: (theme: ReturnType<typeof rememberedTheme>) => store.set({ theme }),
 };
 

@@ -27,6 +27,8 @@ export interface MapPart {
   show(site: Site): void;
   zoom(by: 1 | -1): void;
   whole(): void;
+  /** Settles when all that is asked for has been drawn. */
+  settled(): Promise<void>;
 }
 
 /** createMap draws the plan on its ground into an element; it throws where the browser offers no WebGL 2. */
@@ -137,6 +139,11 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
     middle: () => decimalPlace(map.getCenter().lat, map.getCenter().lng),
     show: (site) =>
       map.easeTo({ center: [site.place.lon, site.place.lat], zoom: Math.max(map.getZoom(), 13), ...motion() }),
+    settled: async () => {
+      await new Promise(requestAnimationFrame);
+      map.triggerRepaint();
+      await map.once('idle');
+    },
     zoom: (by) => map.zoomTo(Math.round(map.getZoom() + by), motion()),
     whole: () => {
       const p = store.get().plan.value;

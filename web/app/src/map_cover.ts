@@ -38,7 +38,7 @@ export function drawCover(map: Chart, cover: Cover | undefined, origin: string, 
 function drawBands(map: Chart, cover: Cover, fromDB: number[], ink: string, under: string | undefined): void {
   const data = cover.bands as Parameters<GeoJSONSource['setData']>[0];
   if (map.getSource('bands')) (map.getSource('bands') as GeoJSONSource).setData(data);
-  else map.addSource('bands', { type: 'geojson', data });
+  else map.addSource('bands', { type: 'geojson', data, tolerance: 1.5 });
   fromDB.forEach((_, i) => {
     if (map.hasImage(`hatch-${i}`)) map.removeImage(`hatch-${i}`);
     map.addImage(`hatch-${i}`, hatch(hatches[Math.min(i, hatches.length - 1)]!, ink), { pixelRatio: 2 });

@@ -255,6 +255,13 @@ function linkLayers(c: Colours): LayerSpecification[] {
       paint: { 'line-color': c.ink, 'line-width': 1.6, 'line-dasharray': [3, 2] },
     },
     {
+      // Under the buttons of the sites, which printing leaves out.
+      id: 'site-dots',
+      type: 'circle',
+      source: 'sites',
+      paint: { 'circle-radius': 6, 'circle-color': c.paper, 'circle-stroke-color': c.ink, 'circle-stroke-width': 3 },
+    },
+    {
       id: 'site-names',
       type: 'symbol',
       source: 'sites',
