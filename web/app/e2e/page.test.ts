@@ -310,7 +310,7 @@ test('a site and a link are added and removed again by undo', async () => {
     await v.page.getByRole('button', { name: 'Add', exact: true }).click();
     await v.page.locator('.site[aria-label="Site Cairn"]').waitFor();
     await v.page.locator('summary', { hasText: 'Add a link' }).click();
-    await v.page.getByLabel('From').selectOption('Cairn');
+    await v.page.getByLabel('From', { exact: true }).selectOption('Cairn');
     await v.page.getByLabel('To', { exact: true }).selectOption('Mouth Hill');
     await v.page.getByRole('button', { name: 'Add', exact: true }).click();
     await v.link('Cairn').waitFor();

@@ -22,7 +22,7 @@ export type Edit = Schemas['EditBody'];
 export type Problem = Schemas['Problem'];
 export type ProblemDetail = Schemas['ProblemDetail'];
 
-export const server = createClient<paths>({ baseUrl: location.origin });
+export const server = createClient<paths>();
 
 /** A Refused is a call that the server answered with a problem, or did not answer (status 0). */
 export class Refused extends Error {

@@ -1,7 +1,8 @@
-import { type Edit, type Links, Refused, server, taken } from './api';
+import { type Edit, Refused, server, taken } from './api';
 import { answered, refused, waitFor } from './asked';
+import { joined } from './joined';
 import { newest } from './latest';
-import { changed, linkId, type State } from './state';
+import { changed, type State } from './state';
 import type { Store } from './store';
 import { words } from './words';
 
@@ -143,10 +144,3 @@ export function createChanges(store: Store<State>): Changes {
 }
 
 const conflict = { title: '', status: 409, detail: words.conflict };
-
-/** joined puts links that were worked out anew in the place of the former ones. */
-export function joined(all: Links | undefined, some: Links): Links {
-  if (!all || some.links.length >= all.links.length) return some;
-  const fresh = new Map(some.links.map((l) => [linkId(l), l]));
-  return { ...all, links: all.links.map((l) => fresh.get(linkId(l)) ?? l) };
-}

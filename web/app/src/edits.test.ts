@@ -77,7 +77,7 @@ test('an antenna with a beam that faces nowhere is turned to the other end', () 
 
 test('places and heights are written as plans take them', () => {
   expect(moveSite(site(), -0.5, 10)).toEqual([set('sites/Gauge 3/at', '0.50000 S, 10.00000 E')]);
-  expect(addSite({ name: 'New', at: '1 N, 2 E', radio: 'r', antenna: 'a', heightM: 4 })[0]).toEqual({
+  expect(addSite({ name: 'New', at: '1 N, 2 E', radio: 'r', antenna: 'a', heightM: 4, toward: '' })[0]).toEqual({
     do: 'add',
     path: ['sites'],
     value: { name: 'New', at: '1 N, 2 E', radio: 'r', antenna: { use: 'a', above_ground: '4 m' } },

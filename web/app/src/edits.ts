@@ -36,12 +36,15 @@ export function raiseAntenna(site: Site, station: Station, heightM: number): Edi
 
 const beamed = new Set(['yagi', 'table', 'cuts', 'datasheet']);
 
+/** hasBeam tells whether antennas of a kind must face somewhere. */
+export const hasBeam = (kind: string): boolean => beamed.has(kind);
+
 /** changeAntenna hangs up another antenna; one with a beam that faces nowhere yet is turned to the given site. */
 export function changeAntenna(plan: Plan, station: Station, antenna: string, toward: string | undefined): Edit[] {
   const edits: Edit[] = [{ do: 'set', path: [...station.path, 'antenna', 'use'], value: antenna }];
   const kind = plan.antennas.find((a) => a.name === antenna)?.kind ?? '';
   const faces = station.facing_site !== undefined || station.facing_deg !== 0;
-  if (beamed.has(kind) && !faces && toward) {
+  if (hasBeam(kind) && !faces && toward) {
     edits.push({ do: 'set', path: [...station.path, 'antenna', 'facing'], value: `toward ${toward}` });
   }
   return edits;
@@ -53,6 +56,8 @@ export interface NewSite {
   radio: string;
   antenna: string;
   heightM: number;
+  /** The site that the antenna faces; empty for none. */
+  toward: string;
 }
 
 export const addSite = (s: NewSite): Edit[] => [
@@ -63,7 +68,11 @@ export const addSite = (s: NewSite): Edit[] => [
       name: s.name,
       at: s.at,
       radio: s.radio,
-      antenna: { use: s.antenna, above_ground: quantity(s.heightM) },
+      antenna: {
+        use: s.antenna,
+        above_ground: quantity(s.heightM),
+        ...(s.toward ? { facing: `toward ${s.toward}` } : {}),
+      },
     },
   },
 ];

@@ -1,6 +1,6 @@
 import { expect, test } from 'vitest';
 import type { Links, Plan } from './api';
-import { joined } from './changes';
+import { joined } from './joined';
 import { boundsOf, figureFeatures, linkFeatures, moveBy } from './map_data';
 
 const site = (name: string, lon: number, lat: number, stations: string[]) => ({

@@ -227,6 +227,8 @@ export const en = {
   removeLink: 'Remove this link',
   removedLink: (what: string) => `link ${what} removed`,
   add: 'Add',
+  facing: 'Faces',
+  facingNone: 'nowhere in particular',
   radio: 'Radio',
   channel: 'Channel',
   to: 'To',
