@@ -5,6 +5,7 @@ import (
 	"context"
 	"fmt"
 	"math"
+	"math/bits"
 	"slices"
 	"sync"
 
@@ -41,32 +42,39 @@ type sampling struct {
 
 type sampledCell struct {
 	index        int
+	lot          uint32 // drawn from the index: the lowest lots are looked at
 	lossDB       float64
 	verticalPart float64
 }
 
-// wantedSamples is about how many cells are looked at; the least that is promised is 1,000, where
-// the map has so many.
-const wantedSamples = 1500
+// wantedSamples is how many cells are looked at, where the map has so many. A plenty more are kept
+// until it is known how many cells have a profile: a map may be mostly void.
+const (
+	wantedSamples = 1500
+	plenty        = 64
+)
 
 func newSampling(s *sweep) *sampling {
 	cells := math.Pi * s.RangeM * s.RangeM / (s.frame.CellM * s.frame.CellM)
-	return &sampling{sweep: s, every: uint32(max(1, cells/wantedSamples))}
+	return &sampling{sweep: s, every: uint32(max(1, cells/(wantedSamples*plenty)))}
 }
 
 // loss keeps a cell if it is one of the sample.
 func (s *sampling) loss(r *reckoner, lossDB float64) {
 	index := r.cell.Index
-	if scatter := uint32(index) * 2654435761; scatter>>4%s.every != 0 { // Knuth's multiplicative hash
+	lot := bits.Reverse32(uint32(index) * 2654435761) // Knuth's multiplicative hash, its best bits last
+	if lot%s.every != 0 {
 		return
 	}
 	s.mutex.Lock()
-	s.kept = append(s.kept, sampledCell{index, lossDB, r.VerticalShare()})
+	s.kept = append(s.kept, sampledCell{index, lot / s.every, lossDB, r.VerticalShare()})
 	s.mutex.Unlock()
 }
 
 // check evaluates the sample. A sweep that is off is an error.
 func (s *sampling) check(ctx context.Context, t *Task, places *link.Places) (Check, error) {
+	slices.SortFunc(s.kept, func(a, b sampledCell) int { return cmp.Or(cmp.Compare(a.lot, b.lot), cmp.Compare(a.index, b.index)) })
+	s.kept = s.kept[:min(len(s.kept), wantedSamples)]
 	slices.SortFunc(s.kept, func(a, b sampledCell) int { return cmp.Compare(a.index, b.index) })
 	sweepDB, cellDB := make([]float64, len(s.kept)), make([]float64, len(s.kept))
 	work, ctx := errgroup.WithContext(ctx)
