@@ -45,7 +45,7 @@ export function createChanges(store: Store<State>): Changes {
   }
 
   async function attempt(edits: Edit[], what: string) {
-    if (edits.length === 0) return;
+    if (edits.length === 0) return letGo();
     store.set({ links: waitFor(now().links) });
     try {
       const tried = await taken(server.POST('/api/try', { body: { version: kept().version, edits } }));

@@ -148,7 +148,7 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
     whole: () => {
       const p = store.get().plan.value;
       const bounds = p && boundsOf(p);
-      if (bounds) map.fitBounds(bounds, { padding: 60, maxZoom: 14, bearing: 0, pitch: 0, ...motion() });
+      if (bounds) map.fitBounds(bounds, { padding, maxZoom: 14, bearing: 0, pitch: 0, ...motion() });
     },
   };
 }
@@ -192,11 +192,14 @@ async function startContours(ground: Ground): Promise<boolean> {
 
 const colours = (): Colours => Object.fromEntries(colourNames.map((n) => [n, colour(n)])) as Colours;
 
+// Room for the buttons at the left and for the names of sites at the rims.
+const padding = { left: 84, top: 46, right: 46, bottom: 46 };
+
 function startView(s: State, plan: Plan): Partial<maplibre.MapOptions> {
   const at = s.view.at;
   if (at) return { center: [at.lon, at.lat], zoom: at.zoom };
   const bounds = boundsOf(plan);
-  return bounds ? { bounds, fitBoundsOptions: { padding: 60, maxZoom: 14 } } : { center: [0, 0], zoom: 1 };
+  return bounds ? { bounds, fitBoundsOptions: { padding, maxZoom: 14 } } : { center: [0, 0], zoom: 1 };
 }
 
 function solid(map: maplibre.Map, on: boolean): void {

@@ -16,6 +16,7 @@ import { mapTools } from './map_tools';
 import { detail, trouble } from './notices';
 import { nearest } from './profile';
 import { entered, type Mast, readOut, sectionChart } from './section_chart';
+import { sectionTable } from './section_table';
 import { sitesList } from './sites_list';
 import { chosenLink, linkId, type State, stationOf } from './state';
 import type { Store } from './store';
@@ -86,6 +87,7 @@ function ofLink(store: Store<State>, changes: Changes, plan: Plan, link: Link) {
         open: (open) => store.set({ open }),
       })}
       ${whatGives(link)}
+      ${s.section.value ? sectionTable(s.section.value) : nothing}
     </section>
     <section aria-labelledby="antenna-title">
       <h2 id="antenna-title">${words.antenna}</h2>

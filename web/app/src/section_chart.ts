@@ -53,7 +53,7 @@ export function sectionChart(p: SectionProps, on: SectionEvents) {
     <svg
       class="section" width=${widthPx} height=${heightPx} viewBox="0 0 ${widthPx} ${heightPx}"
       role="slider" tabindex="0"
-      aria-label=${words.sectionLabel(section.from, section.to)}
+      aria-label=${words.sectionLabel(section.from, section.to)} aria-description=${words.sectionKeys}
       aria-valuemin="0" aria-valuemax=${section.distance_km.toFixed(2)} aria-valuenow=${(p.cursorKm ?? 0).toFixed(2)}
       aria-valuetext=${at ? readOut(at) : entered(section)}
       @keydown=${keys} @pointermove=${hover} @pointerdown=${hover} @pointerleave=${() => on.cursor(() => undefined)}
@@ -206,11 +206,14 @@ function handle(s: Section, mast: Mast, end: 0 | 1, x: Scale, y: Scale, on: Sect
     const at = (moved: PointerEvent) => Math.round((mast.aboveM + (e.clientY - moved.clientY) * perPx) * 2) / 2;
     knob.setPointerCapture(e.pointerId);
     knob.onpointermove = (moved) => set(at(moved), false);
-    knob.onpointerup = (moved) => {
+    const end = (m: number) => {
       knob.onpointermove = null;
       knob.onpointerup = null;
-      if (at(moved) !== mast.aboveM) set(at(moved), true);
+      knob.onpointercancel = null;
+      set(m, true);
     };
+    knob.onpointerup = (moved) => end(at(moved));
+    knob.onpointercancel = () => end(mast.aboveM);
     e.preventDefault();
     knob.focus();
   };

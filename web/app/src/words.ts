@@ -25,7 +25,6 @@ export const en = {
   km: (x: string) => `${x} km`,
   m: (x: string) => `${x} m`,
   mhz: (x: string) => `${x} MHz`,
-  deg: (x: string) => `${x}°`,
   ends: (from: string, to: string) => `${from} – ${to}`,
   wayTo: (to: string) => ` → ${to}`,
 
@@ -46,7 +45,6 @@ export const en = {
   },
   files: 'Files',
   print: 'Print this page',
-  leave: 'There are changes that are not saved.',
   discard: 'Read the file again',
   conflict: 'Someone has changed the file since it was read here. Reading it again drops the changes made here.',
   fileBroken: (file: string) => `${file} cannot be used as it stands now; this is the last good version of it.`,
@@ -57,7 +55,6 @@ export const en = {
   mapLabel: 'Map of sites and links; everything on it also stands in the tables',
   mapWaiting: 'Drawing the map…',
   noMap: 'This browser cannot draw the map: it offers no WebGL 2. Tables, section and budgets work without it.',
-  noGround: 'No tiles of the ground are served; the map shows sites and links alone.',
   site: (name: string) => `Site ${name}`,
   siteKeys: 'arrow keys move it by 10 m, with Shift by 100 m',
   siteMoved: (name: string, place: string) => `${name} at ${place}`,
@@ -67,7 +64,6 @@ export const en = {
   wholePlan: 'Show the whole plan',
   solid: '3D',
   solidLong: '3D: show the ground in relief, heights doubled',
-  measure: 'Measure',
   measureLong: 'Measure distance and bearing between two places',
   measureFirst: 'Click the first place on the map.',
   measureSecond: 'Click the second place.',
@@ -85,7 +81,6 @@ export const en = {
   chance: 'Chance',
   waitingLinks: 'Working out the links…',
   noLinks: 'The plan has no links. Add one below.',
-  recompute: 'Working out anew…',
   warnings: (n: number) => (n === 1 ? '1 warning' : `${n} warnings`),
   remarks: (n: number) => (n === 1 ? '1 remark' : `${n} remarks`),
 
@@ -136,6 +131,10 @@ export const en = {
   legendBulge: 'Earth’s bulge',
   legendZone: '0.6 F1, dotted F1',
   sectionTable: 'The section as a table',
+  coverHead: 'Cover, m',
+  rayHead: 'Ray above, m',
+  ratioHead: 'Clear, F1',
+  worstHere: '(worst)',
   from: 'From',
 
   // Antenna.
@@ -147,7 +146,6 @@ export const en = {
   horizontalCut: 'Over azimuth',
   verticalCut: 'Over elevation',
   cutAt: (what: string, deg: string) => `${what} ${deg}°`,
-  gainOf: 'gain',
   towards: (who: string) => `towards ${who}`,
   peak: (x: string, deg: string) => `Gain over azimuth: highest ${x} dBi at ${deg}°`,
   peakUp: (x: string, deg: string) => `Gain over elevation: highest ${x} dBi at ${deg}°`,
@@ -179,7 +177,6 @@ export const en = {
   tryCell: (m: string, antenna: string, db: string, verdict: string, link: string) =>
     `${antenna} at ${m} m: ${db} dB, ${verdict}, worst ${link}. Try it`,
   tried: (who: string, antenna: string, m: string) => `${who}: ${antenna} at ${m} m`,
-  now: 'as planned',
 
   // Coverage.
   coverage: 'Coverage',
