@@ -100,15 +100,7 @@ func (s *Server) linksFile(ctx context.Context, in *struct {
 		return nil, asProblem(err)
 	}
 	return s.newFile("links", in.Format, func(w io.Writer) error {
-		switch in.Format {
-		case "csv":
-			return report.LinksCSV(w, result)
-		case "json":
-			return report.LinksJSON(w, result)
-		case "geojson":
-			return report.LinksGeoJSON(w, result)
-		}
-		if err := report.LinksTable(w, result); err != nil {
+		if err := report.WriteLinks(w, result, in.Format); err != nil || in.Format != "txt" {
 			return err
 		}
 		return report.LinesTable(w, result)
@@ -124,19 +116,7 @@ func (s *Server) sectionFile(_ context.Context, in *struct {
 	if err != nil {
 		return nil, asProblem(err)
 	}
-	return s.newFile("section "+traced.Link.From.Name+" "+traced.Link.To.Name, in.Format, func(w io.Writer) error {
-		switch in.Format {
-		case "csv":
-			return report.SectionCSV(w, traced)
-		case "json":
-			return report.SectionJSON(w, traced)
-		case "geojson":
-			return report.SectionGeoJSON(w, traced)
-		case "svg":
-			return report.SectionSVG(w, traced)
-		}
-		return report.SectionTable(w, traced)
-	})
+	return s.newFile("section "+traced.Link.From.Name+" "+traced.Link.To.Name, in.Format, func(w io.Writer) error { return report.WriteSection(w, traced, in.Format) })
 }
 
 func (s *Server) antennaFile(_ context.Context, in *struct {

@@ -38,7 +38,7 @@ func newLinks(t *terminal) *cobra.Command {
 			return verdictStatus(result)
 		},
 	}
-	out.flags(cmd, "table", "json", "csv", "geojson")
+	out.flags(cmd, report.LinksFormats...)
 	cmd.Flags().BoolVar(&lines, "lines", false, "also show every line of every budget with its source")
 	return cmd
 }
@@ -65,15 +65,7 @@ func openPlan(path string) (*plan.Network, error) {
 }
 
 func writeLinks(w io.Writer, r *plan.Result, format string, lines bool) error {
-	switch format {
-	case "json":
-		return report.LinksJSON(w, r)
-	case "csv":
-		return report.LinksCSV(w, r)
-	case "geojson":
-		return report.LinksGeoJSON(w, r)
-	}
-	err := report.LinksTable(w, r)
+	err := report.WriteLinks(w, r, format)
 	if lines {
 		err = errors.Join(err, report.LinesTable(w, r))
 	}

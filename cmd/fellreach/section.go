@@ -3,7 +3,6 @@ package main
 import (
 	"io"
 
-	"fellreach/link"
 	"fellreach/link/report"
 
 	"github.com/spf13/cobra"
@@ -36,24 +35,10 @@ func newSection(t *terminal) *cobra.Command {
 			if err != nil {
 				return err
 			}
-			return out.write(t, func(w io.Writer) error { return writeSection(w, s, out.format) })
+			return out.write(t, func(w io.Writer) error { return report.WriteSection(w, s, out.format) })
 		},
 	}
-	out.flags(cmd, "table", "json", "csv", "geojson", "svg")
+	out.flags(cmd, report.SectionFormats...)
 	cmd.Flags().StringVar(&named, "link", "", `a link's name, or two ends as "A..B"`)
 	return cmd
-}
-
-func writeSection(w io.Writer, s *link.Section, format string) error {
-	switch format {
-	case "json":
-		return report.SectionJSON(w, s)
-	case "csv":
-		return report.SectionCSV(w, s)
-	case "geojson":
-		return report.SectionGeoJSON(w, s)
-	case "svg":
-		return report.SectionSVG(w, s)
-	}
-	return report.SectionTable(w, s)
 }

@@ -17,7 +17,7 @@ func FuzzLoss(f *testing.F) {
 	f.Fuzz(func(t *testing.T, data []byte) {
 		p, ok := pathOf(data)
 		if !ok {
-			t.Skip()
+			t.Skip("these bytes make no path")
 		}
 		for _, m := range allModels {
 			l, err := m.Loss(p)
