@@ -1,4 +1,4 @@
-import { readFileSync } from 'node:fs';
+import { readFileSync, writeFileSync } from 'node:fs';
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import type { Links } from '../src/api';
 import { bearing, fixed, margin, signed } from '../src/format';
@@ -173,7 +173,6 @@ test('keys alone choose a link, move a site, raise an antenna and save; a reload
 
 test('a file changed by others meanwhile is not written over', async () => {
   const visit = await bench.visit(thin);
-  const { writeFileSync } = await import('node:fs');
   const text = readFileSync(bench.plan, 'utf8');
   await visit.page.locator('table.heights button').first().click();
   await visit.page.locator('.bar .state', { hasText: '1 change' }).waitFor();
@@ -293,6 +292,44 @@ test('without WebGL the page says so, and tables and section work', async () => 
   await visit.page.getByRole('slider', { name: /^Section from/ }).waitFor();
   expect(await visit.margin()).toMatch(/dB$/);
   expect(await visit.axe()).toEqual([]);
+  await visit.close();
+});
+
+test('a file that breaks on disk is told, and the last good plan stays', async () => {
+  const visit = await bench.visit(thin);
+  const text = readFileSync(bench.plan, 'utf8');
+  const before = await visit.margin();
+  writeFileSync(bench.plan, text.replace('power: "10 W"', 'power: "10 cats"'));
+  await visit.page.evaluate(() => window.dispatchEvent(new Event('focus')));
+  await visit.page.locator('.trouble', { hasText: /line \d+ radios.base.power/ }).waitFor();
+  expect(await visit.margin()).toBe(before);
+  writeFileSync(bench.plan, text);
+  await visit.page.evaluate(() => window.dispatchEvent(new Event('focus')));
+  await visit.page.locator('.trouble').waitFor({ state: 'detached' });
+  await visit.close();
+});
+
+test('a GeoJSON file of the user is drawn, another file is refused', async () => {
+  const visit = await bench.visit();
+  await visit.drawn();
+  await visit.page.locator('.menu summary').click();
+  const pick = visit.page.locator('.menu input[type=file]');
+  await pick.setInputFiles({ name: 'notes.txt', mimeType: 'text/plain', buffer: Buffer.from('no map') });
+  await visit.page.locator('.trouble', { hasText: 'notes.txt is no GeoJSON' }).waitFor();
+  const { width, height } = (await visit.page.locator('#map').boundingBox())!;
+  const clip = { x: width * 0.3, y: height * 0.75, width: 80, height: 80 };
+  const picture = async () => (await visit.page.screenshot({ clip })).toString('base64');
+  const before = await picture();
+  const area = [
+    [-20.4, 47.3],
+    [-19.6, 47.3],
+    [-19.6, 47.7],
+    [-20.4, 47.7],
+    [-20.4, 47.3],
+  ];
+  const buffer = Buffer.from(JSON.stringify({ type: 'Polygon', coordinates: [area] }));
+  await pick.setInputFiles({ name: 'area.geojson', mimeType: 'application/geo+json', buffer });
+  await expect.poll(picture).not.toBe(before);
   await visit.close();
 });
 

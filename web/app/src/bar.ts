@@ -7,6 +7,7 @@ export interface BarEvents {
   redo(): void;
   save(): void;
   print(): void;
+  own(file: File): void;
   theme(t: Theme): void;
 }
 
@@ -26,13 +27,13 @@ export function bar(s: State, on: BarEvents) {
       <button ?disabled=${!before} title=${before ? words.undoWhat(before.what) : words.undo} @click=${on.undo}>${words.undo}</button>
       <button ?disabled=${!after} title=${after ? words.redoWhat(after.what) : words.redo} @click=${on.redo}>${words.redo}</button>
       <button class="main" ?disabled=${!dirty || s.saving} @click=${on.save}>${s.saving ? words.saving : words.save}</button>
-      ${plan ? files(s, on.print) : nothing}
+      ${plan ? files(s, on) : nothing}
       <button title=${words.themeLong[s.theme]} @click=${() => on.theme(nextTheme[s.theme])}>${words.theme[s.theme]}</button>
     </div>
   </header>`;
 }
 
-function files(s: State, print: () => void) {
+function files(s: State, on: BarEvents) {
   const of = (path: string, query: Record<string, string> = {}) =>
     `./api/${path}?${new URLSearchParams({ ...query, ...(s.version ? { version: s.version } : {}) })}`;
   const d = words.download;
@@ -62,7 +63,18 @@ function files(s: State, print: () => void) {
     <summary>${words.files}</summary>
     <ul>
       ${list.map(([name, href]) => html`<li><a href=${href!} download>${name}</a></li>`)}
-      <li><button class="plain" @click=${print}>${words.print}</button></li>
+      <li>
+        <label>${words.own}
+          <input
+            type="file" accept=".geojson,.json,application/geo+json"
+            @change=${(e: Event) => {
+              const file = (e.target as HTMLInputElement).files?.[0];
+              if (file) on.own(file);
+            }}
+          />
+        </label>
+      </li>
+      <li><button class="plain" @click=${on.print}>${words.print}</button></li>
     </ul>
   </details>`;
 }

@@ -120,6 +120,10 @@ export function createChanges(store: Store<State>): Changes {
     try {
       const plan = await taken(server.GET('/api/plan'));
       if (now().saving || now().saved !== before) return;
+      const shown = now().plan.value;
+      if (shown && shown.file_problems.length + plan.file_problems.length > 0) {
+        store.set({ plan: answered({ ...shown, file_problems: plan.file_problems }) });
+      }
       if (plan.file_problems.length > 0 || plan.version === before) return;
       if (changed(now())) store.set({ trouble: refused(new Refused(conflict)) });
       else await read();

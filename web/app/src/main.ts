@@ -1,11 +1,13 @@
 import './style.css';
 import './print.css';
 import { render } from 'lit';
+import { refused } from './asked';
 import { createChanges } from './changes';
 import { createCover } from './cover';
 import { desk } from './desk';
 import { readHash, writeHash } from './hash';
 import type { MapPart } from './map';
+import { ownLayer } from './own_layer';
 import { page } from './page';
 import { changed, initialState } from './state';
 import { createStore } from './store';
@@ -28,6 +30,13 @@ const bar = {
     await map?.settled();
     window.print();
     store.set({ theme });
+  },
+  own: async (file: File) => {
+    try {
+      store.set({ own: await ownLayer(file), trouble: undefined });
+    } catch (error) {
+      store.set({ trouble: refused(error) });
+    }
   },
   theme: (theme: ReturnType<typeof rememberedTheme>) => store.set({ theme }),
 };

@@ -64,6 +64,7 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
     set('figures', figureFeatures(links));
     set('sites', siteFeatures(s.plan.value, sites.moved));
     set('measured', lineFeature(s.measure?.points ?? []));
+    if (s.own) set('own', s.own.data);
   }
 
   function markChosen(s: State) {
@@ -121,7 +122,8 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
     if (
       now.plan.value !== before.plan.value ||
       now.links.value !== before.links.value ||
-      now.measure !== before.measure
+      now.measure !== before.measure ||
+      now.own !== before.own
     ) {
       drawData(now);
     }

@@ -61,6 +61,7 @@ export function mapStyle(p: StyleParts): StyleSpecification {
       figures: { type: 'geojson', data: empty },
       sites: { type: 'geojson', data: empty, promoteId: 'id' },
       measured: { type: 'geojson', data: empty },
+      own: { type: 'geojson', data: empty },
     },
     layers: [
       {
@@ -69,6 +70,7 @@ export function mapStyle(p: StyleParts): StyleSpecification {
         paint: { 'background-color': p.ground?.beyond === 'sea' ? p.colours.sea : p.colours.paper },
       },
       ...(p.ground ? groundLayers(p.ground, p.colours, p.contours) : []),
+      ...ownLayers(p.colours),
       ...linkLayers(p.colours),
     ],
   };
@@ -188,6 +190,31 @@ function groundLayers(g: Ground, c: Colours, contours: boolean): LayerSpecificat
     );
   }
   return layers;
+}
+
+function ownLayers(c: Colours): LayerSpecification[] {
+  return [
+    {
+      id: 'own-areas',
+      type: 'fill',
+      source: 'own',
+      filter: ['==', ['geometry-type'], 'Polygon'],
+      paint: { 'fill-color': c.accent, 'fill-opacity': 0.14 },
+    },
+    { id: 'own-lines', type: 'line', source: 'own', paint: { 'line-color': c.accent, 'line-width': 1.2 } },
+    {
+      id: 'own-points',
+      type: 'circle',
+      source: 'own',
+      filter: ['==', ['geometry-type'], 'Point'],
+      paint: {
+        'circle-color': c.accent,
+        'circle-radius': 3.5,
+        'circle-stroke-color': c.paper,
+        'circle-stroke-width': 1,
+      },
+    },
+  ];
 }
 
 const chosen = ['boolean', ['feature-state', 'chosen'], false];

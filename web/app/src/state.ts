@@ -2,6 +2,7 @@ import type { Antenna, Heights, Link, Links, Measured, Place, Plan, Section, Sit
 import { type Asked, notAsked } from './asked';
 import type { Cover } from './cover';
 import type { View } from './hash';
+import type { OwnLayer } from './own_layer';
 
 /** A Step is a version of the plan and what made it, for undo. */
 export interface Step {
@@ -51,6 +52,8 @@ export interface State {
   /** What is under the pointer; the margin is that of the coverage map that is shown. */
   place: (Place & { margin_db?: number | null }) | undefined;
   cover: Cover | undefined;
+  /** A layer of the user's own. */
+  own: OwnLayer | undefined;
   /** Two places, or fewer, whose distance is asked; the measuring goes on until it is undefined. */
   measure: { points: [number, number][]; way?: Measured } | undefined;
   theme: Theme;
@@ -85,6 +88,7 @@ export function initialState(view: View): State {
     solid: false,
     place: undefined,
     cover: undefined,
+    own: undefined,
     measure: undefined,
     theme: 'system',
     said: '',
