@@ -96,6 +96,10 @@ test('the cursor of the section reads out the ground and moves a point on the ma
     await expect.poll(() => section.getAttribute('aria-valuetext')).not.toContain('10.53 km');
     await v.page.keyboard.press('Escape');
     await walker.waitFor({ state: 'detached' });
+    const ends = ['Gauge 3', 'Ormvik'].map((name) => v.page.locator(`.site[aria-label="Site ${name}"]`).boundingBox());
+    const [a, b] = await Promise.all(ends);
+    await v.page.mouse.move(a!.x + 14 + (b!.x - a!.x) * 0.25, a!.y + 14 + (b!.y - a!.y) * 0.25);
+    await expect.poll(() => v.page.locator('.readout').innerText()).toMatch(/^2\.\d\d km: ground/);
   });
 });
 

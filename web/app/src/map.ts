@@ -12,7 +12,7 @@ import { boundsOf, figureFeatures, lineFeature, linkFeatures, moveBy, siteFeatur
 import { markImage } from './map_marks';
 import { type Colours, colourNames, mapStyle } from './map_style';
 import { measureAt, readPlace } from './places';
-import { nearest } from './profile';
+import { nearest, nearestTo } from './profile';
 import type { State } from './state';
 import type { Store } from './store';
 import { colour } from './theme';
@@ -54,6 +54,8 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
   const sites = new Sites(map, store, changes, () => drawData(store.get()));
   const walker = walkerOf(map);
   let shownLink: string | undefined;
+  let styled = false;
+  let walking = false; // the pointer goes along the chosen link
 
   function drawData(s: State) {
     if (!s.plan.value) return;
@@ -73,7 +75,14 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
     if (s.link !== undefined) map.setFeatureState({ source: 'links', id: s.link }, { chosen: true });
   }
 
+  function restyle() {
+    styled = false;
+    shownLink = undefined;
+    map.setStyle(style(), { diff: false });
+  }
+
   function drawAll() {
+    styled = true;
     const c = colours();
     for (const v of ['closes', 'thin', 'fails'] as const) {
       if (map.hasImage(`mark-${v}`)) map.removeImage(`mark-${v}`);
@@ -82,6 +91,7 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
     drawData(store.get());
     drawCover(map, store.get().cover, location.origin, c.ink);
     markChosen(store.get());
+    if (store.get().solid && ground) solid(map, true);
   }
 
   map.on('style.load', drawAll);
@@ -101,14 +111,20 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
     if (hit) store.set({ link: String(hit.properties.id), way: 0, end: 'from' });
   });
   map.on('mousemove', (e) => {
-    const over = map.queryRenderedFeatures(e.point, { layers: ['links', 'link-figures'] }).length > 0;
-    map.getCanvas().style.cursor = store.get().measure ? 'crosshair' : over ? 'pointer' : '';
+    const s = store.get();
+    const over = map.queryRenderedFeatures(e.point, { layers: ['links', 'link-figures'] });
+    map.getCanvas().style.cursor = s.measure ? 'crosshair' : over.length > 0 ? 'pointer' : '';
+    const section = s.section.value;
+    const along = section !== undefined && over.some((f) => f.properties.id === s.link);
+    if (along) store.set({ cursorKm: nearestTo(section.points, e.lngLat.lng, e.lngLat.lat).d_km });
+    else if (walking) store.set({ cursorKm: undefined });
+    walking = along;
     readPlace({ store, at: [e.lngLat.lng, e.lngLat.lat] });
   });
   map.getCanvas().addEventListener('keydown', (e) => {
     if (e.key !== 'Enter') return;
     const { lng, lat } = map.getCenter();
-    if (store.get().measure) measureAt(store, [lng, lat]);
+    if (store.get().measure) void measureAt(store, [lng, lat]);
     else readPlace({ store, at: [lng, lat] });
   });
   map.on('moveend', () => {
@@ -117,8 +133,10 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
   });
 
   store.watch((now, before) => {
-    if (now.theme !== before.theme) map.setStyle(style(), { diff: false });
     if (now.plan.value !== before.plan.value) sites.follow(now.plan.value);
+    if (now.cursorKm !== before.cursorKm || now.section.value !== before.section.value) walker(now);
+    if (now.theme !== before.theme) restyle();
+    if (!styled) return; // all else is drawn when the style has come
     if (
       now.plan.value !== before.plan.value ||
       now.links.value !== before.links.value ||
@@ -127,12 +145,11 @@ export async function createMap(into: HTMLElement, store: Store<State>, changes:
     ) {
       drawData(now);
     }
-    if (now.link !== before.link && map.isStyleLoaded() !== undefined) markChosen(now);
-    if (now.cursorKm !== before.cursorKm || now.section.value !== before.section.value) walker(now);
+    if (now.link !== before.link) markChosen(now);
     if (coverChanged(now.cover, before.cover)) drawCover(map, now.cover, location.origin, colours().ink);
     if (now.solid !== before.solid && ground) solid(map, now.solid);
   });
-  matchMedia('(prefers-color-scheme: dark)').addEventListener('change', () => map.setStyle(style(), { diff: false }));
+  matchMedia('(prefers-color-scheme: dark)').addEventListener('change', restyle);
   sites.follow(plan);
 
   const motion = () => ({ duration: matchMedia('(prefers-reduced-motion: reduce)').matches ? 0 : 350 });

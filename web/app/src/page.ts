@@ -34,7 +34,7 @@ export function page(
   const plan = s.plan.value;
   const link = chosenLink(s);
   return html`
-    <a class="skip" href="#side">${words.skip}</a>
+    <a class="skip" href="#side" @click=${skip}>${words.skip}</a>
     ${bar(s, events)}
     <main>
       <section class="map" aria-label=${words.mapLabel}>
@@ -68,6 +68,12 @@ export function page(
     </main>
     <p role="status" class="unseen">${s.said}</p>
   `;
+}
+
+// The fragment holds the view: the link moves the focus by itself.
+function skip(e: Event) {
+  e.preventDefault();
+  document.getElementById('side')?.focus();
 }
 
 function fileTrouble(s: State) {

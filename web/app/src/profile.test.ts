@@ -1,5 +1,5 @@
 import { expect, test } from 'vitest';
-import { enteredKm, nearest, type Point, ratioAt, reach } from './profile';
+import { enteredKm, nearest, nearestTo, type Point, ratioAt, reach } from './profile';
 
 const point = (d_km: number, ground_m: number, more: Partial<Point> = {}): Point => ({
   d_km,
@@ -33,4 +33,15 @@ test('the length over which 0.6 of the zone is entered', () => {
 test('the picture holds ground, cover and the whole zone', () => {
   expect(reach(points)).toEqual({ least: expect.any(Number), most: 120 });
   expect(reach(points).least).toBeLessThanOrEqual(10);
+});
+
+test('the point nearest to a place, degrees of longitude being short up north', () => {
+  const path = [
+    point(0, 0, { lon: 10, lat: 60 }),
+    point(1, 0, { lon: 10.02, lat: 60 }),
+    point(2, 0, { lon: 10.02, lat: 60.02 }),
+  ];
+  expect(nearestTo(path, 10.012, 60).d_km).toBe(1);
+  // 0.02 degrees of longitude at 60 N are as long as 0.01 of latitude.
+  expect(nearestTo([path[0]!, path[2]!], 10.015, 60.006).d_km).toBe(0);
 });

@@ -13,6 +13,13 @@ export function nearest(points: readonly Point[], km: number): number {
   return Math.min(last, Math.max(0, Math.round((km / (length || 1)) * last)));
 }
 
+/** nearestTo returns the point of a path nearest to a place, on a map. */
+export function nearestTo(points: readonly Point[], lon: number, lat: number): Point {
+  const shrink = Math.cos((lat * Math.PI) / 180);
+  const distance = (p: Point) => Math.hypot((p.lon - lon) * shrink, p.lat - lat);
+  return points.reduce((best, p) => (distance(p) < distance(best) ? p : best));
+}
+
 /** reach is what the picture must hold from top to bottom, in metres above sea level. */
 export function reach(points: readonly Point[]): { least: number; most: number } {
   let least = Number.POSITIVE_INFINITY;
