@@ -43,7 +43,7 @@ func BullingtonDB(nu, dKm float64) float64 {
 	if luc == 0 {
 		return 0
 	}
-	return luc + (1-math.Exp(-luc/6))*(10+0.02*dKm)
+	return luc + (1-exp(-luc/6))*(10+0.02*dKm)
 }
 
 // A ridge is a profile as Bullington's construction sees it: bare heights, cover on them, and the

@@ -5,7 +5,7 @@ import "math"
 // minimumWithDuctingDB returns Lminbap, dB, a smooth maximum of the ducting loss and the
 // line-of-sight loss, (60), written so that no exponential overflows.
 func minimumWithDuctingDB(lba, lb0p float64) float64 {
-	return max(lba, lb0p) + 2.5*math.Log1p(math.Exp(-math.Abs(lba-lb0p)/2.5))
+	return max(lba, lb0p) + 2.5*log(1+exp(-math.Abs(lba-lb0p)/2.5))
 }
 
 // minimumDB returns Lminb0p, dB, the notional least loss by line of sight and diffraction for p
@@ -47,7 +47,7 @@ func angleWeight(theta float64) float64 { return 1 - 0.5*(1+math.Tanh(3*0.8*(the
 // combineDB returns Lbc, dB: troposcatter and all else added in the manner of (63), which is
 // sharper than a sum of powers.
 func combineDB(lbs, lbam float64) float64 {
-	return min(lbs, lbam) - 5/math.Ln10*math.Log1p(math.Exp(-0.2*math.Ln10*math.Abs(lbs-lbam)))
+	return min(lbs, lbam) - 5/math.Ln10*log(1+exp(-0.2*math.Ln10*math.Abs(lbs-lbam)))
 }
 
 // Combined is what the mechanisms of P.1812 come to before the locations are looked at, dB: the

@@ -92,10 +92,9 @@ func (u *duct) alongDB(p float64) float64 {
 // ductTimeDB returns A(p), the time variability of ducting over d km by the logarithm of beta, (~53)
 // to (~56).
 func ductTimeDB(p, d, logBeta float64) float64 {
-	gamma := 1.076 / math.Pow(2.0058-logBeta, 1.012) *
-		math.Exp(-(9.51-4.8*logBeta+0.198*logBeta*logBeta)*1e-6*math.Pow(d, 1.13))
+	gamma := 1.076 * exp(-1.012*log(2.0058-logBeta)-(9.51-4.8*logBeta+0.198*logBeta*logBeta)*1e-6*exp(1.13*log(d)))
 	x := log10(p) - logBeta // of p/beta
-	return -12 + (1.2+3.7e-3*d)*x + 12*math.Pow(10, gamma*x)
+	return -12 + (1.2+3.7e-3*d)*x + 12*exp10(gamma*x)
 }
 
 // thetaPrime is the angular distance of the path along the structure, mrad, (~52).
@@ -137,7 +136,7 @@ func (u *duct) leastDB(leastTime float64) float64 {
 // logBeta returns the logarithm of beta, beta0 with its corrections for the geometry of the path
 // and the roughness of the ground. On rough paths beta itself may be too small for a number.
 func (u *duct) logBeta() float64 {
-	alpha := max(-0.6-3.5e-9*math.Pow(u.d, 3.1)*u.time.tau, -3.4)
+	alpha := max(-0.6-3.5e-9*exp(3.1*log(u.d))*u.time.tau, -3.4)
 	roots := math.Sqrt(u.hte) + math.Sqrt(u.hre)
 	logMu2 := min(0, alpha*log10(500/u.horizons.ae*u.d*u.d/(roots*roots)))
 	logMu3 := 0.0

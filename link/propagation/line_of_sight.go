@@ -15,5 +15,5 @@ func lineOfSightDB(f, dfs float64) float64 {
 //
 // Source: Rec. ITU-R P.1812-6, (9) to (11).
 func focusingDB(dlt, dlr, p float64) float64 {
-	return 2.6 * (1 - math.Exp(-0.1*(dlt+dlr))) * math.Log10(p/50)
+	return 2.6 * (1 - exp(-0.1*(dlt+dlr))) * log10(p/50)
 }

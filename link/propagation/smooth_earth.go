@@ -136,12 +136,13 @@ func distanceTermDB(x float64) float64 {
 	if x >= 1.6 {
 		return 11 + 10*log10(x) - 17.6*x
 	}
-	logX := math.Log(x)
-	return -20/math.Ln10*logX - 5.6488*math.Exp(1.425*logX)
+	logX := log(x)
+	return -20/math.Ln10*logX - 5.6488*exp(1.425*logX)
 }
 
 // heightGainDB returns G for b = beta Y, Y being the normalized height, which already holds beta
-// once. k is the normalized surface admittance.
+// once. k is the normalized surface admittance. G is at least 20 log b, so where k is below b/2 its
+// floor is out of reach.
 func heightGainDB(b, k float64) float64 {
 	var g float64
 	if b > 2 {
@@ -149,5 +150,8 @@ func heightGainDB(b, k float64) float64 {
 	} else {
 		g = 20 * log10(b+0.1*b*b*b)
 	}
-	return max(g, 2+20*log10(k))
+	if k < b/2 {
+		return g
+	}
+	return max(g, 2+20*math.Log10(k))
 }

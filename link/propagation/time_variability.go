@@ -26,7 +26,7 @@ func inverseNormal(x float64) float64 {
 	if x > 0.5 {
 		return -inverseNormal(1 - x)
 	}
-	t := math.Sqrt(-2 * math.Log(max(x, 1e-6)))
+	t := math.Sqrt(-2 * log(max(x, 1e-6)))
 	c := ((0.010328*t+0.802853)*t + 2.515516698) / (((0.001308*t+0.189269)*t+1.432788)*t + 1)
 	return t - c
 }

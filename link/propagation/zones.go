@@ -24,18 +24,18 @@ func newTimeParameters(p terrain.Profile, latDeg float64) timeParameters {
 
 func timeParametersOf(dtm, dlm, omega, latDeg float64) timeParameters {
 	t := timeParameters{dtm: dtm, dlm: dlm, omega: omega}
-	t.tau = 1 - math.Exp(-4.12e-4*math.Pow(t.dlm, 2.41))
+	t.tau = 1 - exp(-4.12e-4*exp(2.41*log(t.dlm)))
 	t.beta0 = anomalousTimePct(t.dtm, t.tau, math.Abs(latDeg))
 	return t
 }
 
 // anomalousTimePct returns beta0 for the absolute latitude phi in degrees: b0 of the Recommendation.
 func anomalousTimePct(dtm, tau, phi float64) float64 {
-	mu1 := min(1, math.Pow(math.Pow(10, -dtm/(16-6.6*tau))+math.Pow(10, -5*(0.496+0.354*tau)), 0.2))
+	logMu1 := min(0, 0.2*log10(exp10(-dtm/(16-6.6*tau))+exp10(-5*(0.496+0.354*tau))))
 	if phi > 70 {
-		return 4.17 * mu1 * math.Pow(mu1, 0.3)
+		return 4.17 * exp10(1.3*logMu1) // mu1 mu4
 	}
-	return math.Pow(10, -0.015*phi+1.67) * mu1 * math.Pow(mu1, -0.935+0.0176*phi)
+	return exp10(1.67 - 0.015*phi + logMu1*(0.065+0.0176*phi))
 }
 
 // seaShare returns omega, the part of the path over sea.
