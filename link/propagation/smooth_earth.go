@@ -62,11 +62,19 @@ func (e SmoothEarth) LossDB(p SmoothPath) float64 {
 // reach returns the radius for which the first term counts on a path and the part of it that does:
 // 0 where the path clears the smooth Earth, 1 beyond the radio horizon. The polarization has no say
 // in it.
+//
+// Most paths are known to clear it without looking for the place of [SmoothPath.leastClearance]. At
+// (1+b)/2 of the path the clearance hse is (hte+hre)/2 (1 - c b - m (1-b^2)) and the required hreq
+// is 17.456 sqrt(d lambda)/2 sqrt(1-b^2). As (1 - c b)/sqrt(1-b^2) is least where b = c, everywhere
+// hse/sqrt(1-b^2) >= sqrt(hte hre) - (hte+hre)/2 m, and (hte+hre) m is 250 d^2/ap.
 func (e SmoothEarth) reach(p SmoothPath) (radiusKm, part float64) {
 	d, roots := p.LengthKm, math.Sqrt(p.TxM)+math.Sqrt(p.RxM)
 	dlos := math.Sqrt(2*0.001*p.RadiusKm) * roots // (~22)
 	if d >= dlos {
 		return p.RadiusKm, 1
+	}
+	if 2*math.Sqrt(p.TxM*p.RxM)-250*d*d/p.RadiusKm > 17.456*math.Sqrt(d*e.lambda) {
+		return 0, 0
 	}
 	hse, dse1, dse2 := p.leastClearance()
 	hreq := 17.456 * math.Sqrt(dse1*dse2*e.lambda/d) // (~26)

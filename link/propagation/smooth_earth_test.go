@@ -153,6 +153,33 @@ func TestLeastClearance(t *testing.T) {
 	})
 }
 
+// A path that the quick bound takes for clear is clear at the place of least clearance. Rounding of
+// heights up to 2000 m decides at the border.
+func TestReachAgreesWithTheLeastClearance(t *testing.T) {
+	dismissed := 0
+	rapid.Check(t, func(t *rapid.T) {
+		e := NewSmoothEarth(rapid.Float64Range(30e6, 6e9).Draw(t, "frequency"), 0)
+		p := SmoothPath{
+			TxM: rapid.Float64Range(0.5, 2000).Draw(t, "tx"), RxM: rapid.Float64Range(0.5, 2000).Draw(t, "rx"),
+			RadiusKm: rapid.SampledFrom([]float64{7000, 8500, betaRadiusKm}).Draw(t, "radius"),
+		}
+		dlos := math.Sqrt(0.002*p.RadiusKm) * (math.Sqrt(p.TxM) + math.Sqrt(p.RxM))
+		p.LengthKm = dlos * rapid.Float64Range(0.001, 0.999).Draw(t, "part of the horizon")
+		hse, dse1, dse2 := p.leastClearance()
+		hreq := 17.456 * math.Sqrt(dse1*dse2*e.lambda/p.LengthKm)
+		_, part := e.reach(p)
+		if want := max(0, 1-hse/hreq); math.Abs(part-want) > 1e-9 {
+			t.Errorf("part %g, want %g: hse = %g, hreq = %g", part, want, hse, hreq)
+		}
+		if part == 0 {
+			dismissed++
+		}
+	})
+	if dismissed == 0 {
+		t.Error("no path was clear")
+	}
+}
+
 // Equal antennas: the least clearance lies in the middle, and is the height less the bulge there.
 func TestLeastClearanceOfEqualAntennas(t *testing.T) {
 	p := SmoothPath{LengthKm: 20, TxM: 50, RxM: 50, RadiusKm: 8500}
