@@ -1,6 +1,6 @@
 import { server, taken } from './api';
 import { type Asked, answered, refused, waitFor } from './asked';
-import { rangeAround } from './heights';
+import { rangeAround, weighed } from './heights';
 import { latest } from './latest';
 import { chosenLink, linkId, type State, stationOf } from './state';
 import type { Store } from './store';
@@ -41,17 +41,13 @@ export function desk(store: Store<State>): void {
   const antenna = asking('antenna', (signal, version: string, station: string, mast: boolean) =>
     taken(server.GET('/api/antenna', { params: { query: { version, station, mast, curve: true } }, signal })),
   );
-  const heights = asking('heights', (signal, version: string, station: string, aboveM: number, antennas: string[]) => {
-    const { fromM, toM, stepM } = rangeAround(aboveM);
-    const query = { version, station, from_m: fromM, to_m: toM, step_m: stepM, antennas };
-    return taken(
-      server.GET('/api/heights', {
-        params: { query },
-        querySerializer: { array: { style: 'form', explode: false } },
-        signal,
-      }),
-    );
-  });
+  const heights = asking('heights', (signal, version: string, station: string, aboveM: number, antennas: string[]) =>
+    weighed(antennas, (antenna) => {
+      const { fromM, toM, stepM } = rangeAround(aboveM);
+      const query = { version, station, from_m: fromM, to_m: toM, step_m: stepM, antennas: [antenna] };
+      return taken(server.GET('/api/heights', { params: { query }, signal }));
+    }),
+  );
 
   store.watch((now, before) => {
     const version = now.version;

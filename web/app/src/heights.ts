@@ -1,4 +1,4 @@
-import type { Heights } from './api';
+import { type Heights, Refused } from './api';
 
 export type Cell = Heights['cells'][number];
 
@@ -30,3 +30,26 @@ export function byHeight(cells: readonly Cell[]): { heightM: number; cells: Cell
 
 /** shadeOf classes a margin into nine shades: 3 dB each from 3 dB below zero on. */
 export const shadeOf = (db: number): number => Math.min(8, Math.max(0, Math.floor(db / 3) + 2));
+
+/** Weighed heights also tell which antennas cannot hang there, and why. */
+export interface Weighed {
+  cells: Cell[];
+  impossible: { antenna: string; why: string }[];
+}
+
+/** weighed asks for one antenna after the other, so that one which cannot hang on this mast leaves the others a column. */
+export async function weighed(
+  antennas: readonly string[],
+  ask: (antenna: string) => Promise<Heights>,
+): Promise<Weighed> {
+  const all: Weighed = { cells: [], impossible: [] };
+  for (const antenna of antennas) {
+    try {
+      all.cells.push(...(await ask(antenna)).cells);
+    } catch (error) {
+      if (!(error instanceof Refused) || error.problem.status !== 422) throw error;
+      all.impossible.push({ antenna, why: error.problem.detail });
+    }
+  }
+  return all;
+}

@@ -1,16 +1,15 @@
 import { html } from 'lit';
-import type { Heights } from './api';
 import type { Asked } from './asked';
 import { margin, metres } from './format';
-import { byHeight, type Cell, shadeOf } from './heights';
+import { byHeight, type Cell, shadeOf, type Weighed } from './heights';
 import { mark } from './marks';
-import { trouble } from './notices';
+import { notes, trouble } from './notices';
 import { words } from './words';
 
 export interface HeightsProps {
   station: string;
   planned: { antenna: string; aboveM: number };
-  heights: Asked<Heights>;
+  heights: Asked<Weighed>;
 }
 
 /** Height against antenna: the worst margin of the station's links in each cell, a cell chosen is tried. */
@@ -35,6 +34,11 @@ export function heightsTable(p: HeightsProps, attempt: (c: Cell) => void) {
         )}
       </tbody>
     </table></div>
+    ${notes(
+      words.impossible(p.heights.value.impossible.length),
+      p.heights.value.impossible.map((x) => x.why),
+      false,
+    )}
   `;
 }
 

@@ -3,6 +3,7 @@ import type { Direction, Link } from './api';
 import { fixed, margin, percent, signed } from './format';
 import { type Bar, type Ledger, ledgerOf, type Owner, partsOf } from './ledger';
 import { verdict } from './marks';
+import { notes } from './notices';
 import { words } from './words';
 
 export interface LedgerEvents {
@@ -133,13 +134,4 @@ export function whatGives(link: Link) {
     <p class="chance">${words.chanceIs(percent(link.chance))}</p>
     ${notes(words.warnings(link.warnings.length), link.warnings, true)}
   `;
-}
-
-/** notes shows warnings openly and remarks on demand. */
-export function notes(title: string, texts: readonly string[], openly: boolean) {
-  if (texts.length === 0) return nothing;
-  return html`<details class="notes" ?open=${openly}>
-    <summary>${title}</summary>
-    <ul>${texts.map((t) => html`<li>${t}</li>`)}</ul>
-  </details>`;
 }

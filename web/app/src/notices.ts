@@ -18,3 +18,12 @@ export function detail(d: ProblemDetail) {
     ${d.hint ? html`<br /><span class="quiet">${d.hint}</span>` : nothing}
   </li>`;
 }
+
+/** notes shows warnings openly and remarks on demand. */
+export function notes(title: string, texts: readonly string[], openly: boolean) {
+  if (texts.length === 0) return nothing;
+  return html`<details class="notes" ?open=${openly}>
+    <summary>${title}</summary>
+    <ul>${texts.map((t) => html`<li>${t}</li>`)}</ul>
+  </details>`;
+}

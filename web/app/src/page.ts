@@ -9,11 +9,11 @@ import { coverPanel } from './cover_panel';
 import { addLink, addSite, changeAntenna, placeSite, raiseAntenna, removeLink } from './edits';
 import { bearing, fixed, metres } from './format';
 import { heightsTable } from './heights_table';
-import { ledgerTable, notes, whatGives } from './ledger_table';
+import { ledgerTable, whatGives } from './ledger_table';
 import { linksTable } from './links_table';
 import type { MapPart } from './map';
 import { mapTools } from './map_tools';
-import { detail, trouble } from './notices';
+import { detail, notes, trouble } from './notices';
 import { nearest } from './profile';
 import { entered, type Mast, readOut, sectionChart } from './section_chart';
 import { sectionTable } from './section_table';
@@ -50,7 +50,7 @@ export function page(
       <div class="side" id="side" tabindex="-1">
         ${fileTrouble(s)}
         ${trouble(s.plan.problem, { label: words.again, run: () => void changes.read() })}
-        ${trouble(s.trouble?.problem, s.trouble?.problem?.status === 409 ? { label: words.discard, run: () => void changes.read() } : undefined)}
+        <div class="lasting">${trouble(s.trouble?.problem, wayOut(store, changes))}</div>
         <section aria-labelledby="links-title">
           <h2 id="links-title">${words.links}</h2>
           ${linksTable(plan, s.links, s.link, (id) => store.set({ link: id, way: 0, end: 'from' }))}
@@ -68,6 +68,11 @@ export function page(
     </main>
     <p role="status" class="unseen">${s.said}</p>
   `;
+}
+
+function wayOut(store: Store<State>, changes: Changes) {
+  if (store.get().trouble?.problem?.status === 409) return { label: words.discard, run: () => void changes.read() };
+  return { label: words.dismiss, run: () => store.set({ trouble: undefined }) };
 }
 
 // The fragment holds the view: the link moves the focus by itself.

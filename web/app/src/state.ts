@@ -1,7 +1,8 @@
-import type { Antenna, Heights, Link, Links, Measured, Place, Plan, Section, Site, Station } from './api';
+import type { Antenna, Link, Links, Measured, Place, Plan, Section, Site, Station } from './api';
 import { type Asked, notAsked } from './asked';
 import type { Cover } from './cover';
 import type { View } from './hash';
+import type { Weighed } from './heights';
 import type { OwnLayer } from './own_layer';
 
 /** A Step is a version of the plan and what made it, for undo. */
@@ -18,7 +19,7 @@ export interface State {
   links: Asked<Links>;
   section: Asked<Section>;
   antenna: Asked<Antenna>;
-  heights: Asked<Heights>;
+  heights: Asked<Weighed>;
 
   /** Version of the plan in view; empty is the file's. */
   version: string;

@@ -176,6 +176,7 @@ export const en = {
   heightsOf: (who: string) => `Worst margin in dB of the links of ${who}, by antenna height above ground and antenna`,
   heightsWaiting: 'Weighing heights and antennas…',
   heightsNote: 'Mast and feeder grow with the height. Choose a cell to try it.',
+  impossible: (n: number) => (n === 1 ? '1 antenna cannot hang here' : `${n} antennas cannot hang here`),
   heightHead: 'Height',
   tryCell: (m: string, antenna: string, db: string, verdict: string, link: string) =>
     `${antenna} at ${m} m: ${db} dB, ${verdict}, worst ${link}. Try it`,
@@ -254,6 +255,7 @@ export const en = {
 
   noAnswer: 'The server does not answer. Is fellreach serve still running?',
   again: 'Try again',
+  dismiss: 'Dismiss',
 };
 
 export type Words = typeof en;
