@@ -135,12 +135,9 @@ func (d *Disc) Sample(r Ray, aslM, coverM []float64, zones []Zone) {
 		coverM[i], zones[i] = 0, Inland
 	}
 	if d.Cover != nil {
-		r.along(d.Cover.Place, len(aslM), func(i int, col, row float64) {
-			coverM[i], zones[i] = d.Cover.at(col, row)
-		})
+		d.Cover.sample(r, coverM, zones)
 	}
-	first := &d.Heights[0]
-	r.along(first.Place, len(aslM), func(i int, col, row float64) { aslM[i] = first.height(col, row) })
+	d.Heights[0].sample(r, aslM)
 	for i, h := range aslM {
 		if h == h {
 			continue
@@ -160,17 +157,38 @@ func (d *Disc) Sample(r Ray, aslM, coverM []float64, zones []Zone) {
 	}
 }
 
-// along calls f with the grid positions of the first n points of a ray.
-func (r Ray) along(place *Mesh, n int, f func(i int, col, row float64)) {
-	for from := 0; from < n; from += rayPoints {
-		count := min(rayPoints, n-from)
-		at, to := float64(from), float64(from+count)
-		col, row := place.At(r.East+at*r.StepEast, r.North+at*r.StepNorth)
-		endCol, endRow := place.At(r.East+to*r.StepEast, r.North+to*r.StepNorth)
-		dCol, dRow := (endCol-col)/float64(count), (endRow-row)/float64(count)
-		for i := range count {
-			k := float64(i)
-			f(from+i, col+k*dCol, row+k*dRow)
+func (l *Layer) sample(r Ray, aslM []float64) {
+	for from := 0; from < len(aslM); from += rayPoints {
+		part := aslM[from:min(from+rayPoints, len(aslM))]
+		s := r.stretch(l.Place, from, len(part))
+		for i := range part {
+			part[i] = l.height(s.at(i))
 		}
 	}
+}
+
+func (c *CoverLayer) sample(r Ray, coverM []float64, zones []Zone) {
+	for from := 0; from < len(coverM); from += rayPoints {
+		to := min(from+rayPoints, len(coverM))
+		s := r.stretch(c.Place, from, to-from)
+		for i := from; i < to; i++ {
+			coverM[i], zones[i] = c.at(s.at(i - from))
+		}
+	}
+}
+
+// A stretch is a part of a ray on a raster: the place of its first point, and the way to the next.
+type stretch struct{ col, row, stepCol, stepRow float64 }
+
+func (s *stretch) at(i int) (col, row float64) {
+	k := float64(i)
+	return s.col + k*s.stepCol, s.row + k*s.stepRow
+}
+
+// stretch looks up count points of a ray, at most rayPoints.
+func (r *Ray) stretch(place *Mesh, from, count int) stretch {
+	at, to := float64(from), float64(from+count)
+	col, row := place.At(r.East+at*r.StepEast, r.North+at*r.StepNorth)
+	endCol, endRow := place.At(r.East+to*r.StepEast, r.North+to*r.StepNorth)
+	return stretch{col, row, (endCol - col) / float64(count), (endRow - row) / float64(count)}
 }

@@ -78,7 +78,8 @@ func neighbours(at float64, count int) (first, second int, weight float64) {
 	return first, first + 1, weight
 }
 
-// nearest returns the cell of an axis in which a position lies.
+// nearest returns the cell of an axis in which a position lies; before the first one it is the
+// first, so that rounding towards 0 will do.
 func nearest(at float64, count int) int {
-	return min(max(int(math.Floor(at+0.5)), 0), count-1)
+	return min(max(int(at+0.5), 0), count-1)
 }
