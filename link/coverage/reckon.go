@@ -63,9 +63,13 @@ func (s *sweep) region() propagation.Region {
 func (c *Cell) path() link.PlacePath {
 	o := &c.Outline
 	az := c.AzimuthDeg()
+	back := az + 180
+	if back >= 360 {
+		back -= 360
+	}
 	return link.PlacePath{
 		Toward: antenna.Direction{AzDeg: az, ElDeg: mradToDeg(o.ThetaT)},
-		Back:   antenna.Direction{AzDeg: math.Mod(az+180, 360), ElDeg: mradToDeg(o.ThetaR)},
+		Back:   antenna.Direction{AzDeg: back, ElDeg: mradToDeg(o.ThetaR)},
 		Trans:  o.TransHorizon, LengthKm: o.LengthKm, TxAslM: o.Hts, RxAslM: o.Hrs,
 	}
 }

@@ -14,10 +14,9 @@ type Request struct {
 // the loss by 1e-7 dB. It checks nothing; many goroutines may use it at once.
 type Brief struct {
 	method    string
-	f, lambda float64
-	rootF     float64 // cube root of f
+	lambda    float64
 	lbfs1     float64 // free space over 1 km
-	coupling  float64 // the part of the ducting loss that all paths share, less 20 log(1 km)
+	band      ductBand
 	earth     SmoothEarth
 	requests  []Request
 	lbs1      []float64 // for each request, troposcatter over 1 km without an angle
@@ -38,7 +37,7 @@ type Region struct{ MostKm, LeastLatDeg float64 }
 func NewBrief(m Model, freqHz, n0 float64, within Region, requests []Request) *Brief {
 	f := freqHz / 1e9
 	b := &Brief{
-		method: m.Name, f: f, rootF: math.Cbrt(f), lambda: diffractionWavelengthM(freqHz), lbfs1: lineOfSightDB(f, 1), coupling: couplingBasisDB(f),
+		method: m.Name, lambda: diffractionWavelengthM(freqHz), lbfs1: lineOfSightDB(f, 1), band: newDuctBand(f),
 		earth: NewSmoothEarth(freqHz, 1), requests: requests,
 	}
 	if m.Name != P1812.Name {
@@ -205,7 +204,7 @@ func (p *briefPath) withDucting(i int, lb0p, lbd, logD float64) float64 {
 	}
 	p.askHorizons()
 	u := duct{
-		f: p.f, d: p.LengthKm, time: timeParameters{omega: p.omega}, hts: p.Hts, hrs: p.Hrs,
+		band: p.band, d: p.LengthKm, time: timeParameters{omega: p.omega}, hts: p.Hts, hrs: p.Hrs,
 		horizons: horizons{ae: p.Ae, thetaT: p.ThetaT, thetaR: p.ThetaR, dlt: p.dlt, dlr: p.dlr},
 		smooth:   lineOfSums(p.V1, p.V2, p.LengthKm).limited(p.TxGroundM, p.RxGroundM),
 	}
@@ -224,13 +223,13 @@ func (p *briefPath) withDucting(i int, lb0p, lbd, logD float64) float64 {
 // can take off, and the least angles. On a line of sight dlt + dlr is the length of the path.
 // The time variability is not in it.
 func (p *briefPath) leastDuctingDB(logD float64) float64 {
-	least := p.coupling + 20*logD
+	least := p.band.basisDB + 20*logD
 	if p.TransHorizon {
-		least = p.coupling + 20*log10(p.Dlt+p.Dlr)
+		least = p.band.basisDB + 20*log10(p.Dlt+p.Dlr)
 	}
 	if p.omega >= 0.75 {
 		least -= 2 * mostCoastDB
 	}
 	theta := 1000*p.LengthKm/p.Ae + min(p.ThetaT, 0) + min(p.ThetaR, 0)
-	return least + ductAngleDB(p.rootF, p.Ae, theta)
+	return least + p.band.angleDB(p.Ae, theta)
 }

@@ -4,13 +4,28 @@ import "math"
 
 // A duct is a path as the model of ducting and layer reflection sees it: km, m, mrad.
 type duct struct {
-	f, d         float64
+	band         ductBand
+	d            float64
 	horizons     horizons
 	time         timeParameters
 	smooth       surfaceLine // hst, hsr
 	hts, hrs     float64     // antennas above sea level
 	hte, hre, hm float64     // antennas above the smooth surface, roughness
 	dct, dcr     float64     // distances to the coast
+}
+
+// A ductBand is what ducting at one frequency has in common on all paths.
+type ductBand struct {
+	f, rootF float64 // GHz, and the cube root of it
+	basisDB  float64 // the part of Af that no path changes, (~47)
+}
+
+func newDuctBand(f float64) ductBand {
+	alf := 0.0
+	if f < 0.5 {
+		alf = 45.375 - 137.0*f + 92.5*f*f
+	}
+	return ductBand{f, math.Cbrt(f), 102.45 + 20*log10(f) + alf}
 }
 
 // newDuct fits the smooth surface of the ducting model to the ground. Unlike that of the
@@ -21,7 +36,7 @@ func newDuct(p *Path, h horizons, t timeParameters) duct {
 	last := len(p.DistKm) - 1
 	smooth := fitSurface(p.DistKm, p.AslM).limited(p.AslM[0], p.AslM[last])
 	u := duct{
-		f: p.FreqHz / 1e9, d: p.LengthKm(), horizons: h, time: t, smooth: smooth,
+		band: newDuctBand(p.FreqHz / 1e9), d: p.LengthKm(), horizons: h, time: t, smooth: smooth,
 		hts: p.txAslM(), hrs: p.rxAslM(), dct: p.TxCoastKm, dcr: p.RxCoastKm,
 	}
 	u.hte, u.hre = u.hts-smooth.tx, u.hrs-smooth.rx // (92)
@@ -50,28 +65,21 @@ func (u *duct) lossDB(p float64) float64 { return u.couplingDB() + u.alongDB(p) 
 // air, (~47) to (~50).
 func (u *duct) couplingDB() float64 {
 	h := &u.horizons
-	return couplingBasisDB(u.f) + 20*log10(h.dlt+h.dlr) +
-		u.shieldingDB(h.thetaT, h.dlt) + u.shieldingDB(h.thetaR, h.dlr) +
+	factorT, linearTDB := u.shielding(h.thetaT, h.dlt)
+	factorR, linearRDB := u.shielding(h.thetaR, h.dlr)
+	return u.band.basisDB + 20*log10((h.dlt+h.dlr)*factorT*factorR) + linearTDB + linearRDB +
 		u.coastDB(u.dct, h.dlt, u.hts) + u.coastDB(u.dcr, h.dlr, u.hrs)
 }
 
-// couplingBasisDB is the part of Af that all paths share.
-func couplingBasisDB(f float64) float64 {
-	alf := 0.0
-	if f < 0.5 {
-		alf = 45.375 - 137.0*f + 92.5*f*f
-	}
-	return 102.45 + 20*log10(f) + alf
-}
-
-// shieldingDB returns As, the diffraction loss by the ground that shields an antenna whose horizon
-// lies at the elevation theta and the distance dl, (~48).
-func (u *duct) shieldingDB(theta, dl float64) float64 {
+// shielding returns As, the diffraction loss by the ground that shields an antenna whose horizon
+// lies at the elevation theta and the distance dl, in two parts: 20 log(factor) and what is linear
+// in the angle, (~48).
+func (u *duct) shielding(theta, dl float64) (factor, linearDB float64) {
 	over := theta - 0.1*dl
 	if over <= 0 {
-		return 0
+		return 1, 0
 	}
-	return 20*log10(1+0.361*over*math.Sqrt(u.f*dl)) + 0.264*over*math.Cbrt(u.f)
+	return 1 + 0.361*over*math.Sqrt(u.band.f*dl), 0.264 * over * u.band.rootF
 }
 
 // coastDB returns Ac, the correction for coupling over the sea of an antenna dc km from the coast at
@@ -86,7 +94,7 @@ func (u *duct) coastDB(dc, dl, hs float64) float64 {
 // alongDB returns Ad(p), the loss along the anomalous structure by angle and time, (~51) to (~56).
 func (u *duct) alongDB(p float64) float64 {
 	h := &u.horizons
-	return ductAngleDB(math.Cbrt(u.f), h.ae, u.thetaPrime()) + ductTimeDB(p, u.d, u.logBeta())
+	return u.band.angleDB(h.ae, u.thetaPrime()) + ductTimeDB(p, u.d, u.logBeta())
 }
 
 // ductTimeDB returns A(p), the time variability of ducting over d km by the logarithm of beta, (~53)
@@ -103,8 +111,8 @@ func (u *duct) thetaPrime() float64 {
 	return 1000*u.d/h.ae + min(h.thetaT, 0.1*h.dlt) + min(h.thetaR, 0.1*h.dlr)
 }
 
-// ductAngleDB returns the loss over an angular distance theta, mrad, with the cube root of f, (~51).
-func ductAngleDB(rootF, ae, theta float64) float64 { return 5e-5 * ae * rootF * theta }
+// angleDB returns the loss over an angular distance theta, mrad, (~51).
+func (b *ductBand) angleDB(ae, theta float64) float64 { return 5e-5 * ae * b.rootF * theta }
 
 // mostCoastDB is the most that [duct.coastDB] takes off at one end.
 const mostCoastDB = 6
@@ -130,7 +138,7 @@ func leastDuctTimeDB(p, mostKm, logBeta float64) float64 {
 // leastDB is a bound of the loss from below that does not need the heights over the smooth surface.
 // leastTime is one of A(p).
 func (u *duct) leastDB(leastTime float64) float64 {
-	return u.couplingDB() + ductAngleDB(math.Cbrt(u.f), u.horizons.ae, u.thetaPrime()) + leastTime
+	return u.couplingDB() + u.band.angleDB(u.horizons.ae, u.thetaPrime()) + leastTime
 }
 
 // logBeta returns the logarithm of beta, beta0 with its corrections for the geometry of the path

@@ -7,7 +7,7 @@ import "math"
 //
 // Source: Rec. ITU-R P.526-15, section ~3, as in Rec. ITU-R P.1812-6, (~22) to (~36).
 type SmoothEarth struct {
-	f, lambda     float64 // GHz, m
+	rootF, lambda float64 // cube root of the frequency in GHz; m
 	verticalShare float64
 	land, sea     surface
 }
@@ -23,7 +23,7 @@ type surface struct{ horizontal, vertical float64 }
 func NewSmoothEarth(freqHz, verticalShare float64) SmoothEarth {
 	f := freqHz / 1e9
 	return SmoothEarth{
-		f: f, lambda: diffractionWavelengthM(freqHz), verticalShare: verticalShare,
+		rootF: math.Cbrt(f), lambda: diffractionWavelengthM(freqHz), verticalShare: verticalShare,
 		land: newSurface(f, 22, 0.003), sea: newSurface(f, 80, 5),
 	}
 }
@@ -133,9 +133,8 @@ func (e SmoothEarth) residueDB(p SmoothPath, a, admittance float64) float64 {
 	k := admittance / rootA
 	k2 := k * k
 	beta := (1 + 1.6*k2 + 0.67*k2*k2) / (1 + 4.5*k2 + 1.53*k2*k2)
-	rootF := math.Cbrt(e.f)
-	x := 21.88 * beta * rootF / (rootA * rootA) * p.LengthKm
-	y := 0.9575 * beta * rootF * rootF / rootA // per metre of height
+	x := 21.88 * beta * e.rootF / (rootA * rootA) * p.LengthKm
+	y := 0.9575 * beta * e.rootF * e.rootF / rootA // per metre of height
 	return -distanceTermDB(x) - heightGainDB(beta*y*p.TxM, k) - heightGainDB(beta*y*p.RxM, k)
 }
 

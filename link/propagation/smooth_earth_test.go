@@ -28,8 +28,8 @@ func TestFirstTermParts(t *testing.T) {
 		rootA := math.Cbrt(8500.0)
 		k := e.land.horizontal / rootA
 		beta := (1 + 1.6*k*k + 0.67*math.Pow(k, 4)) / (1 + 4.5*k*k + 1.53*math.Pow(k, 4))
-		x := 21.88 * beta * math.Cbrt(e.f) / (rootA * rootA) * tc.d
-		y := 0.9575 * beta * math.Cbrt(e.f*e.f) / rootA
+		x := 21.88 * beta * math.Cbrt(tc.freqMHz/1e3) / (rootA * rootA) * tc.d
+		y := 0.9575 * beta * math.Cbrt(tc.freqMHz*tc.freqMHz/1e6) / rootA
 		for _, part := range []struct {
 			symbol         string
 			got, want, tol float64
