@@ -5,6 +5,8 @@ import (
 	"errors"
 	"math"
 	"net/http"
+	"os"
+	"path/filepath"
 
 	"fellreach/link/coverage"
 	"fellreach/terrain/raster"
@@ -90,6 +92,12 @@ func (s *Server) registerCover(api huma.API) {
 	answer(api, stop, s.cancelCover)
 	answer(api, readOperation("readCoverageValue", "/api/coverage/{id}/value", "What a coverage map holds at a place"), s.readCoverValue)
 	huma.Register(api, fileOperation("readCoverageBands", "/api/coverage/{id}/bands", "The bands of a coverage map as polygons", "geojson"), s.coverBands)
+	huma.Register(api, fileOperation("readCoverageMargin", "/api/coverage/{id}/margin.tif", "The margin of a coverage map as a raster", "tif"), func(_ context.Context, in *JobInput) (*file, error) {
+		return s.coverRaster(in.ID, "margin", func(r *coverResult) []float32 { return r.marginDB })
+	})
+	huma.Register(api, fileOperation("readCoverageLoss", "/api/coverage/{id}/loss.tif", "The basic transmission loss of a coverage map as a raster", "tif"), func(_ context.Context, in *JobInput) (*file, error) {
+		return s.coverRaster(in.ID, "loss", func(r *coverResult) []float32 { return r.lossDB })
+	})
 	events := readOperation("watchCoverage", "/api/coverage/{id}/events", "Watch a coverage job until it ends")
 	events.Middlewares = huma.Middlewares{func(ctx huma.Context, next func(huma.Context)) {
 		if _, err := s.jobs.find(ctx.Param("id")); err != nil {
@@ -222,6 +230,30 @@ func known(v float32) *float64 {
 	}
 	x := float64(v)
 	return &x
+}
+
+// coverRaster writes a layer of a finished map as the cover command does, by way of a folder of its
+// own.
+func (s *Server) coverRaster(id, layer string, cells func(*coverResult) []float32) (*file, error) {
+	r, err := s.resultOf(id)
+	if err != nil {
+		return nil, asProblem(err)
+	}
+	folder, err := os.MkdirTemp("", "fellreach-")
+	if err != nil {
+		return nil, asProblem(err)
+	}
+	defer os.RemoveAll(folder)
+	name := layer + "-" + plainName(r.report.Site) + ".tif"
+	path := filepath.Join(folder, name)
+	if err := raster.WriteCOG(path, raster.COG{Frame: r.frame, Cells: cells(r), Unit: "dB", About: layer + " of " + r.report.Site, Small: true}); err != nil {
+		return nil, asProblem(err)
+	}
+	data, err := os.ReadFile(path)
+	if err != nil {
+		return nil, asProblem(err)
+	}
+	return &file{mediaTypes["tif"], "attachment; filename=\"" + name + "\"", data}, nil
 }
 
 func (s *Server) coverBands(_ context.Context, in *JobInput) (*file, error) {

@@ -3,10 +3,13 @@ package web
 import (
 	"bufio"
 	"encoding/json"
+	"fmt"
 	"image/color"
 	"math"
 	"net/http"
 	"net/http/httptest"
+	"os"
+	"path/filepath"
 	"strings"
 	"testing"
 	"time"
@@ -134,6 +137,38 @@ func TestCoverBands(t *testing.T) {
 	}
 	if math.Abs(drawn/want-1) > 0.05 {
 		t.Errorf("the polygons have %g km2, the bands %g", drawn, want)
+	}
+}
+
+// TestCoverRasters: the rasters that are handed out hold what the values at a place say.
+func TestCoverRasters(t *testing.T) {
+	s := serve(t, smallCover(t))
+	job := ended(t, s, start(t, s).ID)
+	at := get[PlanAnswer](t, s, "/api/plan").Sites[1].Place
+	value := get[CoverValue](t, s, fmt.Sprintf("/api/coverage/%s/value?lon=%g&lat=%g", job.ID, at.Lon+0.004, at.Lat))
+	for layer, want := range map[string]*float64{"margin": value.MarginDB, "loss": value.LossDB} {
+		a := ask(s, http.MethodGet, "/api/coverage/"+job.ID+"/"+layer+".tif", "")
+		if a.status != http.StatusOK || !strings.HasPrefix(a.header.Get("Content-Type"), "image/tiff") {
+			t.Fatalf("%s: status %d, %v", layer, a.status, a.header)
+		}
+		path := filepath.Join(t.TempDir(), layer+".tif")
+		if err := os.WriteFile(path, a.body, 0o600); err != nil {
+			t.Fatal(err)
+		}
+		s.jobs.mutex.Lock()
+		frame := s.jobs.jobs[0].result.frame
+		s.jobs.mutex.Unlock()
+		cells, err := raster.ReadCOG(path, frame)
+		if err != nil {
+			t.Fatal(err)
+		}
+		found := false
+		for _, cell := range cells {
+			found = found || want != nil && float64(cell) == *want
+		}
+		if len(cells) != frame.Cols*frame.Rows || !found {
+			t.Errorf("%s: %d cells, none of them %v", layer, len(cells), want)
+		}
 	}
 }
 

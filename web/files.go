@@ -25,7 +25,7 @@ type file struct {
 // mediaTypes are those of the formats that a file can be asked in.
 var mediaTypes = map[string]string{
 	"txt": "text/plain; charset=utf-8", "csv": "text/csv; charset=utf-8", "json": "application/json", "geojson": "application/geo+json",
-	"svg": "image/svg+xml", "yaml": "application/yaml",
+	"svg": "image/svg+xml", "yaml": "application/yaml", "tif": "image/tiff; application=geotiff",
 }
 
 // newFile names a file after the plan and fills it.

@@ -53,7 +53,11 @@ function result(s: State, job: CoverJob, r: NonNullable<CoverJob['result']>, des
     <p class="hint">
       ${words.sampling(r.check.samples, fixed(r.check.cell_median_db, 2), fixed(r.check.cell_p95_db, 1), fixed(r.check.cell_max_db, 1))}
     </p>
-    <p><a href=${`./api/coverage/${job.id}/bands`} download>${words.download.bands}</a></p>
+    <p>
+      <a href=${`./api/coverage/${job.id}/bands`} download>${words.download.bands}</a>,
+      <a href=${`./api/coverage/${job.id}/margin.tif`} download>${words.download.marginRaster}</a>,
+      <a href=${`./api/coverage/${job.id}/loss.tif`} download>${words.download.lossRaster}</a>
+    </p>
   `;
 }
 

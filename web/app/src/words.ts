@@ -251,6 +251,8 @@ export const en = {
     pattern: 'Antenna pattern (SVG)',
     vswr: 'VSWR curve (SVG)',
     bands: 'Bands (GeoJSON)',
+    marginRaster: 'Margin (GeoTIFF)',
+    lossRaster: 'Loss (GeoTIFF)',
   },
 
   noAnswer: 'The server does not answer. Is fellreach serve still running?',
