@@ -158,8 +158,12 @@ func (c *Cell) findObstructions() {
 	back, _ := w.flat.tangent(c.d, o.Hrs)
 	for i := range c.own {
 		p := &c.own[i]
-		hobs = max(hobs, p.bare-(o.Hts+ray*p.d))
-		back = max(back, (p.bare-o.Hrs)/(c.d-p.d))
+		if over := p.bare - (o.Hts + ray*p.d); over > hobs {
+			hobs = over
+		}
+		if slope := (p.bare - o.Hrs) / (c.d - p.d); slope > back {
+			back = slope
+		}
 	}
 	o.Hobs, o.AlphaT, o.AlphaR = hobs, steepest-ray, back+ray
 }
