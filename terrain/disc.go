@@ -157,6 +157,7 @@ func (d *Disc) Sample(r Ray, aslM, coverM []float64, zones []Zone) {
 	}
 }
 
+// sample fills in the heights of the first points of a ray.
 func (l *Layer) sample(r Ray, aslM []float64) {
 	for from := 0; from < len(aslM); from += rayPoints {
 		part := aslM[from:min(from+rayPoints, len(aslM))]
@@ -167,6 +168,7 @@ func (l *Layer) sample(r Ray, aslM []float64) {
 	}
 }
 
+// sample fills in the covers and zones of the first points of a ray.
 func (c *CoverLayer) sample(r Ray, coverM []float64, zones []Zone) {
 	for from := 0; from < len(coverM); from += rayPoints {
 		to := min(from+rayPoints, len(coverM))
