@@ -11,27 +11,49 @@ import "math"
 // polarization alone, the same way in all directions as seen from the antenna outward.
 type Mount struct{ FacingDeg, TiltDeg, RollDeg float64 }
 
-// Field returns the far field of a mounted pattern towards a true direction of the site, with
-// theta down and phi towards growing azimuth at the site. Nulls are left as deep as they are;
-// see [Pattern.Filled].
-func (m Mount) Field(p Pattern, toward Direction) Field {
+// A Mounted is a pattern on its mount, made ready to be asked for many directions.
+type Mounted struct {
+	pattern          Pattern
+	frame            frame
+	sinTurn, cosTurn float64 // of the polarization alone, of a pattern that is [Pattern.GainOnly]
+	floor, null      float64 // powers, see [Pattern.Filled]
+}
+
+// On makes a pattern on this mount ready.
+func (m Mount) On(p Pattern) Mounted {
 	roll := m.RollDeg
 	if p.GainOnly {
 		m.RollDeg = 0
 	}
-	frame := m.frame()
+	sin, cos := math.Sincos(radians(roll))
+	floor, null := p.floors()
+	return Mounted{p, m.frame(), sin, cos, floor, null}
+}
+
+// Field returns the far field of a mounted pattern towards a true direction of the site, with
+// theta down and phi towards growing azimuth at the site. Nulls are left as deep as they are;
+// see [Pattern.Filled].
+func (m Mount) Field(p Pattern, toward Direction) Field {
+	on := m.On(p)
+	return on.Field(toward)
+}
+
+// Field is [Mount.Field].
+func (m *Mounted) Field(toward Direction) Field {
 	ray, siteTheta, _ := toward.axes()
-	own := frame.seen(ray).direction()
-	field := p.Field(own)
-	if p.GainOnly {
+	own := m.frame.seen(ray).direction()
+	field := m.pattern.Field(own)
+	if m.pattern.GainOnly {
 		// Rolled clockwise, a vertical field -theta leans towards +phi.
-		sin, cos := math.Sincos(radians(roll))
-		field = field.turned(cos, sin)
+		field = field.turned(m.cosTurn, m.sinTurn)
 	}
 	_, theta, phi := own.axes()
-	siteTheta = frame.seen(siteTheta)
+	siteTheta = m.frame.seen(siteTheta)
 	return field.turned(siteTheta.dot(theta), siteTheta.dot(phi))
 }
+
+// Filled returns [Mounted.Field] with the pattern's nulls filled, see [Pattern.Filled].
+func (m *Mounted) Filled(toward Direction) Field { return filled(m.Field(toward), m.floor, m.null) }
 
 // VerticalWidthDeg returns the half-power width in elevation, in degrees, of the lobe that holds
 // the largest gain in the front half of the vertical plane through the facing, for the pattern as

@@ -33,11 +33,21 @@ func (p Pattern) GainDBi(toward Direction) float64 { return p.Filled(p.Field(tow
 // is null to within rounding (under -120 dB from the peak) there is no polarization to keep, and
 // the power is divided evenly between the components, in quadrature: 3 dB to any linear antenna.
 func (p Pattern) Filled(f Field) Field {
-	power, floor := f.Power(), powerRatio(p.PeakDBi-NullFloorDB)
+	floor, null := p.floors()
+	return filled(f, floor, null)
+}
+
+// floors returns the power under which a field is raised, and that under which it is null.
+func (p Pattern) floors() (floor, null float64) {
+	return powerRatio(p.PeakDBi - NullFloorDB), powerRatio(p.PeakDBi - 120)
+}
+
+func filled(f Field, floor, null float64) Field {
+	power := f.Power()
 	switch {
 	case power >= floor:
 		return f
-	case power <= powerRatio(p.PeakDBi-120):
+	case power <= null:
 		each := math.Sqrt(floor / 2)
 		return Field{complex(each, 0), complex(0, each)}
 	}

@@ -13,6 +13,7 @@ import (
 type frontEnd struct {
 	*Station
 	solution antenna.Solution
+	mounted  antenna.Mounted // the solution's pattern
 	line     antenna.Transfer
 	// cutForAnother tells that the antenna's resonant lengths are those of another channel.
 	cutForAnother bool
@@ -32,7 +33,7 @@ func (s *Station) frontEnd(freqHz float64, c Channel) (frontEnd, error) {
 			return frontEnd{}, fmt.Errorf("%s: %w", s.Name, err)
 		}
 		if i == 0 {
-			f.solution, f.line = solution, line
+			f.solution, f.mounted, f.line = solution, s.Mount.On(solution.Pattern), line
 		} else if line.TotalDB() > f.line.TotalDB() {
 			f.line = line
 		}
@@ -54,7 +55,7 @@ func (s *Station) setting(freqHz, designHz float64) antenna.Setting {
 
 // field returns the antenna's field towards a direction, its nulls filled.
 func (f *frontEnd) field(toward antenna.Direction) antenna.Field {
-	return f.solution.Pattern.Filled(f.Mount.Field(f.solution.Pattern, toward))
+	return f.mounted.Filled(toward)
 }
 
 // lines writes the station's part of a budget, from radio to antenna for the transmitter and the
