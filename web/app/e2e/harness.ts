@@ -124,20 +124,22 @@ export class Visit {
     await this.page.evaluate(axeSource);
     return this.page.evaluate(async () => {
       const { axe } = globalThis as unknown as { axe: typeof import('axe-core') };
-      // Sites stand where they stand: the criterion exempts places on maps, and the list of sites does the same.
-      const found = await axe.run(
-        { exclude: ['.maplibregl-marker'] },
-        {
-          runOnly: ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'],
-        },
-      );
-      return found.violations.map(
-        (v) =>
-          `${v.id}: ${v.nodes
-            .map((n) => `${n.target} ${n.any[0]?.message ?? ''}`)
-            .slice(0, 4)
-            .join(' | ')}`,
-      );
+      const found = await axe.run({
+        runOnly: ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'],
+      });
+      // Sites stand where they stand: the criterion on the size of targets exempts places on maps, and the list of
+      // sites does the same.
+      const onMap = (target: unknown) => document.querySelector(String(target))?.closest('.maplibregl-marker') != null;
+      return found.violations
+        .map((v) => ({ id: v.id, nodes: v.nodes.filter((n) => v.id !== 'target-size' || !onMap(n.target[0])) }))
+        .filter((v) => v.nodes.length > 0)
+        .map(
+          (v) =>
+            `${v.id}: ${v.nodes
+              .map((n) => `${n.target} ${n.any[0]?.message ?? ''}`)
+              .slice(0, 4)
+              .join(' | ')}`,
+        );
     });
   }
 
